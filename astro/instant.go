@@ -13,19 +13,37 @@ const j2000Unix = 946728000
 // cannot be mixed up. Made by package timescale and nowhere else.
 type Instant struct {
 	utc       time.Time
-	taiMinus  float64 // TAI - UTC, s
-	ut1Minus  float64 // UT1 - UTC, s
-	uncertain bool
+	midnight  time.Time // a 0h UTC to count from
+	day0      float64   // days since JD 2451545.0 at that midnight; ends in .5
+	taiMinus  float64   // TAI - UTC, s
+	ut1Minus  float64   // UT1 - UTC, s
+	predicted bool
 }
 
 // ttMinusTAI in seconds; exact by definition of TT.
 const ttMinusTAI = 32.184
 
-// InstantFrom is the door that package timescale uses. The leap-second offset
-// taiMinusUTC and ut1MinusUTC are in seconds; predicted tells that the date
-// lies beyond what is announced, so that a leap second may yet come.
+// Offsets is how the time scales differ at a moment, seconds.
+type Offsets struct {
+	TAIMinusUTC float64
+	UT1MinusUTC float64
+	Predicted   bool // later than what is announced: a leap second may yet come
+}
+
+// InstantOn is the door that package timescale uses: the civil time, and the
+// Julian date of 0h UTC of its day.
+func InstantOn(utc time.Time, jdMidnight float64, o Offsets) Instant {
+	utc = utc.UTC()
+	return Instant{utc: utc, midnight: utc.Truncate(24 * time.Hour), day0: jdMidnight - 2451545,
+		taiMinus: o.TAIMinusUTC, ut1Minus: o.UT1MinusUTC, predicted: o.Predicted}
+}
+
+// InstantFrom makes an instant for tests that need no calendar; programs ask
+// package timescale.
 func InstantFrom(utc time.Time, taiMinusUTC, ut1MinusUTC float64, predicted bool) Instant {
-	return Instant{utc.UTC(), taiMinusUTC, ut1MinusUTC, predicted}
+	midnight := utc.UTC().Truncate(24 * time.Hour)
+	jd := 2451545 + float64(midnight.Unix()-j2000Unix)/86400
+	return InstantOn(utc, jd, Offsets{taiMinusUTC, ut1MinusUTC, predicted})
 }
 
 // UTC returns the moment as civil time.
@@ -33,14 +51,14 @@ func (t Instant) UTC() time.Time { return t.utc }
 
 // Predicted tells whether UTC at that date may still change by leap seconds
 // not yet announced.
-func (t Instant) Predicted() bool { return t.uncertain }
+func (t Instant) Predicted() bool { return t.predicted }
 
 // IsZero tells whether the instant was never set.
 func (t Instant) IsZero() bool { return t.utc.IsZero() }
 
 // daysUTC returns days of 86400 s since 2000-01-01 12:00 UTC.
 func (t Instant) daysUTC() float64 {
-	return (float64(t.utc.Unix()-j2000Unix) + float64(t.utc.Nanosecond())*1e-9) / 86400
+	return t.day0 + float64(t.utc.Sub(t.midnight))/86400e9
 }
 
 // DaysTT returns days since J2000.0 (JD 2451545.0) in terrestrial time, to
