@@ -122,3 +122,14 @@ func (f *Frame) Look(dir astro.Vec) Place {
 func (f *Frame) Altitude(dir astro.Vec) astro.Angle {
 	return astro.Rad(math.Atan2(f.Up.Dot(dir), math.Hypot(f.North.Dot(dir), f.East.Dot(dir))))
 }
+
+// Aberrate returns the observed direction of a natural one, both along the
+// axes of the ICRS: the motion of the Earth and of the site in it.
+func (f *Frame) Aberrate(natural astro.Vec) astro.Vec { return f.aberration.apply(natural) }
+
+// AberrateGeocentric does the same for an observer at the Earth's centre.
+func (f *Frame) AberrateGeocentric(natural astro.Vec) astro.Vec { return f.geocentric.apply(natural) }
+
+// Velocity returns the barycentric velocity of the site that aberration uses,
+// units of c, along the axes of the ICRS.
+func (f *Frame) Velocity() astro.Vec { return f.aberration.v }
