@@ -1,0 +1,197 @@
+package main
+
+import (
+	"fmt"
+	"io"
+	"strings"
+	"time"
+
+	"evenfall/targets"
+	"evenfall/targets/light"
+	"evenfall/targets/moment"
+	"evenfall/targets/stage"
+)
+
+const (
+	defaultWidth = 80  // where output is no terminal
+	wideFrom     = 110 // from here on, positions and the limit that ends the window
+	nameWidth    = 16
+)
+
+// listText prints the list for people: a head of three lines, the targets to
+// take, the blocked ones below.
+func (s *session) listText(w io.Writer, width int) error {
+	if width == 0 {
+		width = defaultWidth
+	}
+	var b strings.Builder
+	s.head(&b)
+	wide := width >= wideFrom
+	fmt.Fprintln(&b, listHeading(wide))
+	said := false
+	for _, i := range s.order {
+		m := &s.moments[i]
+		if !m.InCan && !said {
+			fmt.Fprintln(&b, "not now:")
+			said = true
+		}
+		if m.InCan {
+			said = false
+		}
+		fmt.Fprintln(&b, cut(s.row(i, wide), width))
+	}
+	if len(s.order) == 0 {
+		fmt.Fprintln(&b, "no targets: the list is empty")
+	}
+	fmt.Fprintf(&b, "%s\n", s.legend())
+	_, err := io.WriteString(w, b.String())
+	return err
+}
+
+// head prints site, time and sky.
+func (s *session) head(b *strings.Builder) {
+	fmt.Fprintln(b, s.heading())
+	t := s.at.UTC()
+	line := t.Format("Mon 2 Jan 2006 15:04:05 UTC")
+	if s.site.Zone != "" {
+		line += t.In(s.location()).Format("  15:04 local")
+	}
+	fmt.Fprintf(b, "%s  LST %s  night of %s\n", line, s.scene.Frame.LST.HMS(0), s.night.Date)
+	moon := &s.scene.Moon
+	fmt.Fprintf(b, "%s, Sun %+.1f deg  Moon %+.1f deg, %.0f %% lit\n", s.scene.Part,
+		s.scene.Sun.Place.Alt.Deg(), moon.Place.Alt.Deg(), 100*s.scene.Phase.Illuminated)
+}
+
+func listHeading(wide bool) string {
+	h := fmt.Sprintf("%4s %-*s %-9s %-20s %6s %5s %5s %4s %5s %4s", "take", nameWidth, "name", "stage",
+		"expected", "alt", "X", "best", "X", "left", "Moon")
+	if wide {
+		h += "  ends by      kind         ICRS now"
+	}
+	return h
+}
+
+// row prints one target.
+func (s *session) row(i int, wide bool) string {
+	t, m := &s.targets[i], &s.moments[i]
+	name := cut(t.Name, nameWidth)
+	if !m.InCan {
+		return fmt.Sprintf("   - %-*s %-9s %-20s %s", nameWidth, name, stageWord(&m.Stage), expectWord(&m.Expect), blockedWord(m))
+	}
+	sign := "-"
+	if m.Rising {
+		sign = "+"
+	}
+	mark := " "
+	if !m.InShould {
+		mark = "~"
+	}
+	best, bestX := "--:--", "-"
+	if m.Course.Best != nil {
+		best = m.Course.Best.UTC().Round(time.Minute).Format("15:04")
+		bestX = fmt.Sprintf("%.2f", float64(m.Course.BestAirmass))
+	}
+	line := fmt.Sprintf("%3d%s %-*s %-9s %-20s %5.1f%s %5.2f %5s %4s %5s %4.0f", m.Rank, mark, nameWidth, name,
+		stageWord(&m.Stage), expectWord(&m.Expect), m.Apparent.Deg(), sign, float64(m.Airmass),
+		best, bestX, left(m.Left), m.MoonSep.Deg())
+	if wide {
+		line += fmt.Sprintf("  %-11s  %-11s  %s %s", m.EndsBy, t.Kind, m.RA.HMS(1), m.Dec.DMS(0))
+	}
+	return line
+}
+
+// blockedWord says why a target cannot be taken and when that ends.
+func blockedWord(m *moment.Moment) string {
+	open := m.NextOpen()
+	reason := firstReason(m)
+	if open == nil {
+		if len(m.Course.Can) == 0 {
+			return reason + "; not tonight"
+		}
+		return reason + "; no more tonight"
+	}
+	return reason + "; from " + open.UTC().Round(time.Minute).Format("15:04")
+}
+
+// firstReason shortens the most telling block for a list.
+func firstReason(m *moment.Moment) string {
+	short := map[targets.Code]string{
+		targets.CodeDaylight: "daylight", targets.CodeSun: "near the Sun", targets.CodeBelow: "below horizon",
+		targets.CodeAltitude: "too low", targets.CodeHorizon: "behind the horizon", targets.CodeZenith: "near the zenith",
+		targets.CodeHourAngle: "hour angle", targets.CodeDeclination: "declination", targets.CodeMoon: "near the Moon",
+		targets.CodeWind: "wind", targets.CodeWindow: "not our hours", targets.CodeClosed: "closed",
+	}
+	for _, b := range m.BlockedBy {
+		if w, ok := short[b.Code]; ok {
+			return w
+		}
+		return string(b.Code)
+	}
+	return "blocked"
+}
+
+// stageWord is the judgement with its probability, or two codes merged.
+func stageWord(v *stage.Verdict) string {
+	switch v.Best {
+	case targets.Undecided:
+		return "undecided"
+	case targets.Merged:
+		return v.Best
+	}
+	return fmt.Sprintf("%-5s %2.0f%%", v.Best, 100*stageP(v))
+}
+
+// stageP is the probability of the answer given.
+func stageP(v *stage.Verdict) float64 {
+	switch v.Best {
+	case targets.Merged:
+		return v.P[targets.RGB] + v.P[targets.EAGB]
+	case targets.Undecided:
+		most := 0.0
+		for _, p := range v.P {
+			most = max(most, p)
+		}
+		return most
+	}
+	return v.P[targets.Stage(v.Best)]
+}
+
+// expectWord is the expected brightness: band, value, interval.
+func expectWord(f *light.Forecast) string {
+	switch {
+	case f.SB != nil:
+		return fmt.Sprintf("%-2s %5.1f/sq\" %4.1f mag", f.Band, f.SB.Value.MagArcsec2(), f.Mag.Mags())
+	case !f.Known:
+		return "brightness unknown"
+	case f.Phase != nil && f.Phase.Status == "unknown":
+		return fmt.Sprintf("%-2s  any %5.1f..%.1f", f.Band, f.Lo.Mags(), f.Hi.Mags())
+	}
+	return fmt.Sprintf("%-2s %5.1f %5.1f..%.1f", f.Band, f.Mag.Mags(), f.Lo.Mags(), f.Hi.Mags())
+}
+
+// left writes a duration as hours and minutes.
+func left(d time.Duration) string {
+	minutes := int(d.Round(time.Minute).Minutes())
+	if minutes < 60 {
+		return fmt.Sprintf("%dm", minutes)
+	}
+	return fmt.Sprintf("%dh%02d", minutes/60, minutes%60)
+}
+
+// cut shortens a line to a width in characters.
+func cut(s string, width int) string {
+	r := []rune(s)
+	if len(r) <= width {
+		return s
+	}
+	return strings.TrimRight(string(r[:width]), " ")
+}
+
+func (s *session) legend() string {
+	level := 80.0
+	if len(s.moments) > 0 {
+		level = 100 * s.moments[0].Expect.Level
+	}
+	return fmt.Sprintf("alt refracted, deg, + rising - sinking; X airmass; best and from in UTC; left until the window ends;\n"+
+		"~ possible but outside the wished-for limits; expected brightness with its %.0f %% interval, brighter end first", level)
+}

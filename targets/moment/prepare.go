@@ -1,0 +1,94 @@
+// Package moment is the one place where position, air, brightness and stage
+// of a target come together. Prepare does once a target what is slow, Tonight
+// once a target and night, Of what changes with the minute. Screens, lists,
+// plans and the log all ask here, so that two views of one target at one
+// instant cannot disagree. It reads no clock and no file.
+package moment
+
+import (
+	"fmt"
+	"math"
+
+	"evenfall/astro"
+	"evenfall/astro/frame"
+	"evenfall/targets"
+	"evenfall/targets/light"
+	"evenfall/targets/stage"
+)
+
+// Models is what judging and forecasting draw on; made once, shared by all.
+type Models struct{ Stage *stage.Models }
+
+// NewModels makes the models.
+func NewModels() Models { return Models{Stage: stage.NewModels()} }
+
+// Prepared is a target with everything that does not depend on the night.
+type Prepared struct {
+	Target  targets.Target
+	Star    frame.Star
+	Verdict stage.Verdict
+	Light   *light.State
+	Drift   Drift
+}
+
+// Drift says how uncertain the position is because the motion is not known.
+type Drift struct {
+	MotionMissing bool
+	// PerYear is what stars of this kind move, for a star without a listed
+	// motion: the position is uncertain by this times the years since its epoch.
+	PerYear astro.Angle
+	Why     string
+}
+
+// typicalMotionWD is what a white dwarf of the magnitudes usually observed
+// moves in a year: the nearby ones move fastest. Common practice, no source;
+// the median of the built-in white dwarfs with a listed motion is 0.3 arcsec.
+var typicalMotionWD = astro.Arcsec(0.3)
+
+// Prepare does what is slow for one target: the judgement of its stage and the
+// state that its brightness is forecast from.
+//
+// Given:
+//   - t: as read; the magnitudes are those of this target.
+//
+// Notes:
+//  1. Milliseconds; callers keep the answer for as long as the target and its
+//     magnitudes are the same.
+func Prepare(t targets.Target, mags []targets.Magnitude, m Models) Prepared {
+	p := Prepared{Target: t, Star: star(&t), Verdict: m.Stage.Judge(t)}
+	p.Light = light.NewState(t, p.Verdict, mags)
+	if !t.MotionKnown() {
+		p.Drift.MotionMissing = true
+		if t.Kind == targets.WD {
+			p.Drift.PerYear = typicalMotionWD
+			p.Drift.Why = "no proper motion listed; such white dwarfs move about 0.3 arcsec a year"
+		}
+	}
+	return p
+}
+
+// star turns a listed place into one that can be computed with.
+func star(t *targets.Target) frame.Star {
+	return frame.NewStar(frame.Catalogue{
+		RA: t.Place.RA, Dec: t.Place.Dec, EpochJyr: t.Place.EpochJyr,
+		PMRA:     astro.Arcsec(t.Place.PMRA.Value / 1000),
+		PMDec:    astro.Arcsec(t.Place.PMDec.Value / 1000),
+		Parallax: astro.Arcsec(t.Place.Plx.Value / 1000),
+		RVKms:    t.Place.RV.Value,
+	})
+}
+
+// Uncertainty returns how far off the position may be at an instant because
+// the motion is missing; zero where it is known or nothing can be said.
+func (d Drift) Uncertainty(epochJyr float64, at astro.Instant) astro.Angle {
+	return d.PerYear.Times(math.Abs(at.YearsTT() - epochJyr))
+}
+
+// words says the drift at an instant in one line; "" where there is none.
+func (d Drift) words(epochJyr float64, at astro.Instant) string {
+	if d.PerYear.Rad() == 0 {
+		return ""
+	}
+	return fmt.Sprintf("position uncertain by about %.0f arcsec tonight: %s",
+		d.Uncertainty(epochJyr, at).Arcsec(), d.Why)
+}
