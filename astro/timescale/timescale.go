@@ -160,10 +160,11 @@ func FromJD(jd float64, scale string) (astro.Instant, error) {
 // TDBMinusTT returns barycentric dynamical time less terrestrial time at the
 // Earth's centre.
 //
-//	0.001657 sin g + 0.000022 sin(L - LJ)       g, L - LJ of the date
+//	0.001657 sin(628.3076 T + 6.2401) + 0.000022 sin(575.3385 T + 4.2970)
+//	+ 0.000014 sin(1256.6152 T + 6.1969)       T: Julian centuries since J2000.0
 //
 // Returns:
-//   - seconds; two terms, right to 27 microseconds between 1950 and 2100.
+//   - seconds; the three largest terms, right to 30 microseconds between 1950 and 2100.
 //
 // Source: [cite.Kaplan2005], after [cite.FairheadBretagnon1990].
 func TDBMinusTT(t astro.Instant) float64 {
