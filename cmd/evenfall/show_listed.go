@@ -1,0 +1,74 @@
+package main
+
+import (
+	"encoding/csv"
+	"fmt"
+	"strings"
+
+	"evenfall/targets"
+	"evenfall/targets/moment"
+	"evenfall/targets/table"
+)
+
+// listed returns the columns of a target's list with their units, as they
+// would be written back.
+func (v view) listed() ([]jsonListed, error) {
+	var b strings.Builder
+	if err := table.Write(&b, []targets.Target{*v.t}); err != nil {
+		return nil, fmt.Errorf("writing out %s: %w", v.t.Name, err)
+	}
+	rows, err := csv.NewReader(strings.NewReader(b.String())).ReadAll()
+	if err != nil || len(rows) != 2 {
+		return nil, fmt.Errorf("writing out %s: %d rows, %w", v.t.Name, len(rows), err)
+	}
+	units := map[string]string{}
+	for _, c := range table.Columns() {
+		units[c.Name] = c.Unit
+	}
+	apart := map[string]bool{"id": true, "name": true, "kind": true, "source": true, "unconfirmed": true, "conflicts": true, "notes": true}
+	var out []jsonListed
+	for k, column := range rows[0] {
+		if value := rows[1][k]; value != "" && !apart[column] {
+			out = append(out, jsonListed{column, value, units[column], v.t.IsUnconfirmed(column)})
+		}
+	}
+	return out, nil
+}
+
+// listText prints what the list says.
+func (v view) listText(b *strings.Builder) error {
+	listed, err := v.listed()
+	if err != nil {
+		return err
+	}
+	b.WriteString("\nlisted\n")
+	for _, l := range listed {
+		mark := ""
+		if l.Unconfirmed {
+			mark = "  (unconfirmed)"
+		}
+		fmt.Fprintf(b, "  %-15s %s %s%s\n", l.Column, l.Value, l.Unit, mark)
+	}
+	if v.t.Conflicts != "" {
+		fmt.Fprintf(b, "  sources disagree: %s\n", v.t.Conflicts)
+	}
+	if v.t.Notes != "" {
+		fmt.Fprintf(b, "  notes: %s\n", v.t.Notes)
+	}
+	if v.t.Source != "" {
+		fmt.Fprintf(b, "  source: %s\n", v.t.Source)
+	}
+	for _, why := range v.m.Why {
+		fmt.Fprintf(b, "  missing: %s\n", why)
+	}
+	return nil
+}
+
+// handOverFormat returns how the run wants coordinates written.
+func (s *session) handOverFormat() moment.HandOver {
+	if s.run == nil {
+		return moment.HandOver{}
+	}
+	h := s.run.Config.HandOver
+	return moment.HandOver{Motion: h.Motion, Format: h.Format, Separator: h.Separator, Order: h.Order}
+}
