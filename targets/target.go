@@ -31,9 +31,10 @@ var Kinds = []Kind{Giant, LPV, PostAGB, PN, WD, Interacting, Standard, Other}
 // Measure is a number that may be missing, with its error where one was given.
 // Its unit is that of the field it stands in.
 type Measure struct {
-	Value float64
-	Err   float64 // one sigma; 0: not given
-	Known bool
+	Value   float64
+	Err     float64 // one sigma; 0: not given
+	Known   bool
+	Assumed bool // Err was not given: half a unit of the last printed digit
 }
 
 // Known makes a measure without error.
