@@ -1,0 +1,148 @@
+package stage
+
+import (
+	"math"
+	"math/rand"
+	"slices"
+	"testing"
+
+	"evenfall/astro"
+	"evenfall/astro/check"
+	"evenfall/targets"
+	"evenfall/targets/builtin"
+)
+
+func sums(t testing.TB, v Verdict) {
+	t.Helper()
+	sum := 0.0
+	for _, s := range targets.Stages {
+		p := v.P[s]
+		if math.IsNaN(p) || p < 0 || p > 1 {
+			t.Fatalf("probability of %s is %v", s, p)
+		}
+		sum += p
+	}
+	if math.Abs(sum-1) > 1e-12 || len(v.P) != len(targets.Stages) {
+		t.Fatalf("probabilities of %d stages sum to %.15f", len(v.P), sum)
+	}
+}
+
+// What each kind of the built-in list must come out as: common practice, no
+// source, as the catalogue's own classification is.
+var agrees = map[string][]string{
+	"giant:subgiant":                {"SG"},
+	"giant:red giant branch":        {"RGB", "RGB|EAGB"},
+	"giant:red clump":               {"RC"},
+	"giant:horizontal branch":       {"HB"},
+	"giant:early AGB":               {"EAGB", "RGB|EAGB"},
+	"giant:carbon star":             {"TPAGB"},
+	"giant:S star":                  {"TPAGB"},
+	"giant:barium giant":            {"RGB", "RC"},
+	"giant:R Coronae Borealis":      {"PAGB"},
+	"giant:massive red supergiant":  {"RSG"},
+	"giant:asymptotic giant branch": {"TPAGB", "EAGB", "RGB|EAGB"},
+	"lpv":                           {"TPAGB"}, "postagb": {"PAGB"}, "pn": {"PN"}, "wd": {"WD"}, "interacting": {"ACC"},
+}
+
+// mayDiffer bounds how many of the 256 may come out otherwise than the
+// catalogue has them; each must have evidence that explains it.
+const mayDiffer = 30
+
+func TestJudgeBuiltin(t *testing.T) {
+	stars, err := builtin.Stars()
+	if err != nil {
+		t.Fatal(err)
+	}
+	m, differ := NewModels(), 0
+	for i := range stars {
+		s := &stars[i]
+		v := m.Judge(*s)
+		sums(t, v)
+		want, ok := agrees[string(s.Kind)+":"+s.KindNote]
+		if !ok {
+			want = agrees[string(s.Kind)]
+		}
+		if slices.Contains(want, v.Best) {
+			continue
+		}
+		differ++
+		if len(v.Evidence) == 0 {
+			t.Errorf("%s (%s %s) comes out as %s without evidence", s.Name, s.Kind, s.KindNote, v.Best)
+			continue
+		}
+		t.Logf("%s, listed as %s %s, comes out as %s: %s", s.Name, s.Kind, s.KindNote, v.Best, v.Evidence[0].What)
+	}
+	if differ > mayDiffer {
+		t.Errorf("%d of %d differ from the catalogue, at most %d may", differ, len(stars), mayDiffer)
+	}
+}
+
+// Shares of stages-and-brightness 3.1: Miras 0.97 on the thermally pulsing
+// AGB and none on the red giant branch; semiregulars by period.
+func TestJudgeShares(t *testing.T) {
+	m := NewModels()
+	mira := m.Judge(targets.Target{Name: "a", Var: targets.Variability{Type: "M"}})
+	if mira.Best != "TPAGB" || mira.P[targets.TPAGB] < 0.95 || mira.P[targets.RGB] > 0.005 {
+		t.Errorf("a Mira comes out as %s, %v", mira.Best, mira.P)
+	}
+	long := m.Judge(targets.Target{Name: "a", Var: targets.Variability{Type: "SRB", PeriodD: targets.Known(120)}})
+	check.Near(t, long.P[targets.TPAGB], 0.6, 0.05, "share of TP-AGB, semiregular of 120 d")
+	short := m.Judge(targets.Target{Name: "a", Var: targets.Variability{Type: "SRB", PeriodD: targets.Known(40)}})
+	check.Near(t, short.P[targets.RGB], 0.5, 0.05, "share of RGB, semiregular of 40 d")
+}
+
+// A white dwarf at M_G = -2 cannot be one.
+func TestContradiction(t *testing.T) {
+	v := NewModels().Judge(targets.Target{Name: "a", Kind: targets.WD,
+		Place: targets.Place{Plx: targets.KnownErr(10, 0.1)},
+		Mags:  map[targets.Band]targets.Measure{"G": targets.Known(3)}})
+	sums(t, v)
+	if v.Best == "WD" || v.P[targets.Dwarf] > 0.7 {
+		t.Errorf("comes out as %s with p(WD) = %.2f", v.Best, v.P[targets.Dwarf])
+	}
+	if !slices.ContainsFunc(v.Evidence, func(e targets.Evidence) bool { return len(e.What) > 13 && e.What[:13] == "contradiction" }) {
+		t.Errorf("no line names the contradiction: %v", v.Evidence)
+	}
+}
+
+// Red clump of Hawkins et al. 2017: a K0 III star at M_Ks = -1.61.
+func TestClump(t *testing.T) {
+	v := NewModels().Judge(targets.Target{Name: "a", Kind: targets.Giant, Physics: targets.Physics{SpType: "K0III"},
+		Place: targets.Place{Plx: targets.KnownErr(10, 0.1)},
+		Mags:  map[targets.Band]targets.Measure{"K": targets.Known(3.39)}})
+	if v.Best != "RC" {
+		t.Errorf("a K0 III star at clump brightness comes out as %s %v", v.Best, v.P)
+	}
+}
+
+func FuzzJudge(f *testing.F) {
+	f.Add("wd", "DA", "ZZA", 10.0, 0.1, 12.0, 11.0, 8.0, 10000.0)
+	f.Add("giant", "K0III", "", -5.0, 1.0, math.Inf(1), math.NaN(), -3.0, 1e300)
+	f.Fuzz(func(t *testing.T, kind, sp, vt string, plx, e, g, k, logg, teff float64) {
+		v := NewModels().Judge(targets.Target{Name: "x", Kind: targets.Kind(kind),
+			Physics: targets.Physics{SpType: sp, LogG: targets.Known(logg), TeffK: targets.Known(teff), EBV: targets.Known(e)},
+			Var:     targets.Variability{Type: vt, PeriodD: targets.Known(plx)},
+			Place:   targets.Place{Plx: targets.KnownErr(plx, e)},
+			Mags:    map[targets.Band]targets.Measure{"G": targets.Known(g), "K": targets.Known(k), "BP": targets.Known(g), "RP": targets.Known(k)}})
+		sums(t, v)
+		if v.Best == "" {
+			t.Fatal("no answer")
+		}
+		for _, ev := range v.Evidence {
+			if math.IsNaN(ev.Log10Odds) || ev.Source == "" || ev.What == "" {
+				t.Fatalf("evidence without figure or source: %+v", ev)
+			}
+		}
+	})
+}
+
+func BenchmarkJudge(b *testing.B) {
+	r := rand.New(rand.NewSource(1))
+	m := NewModels()
+	tg := targets.Target{Name: "x", Kind: targets.Giant, Physics: targets.Physics{SpType: "K0III"},
+		Place: targets.Place{RA: astro.Deg(10), Plx: targets.KnownErr(10, 0.1)},
+		Mags:  map[targets.Band]targets.Measure{"G": targets.Known(5 + r.Float64())}}
+	for b.Loop() {
+		m.Judge(tg)
+	}
+}
