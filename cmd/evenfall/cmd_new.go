@@ -42,3 +42,8 @@ func newCommand(w world) *cobra.Command {
 	})
 	return c
 }
+
+// placeOf turns a listed site into that of a new run.
+func placeOf(e builtin.SiteEntry) run.Place {
+	return run.Place{Name: e.Name, LatDeg: e.LatDeg, LonDeg: e.LonDeg, ElevM: e.ElevM, Zone: e.Zone}
+}

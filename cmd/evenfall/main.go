@@ -45,11 +45,11 @@ type world struct {
 func main() {
 	w := world{in: os.Stdin, out: os.Stdout, err: os.Stderr, clock: clock.System{}}
 	w.width, w.terminal = terminalSize()
-	os.Exit(run(w, os.Args[1:]))
+	os.Exit(execute(w, os.Args[1:]))
 }
 
-// run executes one call and returns the exit status.
-func run(w world, args []string) int {
+// execute runs one call and returns the exit status.
+func execute(w world, args []string) int {
 	err := rootCommand(w, args).Execute()
 	var usage usageError
 	switch {
