@@ -5,6 +5,7 @@ import (
 	"time"
 
 	"evenfall/astro"
+	"evenfall/astro/numeric"
 )
 
 // Crossing is one passage of a quantity through zero.
@@ -43,11 +44,12 @@ func Crossings(f func(astro.Instant) float64, span astro.Span, step time.Duratio
 	}
 	for i := 0; i < n; i++ {
 		if hidden, ok := vertex(f, at, values, i, n); ok {
-			found = append(found, closeIn(f, at(i), hidden, values[i])...)
-			found = append(found, closeIn(f, hidden, at(i+1), f(hidden))...)
+			found = append(found, closeIn(f, at(i), hidden, values[i] < 0), closeIn(f, hidden, at(i+1), values[i] >= 0))
 			continue
 		}
-		found = append(found, closeIn(f, at(i), at(i+1), values[i])...)
+		if (values[i] < 0) != (values[i+1] < 0) {
+			found = append(found, closeIn(f, at(i), at(i+1), values[i] < 0))
+		}
 	}
 	return found, values
 }
@@ -96,40 +98,32 @@ func parabolaClears(c, d, a, b float64) bool {
 	return low > 2*(high-low)
 }
 
-// closeIn returns the crossing between two instants, if the sign changes.
-func closeIn(f func(astro.Instant) float64, a, b astro.Instant, fa float64) []Crossing {
-	fb := f(b)
-	if (fa < 0) == (fb < 0) {
-		return nil
+// closeIn returns the crossing between two instants on different sides of zero.
+func closeIn(f func(astro.Instant) float64, a, b astro.Instant, up bool) Crossing {
+	at := func(ns float64) float64 { return f(a.Add(time.Duration(ns))) }
+	root, err := numeric.Root(at, 0, float64(b.Sub(a)), tolerance)
+	if err != nil {
+		// a jump, as of an hour angle at 12 h: halve the stretch down to it
+		root = halve(at, float64(b.Sub(a)), up)
 	}
-	up := fa < 0
-	lo, hi := 0.0, float64(b.Sub(a))
-	// regula falsi of the Illinois kind, with bisection as its guard
-	side := 0
-	for i := 0; i < 100 && hi-lo > 2e7; i++ { // 0.02 s
-		m := (lo*fb - hi*fa) / (fb - fa)
-		if i > 20 || m <= lo || m >= hi {
-			m = (lo + hi) / 2
-		}
-		fm := f(a.Add(time.Duration(m)))
-		if (fm < 0) == (fa < 0) {
-			lo, fa = m, fm
-			if side == 1 {
-				fb /= 2
-			}
-			side = 1
+	return Crossing{At: a.Add(time.Duration(root)), Up: up}
+}
+
+// tolerance is how near a crossing is closed in on, nanoseconds.
+const tolerance = 2e7
+
+// halve finds a change of sign in 0 to hi by bisection.
+func halve(at func(float64) float64, hi float64, up bool) float64 {
+	lo := 0.0
+	for hi-lo > tolerance {
+		mid := (lo + hi) / 2
+		if (at(mid) < 0) == up {
+			lo = mid
 		} else {
-			hi, fb = m, fm
-			if side == -1 {
-				fa /= 2
-			}
-			side = -1
-		}
-		if math.Abs(fm) < 1e-9 {
-			lo, hi = m, m
+			hi = mid
 		}
 	}
-	return []Crossing{{At: a.Add(time.Duration((lo + hi) / 2)), Up: up}}
+	return (lo + hi) / 2
 }
 
 // SpansAbove returns when the function is not below zero, from its crossings

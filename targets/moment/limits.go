@@ -15,10 +15,25 @@ import (
 // practice, no source.
 var moonIgnoredBelow = astro.Deg(-2)
 
-// look is a star with the Sun and the Moon at one instant.
+// look is a star at one instant; Sun and Moon are worked out when asked for.
 type look struct {
-	place     frame.Place
-	sun, moon *ephem.Body
+	place frame.Place
+	frame *frame.Frame
+	node  *node // nil: not at one of the night's nodes
+}
+
+func (k *look) sun() ephem.Body {
+	if k.node != nil {
+		return k.node.sun
+	}
+	return ephem.Sun(k.frame)
+}
+
+func (k *look) moon() ephem.Body {
+	if k.node != nil {
+		return k.node.moon
+	}
+	return ephem.Moon(k.frame)
 }
 
 // rule is a limit as a function that is not negative while it is kept.
@@ -58,11 +73,12 @@ func (t *tracker) rules() []rule {
 		{targets.CodeBelow, func(k look) float64 { return k.place.Alt.Minus(t.edges.horizon).Deg() }},
 		{targets.CodeAltitude, func(k look) float64 { return k.place.Alt.Minus(t.edges.hard).Deg() }},
 		{targets.CodeSun, func(k look) float64 {
-			return astro.Separation(k.place.Dir, k.sun.Dir).Minus(l.Sun).Deg()
+			return astro.Separation(k.place.Dir, k.sun().Dir).Minus(l.Sun).Deg()
 		}},
 		{targets.CodeMoon, func(k look) float64 {
-			far := astro.Separation(k.place.Dir, k.moon.Dir).Minus(l.Moon).Deg()
-			return math.Max(far, moonIgnoredBelow.Minus(k.moon.Place.Alt).Deg())
+			moon := k.moon()
+			far := astro.Separation(k.place.Dir, moon.Dir).Minus(l.Moon).Deg()
+			return math.Max(far, moonIgnoredBelow.Minus(moon.Place.Alt).Deg())
 		}},
 		{targets.CodeDeclination, func(k look) float64 {
 			d := k.place.Dec.Deg()
@@ -103,11 +119,10 @@ func (t *tracker) times(r rule) []astro.Span {
 		if next < len(nodes) && at.Sub(nodes[next].at) == 0 {
 			k := next
 			next++
-			return r.kept(look{t.places[k], &nodes[k].sun, &nodes[k].moon})
+			return r.kept(look{t.places[k], &nodes[k].frame, &nodes[k]})
 		}
 		f := frame.At(t.night.Site, at)
-		sun, moon := ephem.Sun(&f), ephem.Moon(&f)
-		return r.kept(look{f.Look(f.Observed(t.star)), &sun, &moon})
+		return r.kept(look{f.Look(f.Observed(t.star)), &f, nil})
 	}
 	found, values := ephem.Crossings(value, t.night.Span, nodeStep)
 	return ephem.SpansAbove(found, values[0], t.night.Span)
