@@ -14,8 +14,10 @@ import (
 //go:embed earth-series.csv
 var earthCSV string
 
-// The years for which the series was fitted; other dates take another route.
-const seriesFrom, seriesUntil = 2010.0, 2053.0
+// The years for which the series holds: fitted from 2010, it is good to 1.3 ms
+// until 2053.8 and then runs off, 11 ms by the end of 2053. It is used to that
+// end, marked as coarse; other dates take another route.
+const seriesFrom, seriesGood, seriesUntil = 2010.0, 2053.8, 2054.0
 
 // term is one sine and cosine of the Earth series, for three axes.
 type term struct {
@@ -107,7 +109,7 @@ type Earth struct {
 	Helio    astro.Vec // from the Sun's centre, AU
 	Velocity astro.Vec // barycentric, units of c
 	SunDrift astro.Vec // velocity of the Sun's centre, units of c
-	Fallback bool      // outside 2010-2053: coarser, see EarthAt
+	Fallback bool      // outside 2010 to 2053.8: coarser, see EarthAt
 }
 
 // Light-time for one AU in seconds, and the day and century.
@@ -136,14 +138,15 @@ const (
 //
 // Checked: TestEarthSeries, TestFallback, against testdata/astro/velocity.csv.
 func EarthAt(t astro.Instant) Earth {
-	if y := t.YearsTT(); y < seriesFrom || y > seriesUntil {
+	y := t.YearsTT()
+	if y < seriesFrom || y > seriesUntil {
 		return earthFallback(t)
 	}
 	T := t.CenturiesTT()
 	toC := auLightS / centuryS
 	bp, bv := baryEarth.at(T)
 	hp, hv := helioEarth.at(T)
-	return Earth{Bary: bp, Helio: hp, Velocity: bv.Times(toC), SunDrift: bv.Minus(hv).Times(toC)}
+	return Earth{Bary: bp, Helio: hp, Velocity: bv.Times(toC), SunDrift: bv.Minus(hv).Times(toC), Fallback: y > seriesGood}
 }
 
 func earthFallback(t astro.Instant) Earth {

@@ -81,7 +81,7 @@ def copied():
         for k in ("az", "alt", "ha", "ra_app", "dec_app", "alt_refr"):
             diff = (float(row[k]) - float(old[k]) + 180) % 360 - 180
             # az, ha and ra loosen by the cosine near zenith and poles
-            if abs(diff) > (3e-9 if k in ("alt", "dec_app") else 2e-7):
+            if abs(diff) > (5e-8 if k in ("alt", "dec_app") else 5e-6):
                 raise SystemExit(f"row {old['site']} {old['jd_frac']}: {k} was {old[k]}, now {row[k]}")
             row[k] = old[k]
     return rows
