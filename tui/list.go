@@ -157,7 +157,7 @@ func (m model) View() string {
 }
 
 func format(r Row, mark string) string {
-	line := fmt.Sprintf("%s %-16s %-11s %8s %5s  %-10s %-20s", mark, fit(r.Name, 16), r.Kind, r.Altitude, r.Airmass, r.Stage, r.Expected)
+	line := fmt.Sprintf("%s %-14s %-11s %7s %5s  %-8s %-18s", mark, fit(r.Name, 14), r.Kind, r.Altitude, r.Airmass, r.Stage, r.Expected)
 	if r.Blocked != "" {
 		line += " " + r.Blocked
 	}

@@ -15,7 +15,7 @@ import (
 const (
 	defaultWidth = 80  // where output is no terminal
 	wideFrom     = 110 // from here on, positions and the limit that ends the window
-	nameWidth    = 16
+	nameWidth    = 14
 )
 
 // listText prints the list for people: a head of three lines, the targets to
@@ -63,10 +63,10 @@ func (s *session) head(b *strings.Builder) {
 }
 
 func listHeading(wide bool) string {
-	h := fmt.Sprintf("%4s %-*s %-9s %-20s %6s %5s %5s %4s %5s %4s", "take", nameWidth, "name", "stage",
-		"expected", "alt", "X", "best", "X", "left", "Moon")
+	h := fmt.Sprintf("take %-*s %-8s %-18s %6s %4s %5s %4s %5s %3s", nameWidth, "name", "stage  %",
+		"expected", "alt ", "X", "best", "X", "left", "Mn")
 	if wide {
-		h += "  ends by      kind         ICRS now"
+		h += "  ends by      kind         ICRS at the moment"
 	}
 	return h
 }
@@ -74,15 +74,14 @@ func listHeading(wide bool) string {
 // row prints one target.
 func (s *session) row(i int, wide bool) string {
 	t, m := &s.targets[i], &s.moments[i]
-	name := cut(t.Name, nameWidth)
+	head := fmt.Sprintf("%-*s %-8s %-18s", nameWidth, cut(t.Name, nameWidth), stageWord(&m.Stage), expectWord(&m.Expect))
 	if !m.InCan {
-		return fmt.Sprintf("   - %-*s %-9s %-20s %s", nameWidth, name, stageWord(&m.Stage), expectWord(&m.Expect), blockedWord(m))
+		return "  -  " + head + " " + blockedWord(m)
 	}
-	sign := "-"
+	sign, mark := "-", " "
 	if m.Rising {
 		sign = "+"
 	}
-	mark := " "
 	if !m.InShould {
 		mark = "~"
 	}
@@ -91,9 +90,8 @@ func (s *session) row(i int, wide bool) string {
 		best = m.Course.Best.UTC().Round(time.Minute).Format("15:04")
 		bestX = fmt.Sprintf("%.2f", float64(m.Course.BestAirmass))
 	}
-	line := fmt.Sprintf("%3d%s %-*s %-9s %-20s %5.1f%s %5.2f %5s %4s %5s %4.0f", m.Rank, mark, nameWidth, name,
-		stageWord(&m.Stage), expectWord(&m.Expect), m.Apparent.Deg(), sign, float64(m.Airmass),
-		best, bestX, left(m.Left), m.MoonSep.Deg())
+	line := fmt.Sprintf("%3d%s %s %5.1f%s %4.2f %5s %4s %5s %3.0f", m.Rank, mark, head, m.Apparent.Deg(), sign,
+		float64(m.Airmass), best, bestX, left(m.Left), m.MoonSep.Deg())
 	if wide {
 		line += fmt.Sprintf("  %-11s  %-11s  %s %s", m.EndsBy, t.Kind, m.RA.HMS(1), m.Dec.DMS(0))
 	}
@@ -130,15 +128,17 @@ func firstReason(m *moment.Moment) string {
 	return "blocked"
 }
 
-// stageWord is the judgement with its probability, or two codes merged.
+// stageWord is the judgement with its probability in per cent, 99 at most;
+// two codes merged go without.
 func stageWord(v *stage.Verdict) string {
+	word := v.Best
 	switch v.Best {
 	case targets.Undecided:
-		return "undecided"
+		word = "undec"
 	case targets.Merged:
 		return v.Best
 	}
-	return fmt.Sprintf("%-5s %2.0f%%", v.Best, 100*stageP(v))
+	return fmt.Sprintf("%-5s %2.0f", word, min(100*stageP(v), 99))
 }
 
 // stageP is the probability of the answer given.
@@ -160,13 +160,13 @@ func stageP(v *stage.Verdict) float64 {
 func expectWord(f *light.Forecast) string {
 	switch {
 	case f.SB != nil:
-		return fmt.Sprintf("%-2s %5.1f/sq\" %4.1f mag", f.Band, f.SB.Value.MagArcsec2(), f.Mag.Mags())
+		return fmt.Sprintf("%-2s%5.1f %5.1f/sq\"", f.Band, f.Mag.Mags(), f.SB.Value.MagArcsec2())
 	case !f.Known:
-		return "brightness unknown"
-	case f.Phase != nil && f.Phase.Status == "unknown":
-		return fmt.Sprintf("%-2s  any %5.1f..%.1f", f.Band, f.Lo.Mags(), f.Hi.Mags())
+		return "not known"
+	case f.Phase != nil && f.Phase.Status == light.PhaseUnknown:
+		return fmt.Sprintf("%-2s  any %.1f..%.1f", f.Band, f.Lo.Mags(), f.Hi.Mags())
 	}
-	return fmt.Sprintf("%-2s %5.1f %5.1f..%.1f", f.Band, f.Mag.Mags(), f.Lo.Mags(), f.Hi.Mags())
+	return fmt.Sprintf("%-2s%5.1f %.1f..%.1f", f.Band, f.Mag.Mags(), f.Lo.Mags(), f.Hi.Mags())
 }
 
 // left writes a duration as hours and minutes.
@@ -188,10 +188,11 @@ func cut(s string, width int) string {
 }
 
 func (s *session) legend() string {
-	level := 80.0
+	level := 100 * light.DefaultLevel
 	if len(s.moments) > 0 {
 		level = 100 * s.moments[0].Expect.Level
 	}
-	return fmt.Sprintf("alt refracted, deg, + rising - sinking; X airmass; best and from in UTC; left until the window ends;\n"+
-		"~ possible but outside the wished-for limits; expected brightness with its %.0f %% interval, brighter end first", level)
+	return fmt.Sprintf("alt: refracted, deg, + rising - sinking; X: airmass; best, from: UTC; Mn: deg\n"+
+		"from the Moon; ~ possible but outside the wished-for limits; stage: likeliest,\n"+
+		"its %%; expected: band, magnitude, %.0f %% interval with the brighter end first", level)
 }

@@ -37,6 +37,9 @@ type star struct {
 // lookUp places a target on the diagram.
 func lookUp(t *targets.Target) star {
 	var s star
+	if t.Kind == targets.Interacting {
+		return s // the light may be the companion's, or the disc's
+	}
 	plx := t.Place.Plx
 	switch {
 	case !plx.Known:
