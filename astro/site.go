@@ -30,8 +30,7 @@ type Weather struct {
 // Returns:
 //   - hPa.
 //
-// Source: ISO 2533:1975, International Standard Atmosphere; the constants as
-// commonly printed.
+// Source: [cite.ISO2533]; the constants as commonly printed.
 //
 // Checked: TestStandardPressure, 0.01 hPa.
 func StandardPressure(heightM float64) float64 {

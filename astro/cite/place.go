@@ -185,10 +185,3 @@ var WGS84 = Ref{
 	Title: "Department of Defense World Geodetic System 1984, 3rd edition",
 	Where: "Technical Report TR8350.2, amendment 1",
 }
-
-// Borkowski1987 turns vectors into geodetic places.
-var Borkowski1987 = Ref{
-	Authors: "Borkowski", Year: 1987,
-	Title: "Transformation of geocentric to geodetic coordinates without approximations",
-	Where: "Ap&SS 139, 1",
-}

@@ -26,7 +26,8 @@ func poly(t float64, c ...float64) astro.Angle {
 //   - t: Julian centuries TT since J2000.0, within a few centuries.
 //
 // Source: [cite.HiltonEtAl2006], [cite.WallaceCapitaine2006]; as adopted by
-// the IAU in 2006.
+// the IAU in 2006. The angles are those of [cite.Williams1994] and
+// [cite.Fukushima2003].
 //
 // Checked: TestPrecession, against testdata/astro/precession.csv, 1e-9 arcsec.
 func precessionOf(t float64) precession {

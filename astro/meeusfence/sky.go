@@ -59,8 +59,8 @@ func EarthVelocity(t astro.Instant) astro.Vec {
 // ecliptic and equinox of date, light-time included, and its distance from the
 // Earth's centre in kilometres. Nutation is not in it.
 //
-// Source: [cite.Meeus1998], chapter 47; against an independent ephemeris
-// 13 arcsec and 12 km at most.
+// Source: [cite.Meeus1998], chapter 47, after [cite.ChaprontTouzeChapront1988];
+// against an independent ephemeris 13 arcsec and 12 km at most.
 func Moon(t astro.Instant) (lon, lat astro.Angle, distanceKm float64) {
 	l, b, km := moonposition.Position(t.JDTT())
 	return astro.Rad(l.Rad()), astro.Rad(b.Rad()), km

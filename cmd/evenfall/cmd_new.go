@@ -1,6 +1,7 @@
 package main
 
 import (
+	"errors"
 	"fmt"
 
 	"github.com/spf13/cobra"
@@ -25,7 +26,11 @@ func newCommand(w world) *cobra.Command {
 				}
 				place = placeOf(e)
 			}
-			if err := run.New(args[0], place); err != nil {
+			err := run.New(args[0], place)
+			if errors.Is(err, run.ErrExists) {
+				return usageError{err}
+			}
+			if err != nil {
 				return err
 			}
 			fmt.Fprintf(w.out, "made %s: edit run.toml, then: evenfall check --run %s\n", args[0], args[0])

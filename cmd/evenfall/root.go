@@ -17,12 +17,13 @@ the safety of people and instruments are the observatory's; its rules come first
 func rootCommand(w world, args []string) *cobra.Command {
 	o := &options{}
 	root := &cobra.Command{
-		Use:           "evenfall",
-		Short:         "what to observe next among stars late in their lives",
-		Long:          job + "\n\n" + caution,
-		SilenceErrors: true,
-		SilenceUsage:  true,
-		Args:          noArgs,
+		Use:                        "evenfall",
+		Short:                      "what to observe next among stars late in their lives",
+		Long:                       job + "\n\n" + caution,
+		SilenceErrors:              true,
+		SuggestionsMinimumDistance: 2,
+		SilenceUsage:               true,
+		Args:                       noArgs,
 		RunE: func(cmd *cobra.Command, _ []string) error {
 			if w.terminal {
 				return openScreen(w, o)

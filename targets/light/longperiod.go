@@ -12,7 +12,8 @@ import (
 // fainter than the brightest, its minimum this much brighter than the faintest
 // ever listed. Measured on ASAS-3 light curves of 149 Miras.
 //
-// Source: [cite.Pojmanski2002] for the data; the measurement is this project's.
+// Source: [cite.Pojmanski2002] for the light curves, [cite.SamusEtAl2017] for the
+// extremes; the measurement is this project's.
 const (
 	maxIsFainter   = 0.77
 	minIsBrighter  = 0.92

@@ -95,8 +95,10 @@ type locus struct {
 	mean, sigma float64
 }
 
-// loci by band; broad stages have a broad Gaussian. Red clump and tip from the
-// works cited, the rest common practice.
+// loci by band; broad stages have a broad Gaussian.
+//
+// Source: [cite.HawkinsEtAl2017] for the clump, [cite.MuravevaEtAl2018] for the
+// horizontal branch; the rest common practice, no source.
 var loci = map[targets.Band][]locus{
 	"K": {
 		{targets.MS, 4.5, 1.8}, {targets.SG, 1.9, 0.8}, {targets.RGB, -2.6, 1.9}, {targets.RC, -1.61, 0.22}, {targets.HB, -0.5, 0.8},
