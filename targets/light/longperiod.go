@@ -152,7 +152,7 @@ func PhaseError(cycles float64) float64 {
 }
 
 // steps of phase over which the mixture is summed.
-const phaseSteps = 72
+const phaseSteps = 48
 
 func (l *longPeriod) at(t astro.Instant, band targets.Band, level float64) Forecast {
 	conv, ok := l.convert(band)

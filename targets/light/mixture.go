@@ -4,6 +4,7 @@ import (
 	"math"
 
 	"evenfall/astro"
+	"evenfall/astro/numeric"
 )
 
 // part is one normal component of a mixture.
@@ -21,25 +22,18 @@ func (m mixture) cdf(x float64) float64 {
 	return sum
 }
 
-// quantile returns the value below which a fraction q lies, by bisection on
-// the distribution function: exact to 1e-6 mag.
+// quantile returns the value below which a fraction q lies, exact to 1e-6 mag;
+// not a number where the components are none.
 func (m mixture) quantile(q float64) float64 {
 	lo, hi := math.Inf(1), math.Inf(-1)
 	for _, c := range m {
 		lo, hi = math.Min(lo, c.mean-9*c.sd), math.Max(hi, c.mean+9*c.sd)
 	}
-	for hi-lo > 1e-6 {
-		mid := (lo + hi) / 2
-		if mid <= lo || mid >= hi {
-			break
-		}
-		if m.cdf(mid) < q {
-			lo = mid
-		} else {
-			hi = mid
-		}
+	x, err := numeric.Root(func(x float64) float64 { return m.cdf(x) - q }, lo, hi, 1e-6)
+	if err != nil {
+		return math.NaN()
 	}
-	return (lo + hi) / 2
+	return x
 }
 
 // interval fills median and bounds of a forecast from a mixture.

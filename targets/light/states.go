@@ -53,7 +53,7 @@ var classes = []struct {
 	{regexp.MustCompile(`ZAND`), "symbiotic star", func(a, b, _ float64) []state {
 		return []state{{"quiescence", 0.85, b - 0.25*(b-a), 0.15*(b-a) + 0.2}, {"outburst", 0.15, a + 0.5, 0.5}}
 	}},
-	{regexp.MustCompile(`^N[ABCRL]?(\b|:|\+)`), "nova long after its outburst", func(a, b, _ float64) []state {
+	{regexp.MustCompile(`^N[ABCR]?(\b|:|\+)`), "nova long after its outburst", func(a, b, _ float64) []state {
 		return []state{{"quiescence", 0.9995, b - 0.3, 0.5}, {"eruption", 0.0005, a + 0.7, 0.7}}
 	}},
 	{regexp.MustCompile(`^AM`), "polar", func(a, b, _ float64) []state {

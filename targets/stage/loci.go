@@ -42,7 +42,7 @@ func lookUp(t *targets.Target) star {
 	}
 	plx := t.Place.Plx
 	switch {
-	case !plx.Known:
+	case !finite(plx):
 		s.missing = append(s.missing, "no parallax: how luminous it is says nothing about the stage")
 		return s
 	case plx.Value <= 0:
@@ -61,7 +61,7 @@ func lookUp(t *targets.Target) star {
 		a    float64
 	}{{"K", extinctionK}, {"G", extinctionG}, {"V", extinctionV}} {
 		m := t.Mags[b.band]
-		if !m.Known {
+		if !finite(m) {
 			continue
 		}
 		s.band, s.known = b.band, true
@@ -72,18 +72,23 @@ func lookUp(t *targets.Target) star {
 	if !s.known {
 		s.missing = append(s.missing, "no magnitude in K, G or V: no luminosity")
 	}
-	if bp, rp := t.Mags["BP"], t.Mags["RP"]; bp.Known && rp.Known {
+	if bp, rp := t.Mags["BP"], t.Mags["RP"]; finite(bp) && finite(rp) {
 		s.bprp, s.colour = bp.Value-rp.Value-reddenBPRP*ebv, true
 	}
 	return s
 }
 
+// finite tells whether a measure is a number of ordinary size.
+func finite(m targets.Measure) bool {
+	return m.Known && math.Abs(m.Value) < 1e6 && !(math.Abs(m.Err) >= 1e6) && !math.IsNaN(m.Err)
+}
+
 // excess returns the colour excess that the list gives, 0 where it gives none.
 func excess(t *targets.Target) float64 {
 	switch p := &t.Physics; {
-	case p.EBV.Known:
+	case finite(p.EBV):
 		return math.Max(p.EBV.Value, 0)
-	case p.AV.Known:
+	case finite(p.AV):
 		return math.Max(p.AV.Value, 0) / extinctionV
 	}
 	return 0
