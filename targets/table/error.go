@@ -25,6 +25,8 @@ func (e *Error) Error() string {
 		what = fmt.Sprintf("%s %q: %s", e.Field, e.Value, e.Problem)
 	case e.Field != "":
 		what = fmt.Sprintf("%s: %s", e.Field, e.Problem)
+	case e.Value != "":
+		what = fmt.Sprintf("%q: %s", e.Value, e.Problem)
 	}
 	if e.Warning {
 		what = "warning: " + what
