@@ -197,7 +197,7 @@ func (t *tree) leftovers(b *block) {
 					best, fix = d, "did you mean "+k
 				}
 			}
-			t.problem(n.at, b.field(key), "", "no such key", fix)
+			t.problem(n.key, b.field(key), "", "no such key", fix)
 			continue
 		}
 		t.leftoversBelow(n)

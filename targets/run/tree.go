@@ -17,9 +17,10 @@ import (
 
 // node is one value of a TOML file and where it stands.
 type node struct {
-	at    targets.Where
-	text  string // as written
-	value any    // string, float64, bool, []*node, *block
+	key   targets.Where // of the key
+	at    targets.Where // of the value
+	text  string        // as written
+	value any           // string, float64, bool, []*node, *block
 }
 
 // block is one table of a TOML file: its keys, and which were asked for.
@@ -139,7 +140,7 @@ func (t *tree) open(root *block, e *unstable.Node, array bool) *block {
 		last := i == len(parts)-1
 		n, ok := b.keys[name]
 		if !ok {
-			n = &node{at: at}
+			n = &node{key: at, at: at}
 			b.keys[name] = n
 			b.order = append(b.order, name)
 		}
@@ -180,7 +181,7 @@ func (t *tree) keyValue(b *block, e *unstable.Node) {
 	for _, name := range parts[:len(parts)-1] {
 		n, ok := b.keys[name]
 		if !ok {
-			n = &node{at: t.where(first)}
+			n = &node{key: t.where(first), at: t.where(first)}
 			b.keys[name] = n
 			b.order = append(b.order, name)
 		}
@@ -196,7 +197,7 @@ func (t *tree) keyValue(b *block, e *unstable.Node) {
 // value turns a parsed value into a node; the key's place serves where the
 // value has none of its own.
 func (t *tree) value(v *unstable.Node, path string, key targets.Where) *node {
-	n := &node{at: key, text: string(v.Data)}
+	n := &node{key: key, at: key, text: string(v.Data)}
 	if v.Raw.Length > 0 {
 		n.at = t.where(v.Raw)
 	}
