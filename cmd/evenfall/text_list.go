@@ -14,7 +14,8 @@ import (
 
 const (
 	defaultWidth = 80  // where output is no terminal
-	wideFrom     = 110 // from here on, positions and the limit that ends the window
+	wideFrom     = 116 // from here on, the limit that ends the window and the position
+	widestFrom   = 129 // and the kind
 	nameWidth    = 14
 )
 
@@ -26,8 +27,7 @@ func (s *session) listText(w io.Writer, width int) error {
 	}
 	var b strings.Builder
 	s.head(&b)
-	wide := width >= wideFrom
-	fmt.Fprintln(&b, listHeading(wide))
+	fmt.Fprintln(&b, cut(listHeading(width), width))
 	said := false
 	for _, i := range s.order {
 		m := &s.moments[i]
@@ -38,7 +38,7 @@ func (s *session) listText(w io.Writer, width int) error {
 		if m.InCan {
 			said = false
 		}
-		fmt.Fprintln(&b, cut(s.row(i, wide), width))
+		fmt.Fprintln(&b, cut(s.row(i, width), width))
 	}
 	if len(s.order) == 0 {
 		fmt.Fprintln(&b, "no targets: the list is empty")
@@ -62,17 +62,20 @@ func (s *session) head(b *strings.Builder) {
 		s.scene.Sun.Place.Alt.Deg(), moon.Place.Alt.Deg(), 100*s.scene.Phase.Illuminated)
 }
 
-func listHeading(wide bool) string {
+func listHeading(width int) string {
 	h := fmt.Sprintf("take %-*s %-8s %-18s %6s %4s %5s %4s %5s %3s", nameWidth, "name", "stage  %",
 		"expected", "alt ", "X", "best", "X", "left", "Mn")
-	if wide {
-		h += "  ends by      kind         ICRS at the moment"
+	if width >= wideFrom {
+		h += "  ends by      ICRS at the moment"
+	}
+	if width >= widestFrom {
+		h += "    kind"
 	}
 	return h
 }
 
 // row prints one target.
-func (s *session) row(i int, wide bool) string {
+func (s *session) row(i, width int) string {
 	t, m := &s.targets[i], &s.moments[i]
 	head := fmt.Sprintf("%-*s %-8s %-18s", nameWidth, cut(t.Name, nameWidth), stageWord(&m.Stage), expectWord(&m.Expect))
 	if !m.InCan {
@@ -92,8 +95,11 @@ func (s *session) row(i int, wide bool) string {
 	}
 	line := fmt.Sprintf("%3d%s %s %5.1f%s %4.2f %5s %4s %5s %3.0f", m.Rank, mark, head, m.Apparent.Deg(), sign,
 		float64(m.Airmass), best, bestX, left(m.Left), m.MoonSep.Deg())
-	if wide {
-		line += fmt.Sprintf("  %-11s  %-11s  %s %s", m.EndsBy, t.Kind, m.RA.HMS(1), m.Dec.DMS(0))
+	if width >= wideFrom {
+		line += fmt.Sprintf("  %-11s  %s %s", m.EndsBy, m.RA.HMS(1), m.Dec.DMS(0))
+	}
+	if width >= widestFrom {
+		line += "  " + string(t.Kind)
 	}
 	return line
 }
