@@ -51,7 +51,10 @@ func openScreen(w world, o *options) error {
 // page makes the rows of the screen.
 func (s *session) page() tui.Page {
 	t := s.at.UTC()
-	p := tui.Page{Title: "evenfall  " + s.heading()}
+	p := tui.Page{Title: "evenfall  " + s.site.Name}
+	if s.demo {
+		p.Title = "evenfall  DEMONSTRATION  " + s.site.Name
+	}
 	p.Time = fmt.Sprintf("%s  LST %s  %s  Moon %.0f %% lit", t.Format("Mon 2 Jan 2006 15:04 UTC"),
 		s.scene.Frame.LST.HMS(0), s.scene.Part, 100*s.scene.Phase.Illuminated)
 	for _, i := range s.order {
