@@ -7,6 +7,7 @@ import (
 	"io/fs"
 	"os"
 	"path/filepath"
+	"slices"
 	"strings"
 	"time"
 
@@ -293,6 +294,7 @@ func (s *session) compute(o *options) {
 	for i := range s.targets {
 		s.prepared[i] = moment.Prepare(s.targets[i], byTarget[i], models)
 		s.wants[i] = moment.Want{Band: targets.Band(o.band), Level: o.level, Weight: weights[i]}
+		s.equip(&s.wants[i], i)
 		s.courses[i] = moment.Tonight(s.night, &s.prepared[i], s.wants[i])
 		s.moments[i] = moment.Of(&s.scene, &s.prepared[i], &s.courses[i], s.wants[i])
 	}
@@ -309,6 +311,33 @@ func (s *session) magnitudesByTarget() map[int][]targets.Magnitude {
 		}
 	}
 	return out
+}
+
+// equip finds the instrument and mode that a target's heaviest request, or the
+// default of its kind, takes it with; their limits then hold.
+func (s *session) equip(w *moment.Want, i int) {
+	if s.run == nil || len(s.run.Config.Instruments) == 0 {
+		return
+	}
+	night, listed := s.run.Config.NightOn(s.night.Date)
+	request, ok := s.run.Config.DefaultRequest(s.targets[i].Kind, night.Instruments...)
+	heaviest := -1.0
+	for k := range s.requests {
+		q := &s.requests[k]
+		if j, err := table.Match(s.targets, q.Target); err == nil && j == i && q.Instrument != "" && q.Weight > heaviest {
+			request, heaviest, ok = *q, q.Weight, true
+		}
+	}
+	if !ok {
+		return
+	}
+	if w.Instrument, ok = s.run.Config.Instrument(request.Instrument); !ok {
+		return
+	}
+	w.Mode, _ = w.Instrument.Mode(request.Mode)
+	if listed && len(night.Instruments) > 0 && !slices.Contains(night.Instruments, w.Instrument.Name) {
+		w.NotMounted = w.Instrument.Name
+	}
 }
 
 // weights returns the greatest weight among each target's requests, 1 without.

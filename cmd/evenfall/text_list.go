@@ -124,6 +124,7 @@ func firstReason(m *moment.Moment) string {
 		targets.CodeAltitude: "too low", targets.CodeHorizon: "behind the horizon", targets.CodeZenith: "near the zenith",
 		targets.CodeHourAngle: "hour angle", targets.CodeDeclination: "declination", targets.CodeMoon: "near the Moon",
 		targets.CodeWind: "wind", targets.CodeWindow: "not our hours", targets.CodeClosed: "closed",
+		targets.CodeInstrument: "not mounted",
 	}
 	for _, b := range m.BlockedBy {
 		if w, ok := short[b.Code]; ok {

@@ -19,6 +19,7 @@ const (
 	minIsBrighter  = 0.92
 	scatterMaximum = 0.5 // of single maxima, mag
 	scatterMinimum = 0.3
+	leastScatter   = 0.05 // no curve is better than that
 	// leastShare is how much of the listed range the mean curve keeps at least,
 	// where the two shifts would eat it up: amplitudes under some 2.8 mag.
 	leastShare = 0.4
@@ -74,7 +75,7 @@ func newLongPeriod(t targets.Target) model {
 func (l *longPeriod) fromExtremes(max, min float64) {
 	share := math.Min(1, (1-leastShare)*(min-max)/(maxIsFainter+minIsBrighter))
 	l.bright, l.faint = max+share*maxIsFainter, min-share*minIsBrighter
-	l.sdMax, l.sdMin = share*scatterMaximum+0.05, share*scatterMinimum+0.05
+	l.sdMax, l.sdMin = math.Max(share*scatterMaximum, leastScatter), math.Max(share*scatterMinimum, leastScatter)
 	l.how = fmt.Sprintf("mean curve from %.1f to %.1f in %s, from catalogue extremes %.1f to %.1f", l.bright, l.faint, l.band, max, min)
 }
 

@@ -18,6 +18,7 @@ type Want struct {
 	Instrument *instrument.Instrument // nil: none, the site's limits hold
 	Mode       *instrument.Mode       // nil: none
 	Weight     float64                // of the target's request, 1 by default
+	NotMounted string                 // the instrument wanted is not on the telescope tonight: its name
 }
 
 // limit is one limit and the times tonight at which it is kept.
@@ -39,6 +40,7 @@ type Course struct {
 	wished        []limit
 	SetAside      []targets.Code // limits that close the whole night by themselves
 	ClosedAllOver bool           // no window tonight
+	NotMounted    string         // as wanted
 }
 
 // Tonight works out a target's night.
@@ -63,6 +65,10 @@ func Tonight(n *Night, p *Prepared, w Want) Course {
 		sunAt = w.Mode.MaxSunAltitude
 	}
 	c.limits = t.hard(sunAt)
+	if w.NotMounted != "" {
+		c.NotMounted = w.NotMounted
+		c.limits = append(c.limits, limit{targets.CodeInstrument, nil})
+	}
 	c.wished = t.wish()
 	c.Can = []astro.Span{n.Span}
 	for _, l := range c.limits {

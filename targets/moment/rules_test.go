@@ -1,6 +1,8 @@
 package moment
 
 import (
+	"math"
+	"sort"
 	"strings"
 	"testing"
 	"time"
@@ -10,6 +12,7 @@ import (
 	"evenfall/astro"
 	"evenfall/astro/check"
 	"evenfall/targets"
+	"evenfall/targets/instrument"
 )
 
 // In daylight and near the Sun nothing is ranked, and the reason is given.
@@ -169,5 +172,44 @@ func TestPolarDay(t *testing.T) {
 	}
 	if got := s.Instant.Sub(n.Midnight); got > time.Minute || got < -time.Minute {
 		t.Errorf("without darkness the moment is %v from midnight", got)
+	}
+}
+
+// What such white dwarfs move is the median of those that list it.
+func TestTypicalMotion(t *testing.T) {
+	var motions []float64
+	for _, p := range testStars(t) {
+		if pl := p.Target.Place; p.Target.Kind == targets.WD && p.Target.MotionKnown() {
+			motions = append(motions, math.Hypot(pl.PMRA.Value, pl.PMDec.Value)/1000)
+		}
+	}
+	sort.Float64s(motions)
+	check.Near(t, motions[len(motions)/2], typicalMotionWD.Arcsec(), 0.03, "median motion of %d white dwarfs, arcsec a year", len(motions))
+}
+
+// An instrument's own limits and a mode's Sun altitude take the place of the
+// site's; one that is not mounted closes the night.
+func TestInstrumentLimits(t *testing.T) {
+	n, stars := testNight(t, targets.DefaultLimits()), testStars(t)
+	p := &stars[0]
+	for k := range stars {
+		if stars[k].Target.ID == "tau4-eri" { // culminates in the middle of the night
+			p = &stars[k]
+		}
+	}
+	i := instrument.Instrument{Name: "a", Limits: targets.DefaultLimits()}
+	i.Limits.HourAngleH = [2]float64{-1, 1}
+	m := instrument.Mode{Name: "flat", MaxSunAltitude: astro.Deg(-3), MaxSunAltitudeOK: true}
+	c := Tonight(n, p, Want{Instrument: &i, Mode: &m})
+	length := astro.Total(c.Can).Hours()
+	check.Near(t, length, 2*0.99727, 0.01, "hours within an hour angle of 1 h")
+	if c := Tonight(n, p, Want{Instrument: &i, NotMounted: "a"}); len(c.Can) != 0 {
+		t.Error("an instrument that is not mounted is used")
+	}
+	i.Limits = targets.DefaultLimits()
+	p = &stars[0] // bet Hyi, high already at dusk
+	with, without := Tonight(n, p, Want{Instrument: &i, Mode: &m}), Tonight(n, p, Want{})
+	if !with.Can[0].From.Before(without.Can[0].From) {
+		t.Errorf("a mode for a brighter sky begins at %v, without it at %v", with.Can[0].From.UTC(), without.Can[0].From.UTC())
 	}
 }

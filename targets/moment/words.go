@@ -40,6 +40,8 @@ func words(s *Scene, m *Moment, b Block) string {
 		text = "in the sector of the wind"
 	case targets.CodeWindow:
 		text = "outside the hours allocated tonight"
+	case targets.CodeInstrument:
+		text = m.Course.NotMounted + " is not mounted tonight"
 	case targets.CodeClosed:
 		text = "the dome is closed"
 	default:

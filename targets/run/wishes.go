@@ -179,8 +179,9 @@ func (c *Config) AllocatedOn(span astro.Span, date astro.Date) []astro.Span {
 // standard the first slit with S/N 100 per element; wd slit, 30; lpv the
 // imager in V, 50; pn the first line mode, 30 over 10 square arcsec;
 // interacting the first fast photometer, else the imager, for 60 minutes.
-// Without instruments there is no request: false.
-func (c *Config) DefaultRequest(kind targets.Kind) (targets.Request, bool) {
+// Without instruments there is no request: false. Where names of instruments
+// are given, those mounted, only they count.
+func (c *Config) DefaultRequest(kind targets.Kind, mounted ...string) (targets.Request, bool) {
 	r := targets.Request{Band: "V", Visits: 1, Weight: 1}
 	d := c.Defaults[kind]
 	if d.Given {
@@ -189,7 +190,8 @@ func (c *Config) DefaultRequest(kind targets.Kind) (targets.Request, bool) {
 	pick := func(kinds ...string) *instrument.Instrument {
 		for _, want := range kinds {
 			for k := range c.Instruments {
-				if c.Instruments[k].Kind == want {
+				on := len(mounted) == 0 || slices.Contains(mounted, c.Instruments[k].Name)
+				if c.Instruments[k].Kind == want && on {
 					return &c.Instruments[k]
 				}
 			}
@@ -210,7 +212,7 @@ func (c *Config) DefaultRequest(kind targets.Kind) (targets.Request, bool) {
 	default:
 		i, r.SNR, r.SNRPer = pick(instrument.Slit, instrument.Imager), targets.Known(100), "element"
 	}
-	if d.Instrument != "" {
+	if d.Instrument != "" && (len(mounted) == 0 || slices.Contains(mounted, d.Instrument)) {
 		i, _ = c.Instrument(d.Instrument)
 	}
 	if i == nil {
@@ -239,7 +241,7 @@ func modeFor(i *instrument.Instrument, kind targets.Kind) string {
 
 // override puts what run.toml says of a kind over the defaults of the program.
 func override(r *targets.Request, d Default) {
-	if d.Mode != "" {
+	if d.Mode != "" && (d.Instrument == "" || d.Instrument == r.Instrument) {
 		r.Mode = d.Mode
 	}
 	if d.Band != "" {
