@@ -120,9 +120,27 @@ type jsonShow struct {
 	Night         string   `json:"night"`
 	jsonTarget
 	Derived  map[string]jsonDerived `json:"derived"`
+	Events   []jsonEvent            `json:"events"`
 	HandOver []string               `json:"handover"`
 	Listed   []jsonListed           `json:"listed"`
 	Steps    []jsonStep             `json:"steps"`
+}
+
+// jsonEvent is a dated happening of the target.
+type jsonEvent struct {
+	Kind   string  `json:"kind"`
+	At     string  `json:"at_utc"`
+	AtBJD  float64 `json:"at_bjd_tdb"`
+	SigmaS float64 `json:"sigma_s"`
+	Status string  `json:"status"`
+}
+
+func (v view) events() []jsonEvent {
+	out := []jsonEvent{}
+	for _, e := range v.p.Light.Next(v.m.At) {
+		out = append(out, jsonEvent{e.Kind, stamp(e.At), round(e.BJDTDB, 6), round(e.SigmaS, 1), e.Status})
+	}
+	return out
 }
 
 // jsonDerived is a quantity of the star itself.
@@ -142,7 +160,7 @@ func (v view) showShape() (jsonShow, error) {
 	}
 	out := jsonShow{
 		Demonstration: v.s.demo, Site: siteShape(v.s.site), At: stamp(v.m.At), Night: v.s.night.Date.String(),
-		jsonTarget: targetShape(v.t, v.p, v.m), HandOver: v.handOver(), Listed: listed, Derived: v.derived(),
+		jsonTarget: targetShape(v.t, v.p, v.m), HandOver: v.handOver(), Listed: listed, Derived: v.derived(), Events: v.events(),
 	}
 	for _, st := range moment.Steps(&v.s.scene, v.p, v.m) {
 		out.Steps = append(out.Steps, jsonStep(st))
@@ -307,4 +325,18 @@ func (v view) lightText(b *strings.Builder) {
 	if f.Basis != "" {
 		fmt.Fprintf(b, "  basis: %s\n", f.Basis)
 	}
+	for _, e := range v.p.Light.Next(v.m.At) {
+		fmt.Fprintf(b, "  next %s %s, +- %s (%s)\n", e.Kind, e.At.UTC().Round(time.Second).Format("2006-01-02 15:04:05 UTC"), duration(e.SigmaS), e.Status)
+	}
+}
+
+// duration writes seconds in the unit that suits them.
+func duration(s float64) string {
+	switch {
+	case s < 300:
+		return fmt.Sprintf("%.0f s", s)
+	case s < 86400:
+		return fmt.Sprintf("%.1f h", s/3600)
+	}
+	return fmt.Sprintf("%.0f d", s/86400)
 }

@@ -19,6 +19,7 @@ type eclipse struct {
 	eEpoch, ePeriod float64 // d
 	halfMin         float64 // half the duration, min
 	mag, sd         float64 // in eclipse
+	assumed         bool    // an error was taken from the last digit printed
 }
 
 // jitterPerDecade is the wander of eclipse times of close binaries, seconds;
@@ -29,14 +30,18 @@ const jitterPerDecade = 5.0
 const hjdScatterS = 35.0
 
 // newEclipse prepares an eclipsing binary; nil: its eclipses are not timed.
+// Without a duration they are dated, but the light is not forecast by them.
 func newEclipse(t targets.Target) *eclipse {
 	v := &t.Var
-	if !usable(v.PeriodD) || v.PeriodD.Value <= 0 || !usable(v.EpochMinJD) || !usable(v.EclipseMin) || v.EclipseMin.Value <= 0 {
+	if !usable(v.PeriodD) || v.PeriodD.Value <= 0 || !usable(v.EpochMinJD) {
 		return nil
 	}
 	e := &eclipse{scale: v.TimeScale, epoch: v.EpochMinJD.Value, period: v.PeriodD.Value, pdot: v.PdotDD.Value,
-		eEpoch: math.Abs(v.EpochMinJD.Err), ePeriod: math.Abs(v.PeriodD.Err), halfMin: v.EclipseMin.Value / 2,
-		mag: v.MagMin.Value, sd: 0.5}
+		eEpoch: math.Abs(v.EpochMinJD.Err), ePeriod: math.Abs(v.PeriodD.Err), mag: v.MagMin.Value, sd: 0.5}
+	if usable(v.EclipseMin) && v.EclipseMin.Value > 0 {
+		e.halfMin = v.EclipseMin.Value / 2
+	}
+	e.assumed = v.EpochMinJD.Assumed || v.PeriodD.Assumed
 	e.star = frame.NewStar(frame.Catalogue{RA: t.Place.RA, Dec: t.Place.Dec, EpochJyr: t.Place.EpochJyr})
 	return e
 }

@@ -76,8 +76,10 @@ type model interface {
 // State is a target made ready to be forecast: what its list and its measured
 // magnitudes taught.
 type State struct {
-	model model
-	note  string // about recent magnitudes
+	model   model
+	note    string // about recent magnitudes
+	eclipse *eclipse
+	maximum *longPeriod
 }
 
 var (
@@ -111,6 +113,10 @@ func NewState(t targets.Target, v stage.Verdict, mags []targets.Magnitude) *Stat
 		s.model = newRange(t)
 	default:
 		s.model = newConstant(t)
+	}
+	s.eclipse = newEclipse(t)
+	if l, ok := s.model.(*longPeriod); ok {
+		s.maximum = l
 	}
 	return s
 }

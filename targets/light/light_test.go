@@ -237,3 +237,32 @@ func BenchmarkAt(b *testing.B) {
 		s.At(now, Ask{})
 	}
 }
+
+// The next event is the next: at most a period ahead, at phase zero, and the
+// one after it a period later.
+func TestEvents(t *testing.T) {
+	star := targets.Target{Name: "a", Kind: targets.Interacting, Place: targets.Place{RA: astro.Deg(60), Dec: astro.Deg(17), EpochJyr: 2000},
+		Var: targets.Variability{Type: "EA/WD", MagMax: targets.Known(10), MagMin: targets.Known(12), TimeScale: "BJD_TDB",
+			PeriodD: targets.KnownErr(0.37, 1e-9), EpochMinJD: targets.KnownErr(2455000.123, 1e-5)}}
+	s := NewState(star, stage.Verdict{}, nil)
+	first := s.Next(now)
+	if len(first) != 1 || first[0].Kind != "eclipse" || first[0].Status != EventGood {
+		t.Fatalf("%+v", first)
+	}
+	ahead := first[0].At.Sub(now).Hours() / 24
+	if ahead < 0 || ahead > 0.3701 {
+		t.Errorf("next eclipse %.4f d ahead with a period of 0.37 d", ahead)
+	}
+	cycles := (first[0].BJDTDB - 2455000.123) / 0.37
+	check.Near(t, cycles, math.Round(cycles), 1e-6, "cycles from the epoch to the event")
+	second := s.Next(first[0].At.Add(time.Minute))
+	check.Near(t, (second[0].BJDTDB-first[0].BJDTDB)/0.37, 1, 1e-6, "periods between two events")
+
+	mira := targets.Target{Name: "m", Kind: targets.LPV, Var: targets.Variability{Type: "M", PeriodD: targets.Known(300),
+		EpochMaxJD: targets.Known(now.JDUTC() - 150), MagMax: targets.Known(6), MagMin: targets.Known(13)}}
+	max := NewState(mira, stage.Verdict{}, nil).Next(now)
+	if len(max) != 1 || max[0].Kind != "maximum" {
+		t.Fatalf("%+v", max)
+	}
+	check.Near(t, max[0].At.Sub(now).Hours()/24, 150, 0.01, "days to the next maximum")
+}

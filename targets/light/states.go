@@ -138,7 +138,7 @@ func (s *states) at(t astro.Instant, band targets.Band, level float64) Forecast 
 		return unknown(band, fmt.Sprintf("extremes are listed in %s; no relation from there to %s", s.t.Var.MagBand, band))
 	}
 	list, words := s.list, ""
-	if s.eclipse != nil {
+	if s.eclipse != nil && s.eclipse.halfMin > 0 {
 		list, words = s.eclipse.overlay(t, s.list)
 	}
 	f := Forecast{Band: s.band, Basis: s.how + words}
