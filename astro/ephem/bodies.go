@@ -41,7 +41,7 @@ type Body struct {
 // Source: [cite.Simon1994] and the fit of package frame; outside its years
 // [cite.Meeus1998], chapter 25.
 //
-// Checked: TestSun, against testdata/astro/sunmoon.csv.
+// Checked: TestSunMoonGeocentric, against testdata/astro/sunmoon.csv.
 func Sun(f *frame.Frame) Body {
 	e := &f.Earth
 	// where the Sun was when the light left: it drifts about the barycentre
@@ -64,7 +64,7 @@ func Sun(f *frame.Frame) Body {
 //
 // Source: [cite.Meeus1998], chapter 47 (after ELP-2000/82).
 //
-// Checked: TestMoon, against testdata/astro/moon_topo.csv and sunmoon.csv.
+// Checked: TestMoonTopocentric, against testdata/astro/moon_topo.csv and sunmoon.csv.
 func Moon(f *frame.Frame) Body {
 	lon, lat, km := meeusfence.Moon(f.Instant)
 	ecl := astro.Direction(lon, lat).Times(km)
@@ -103,7 +103,7 @@ type Phase struct {
 //
 // Source: [cite.Meeus1998], chapter 48.
 //
-// Checked: TestMoon, illuminated fraction to 0.001.
+// Checked: TestMoonTopocentric, illuminated fraction to 0.001.
 func MoonPhase(moon, sun Body) Phase {
 	i := meeusfence.PhaseAngle(moon.fromSite, sun.fromSite)
 	// waxing: the Moon lies east of the Sun

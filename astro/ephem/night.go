@@ -98,7 +98,7 @@ func NoonToNoon(site astro.Site, date astro.Date) (astro.Span, error) {
 //  2. Rise and set are those of the upper limb on a sea-level horizon, the
 //     Moon's from the site.
 //
-// Checked: TestNightAgainstUSNO, to their rounding; TestNightDense, to 1 s.
+// Checked: TestNightAgainstUSNO, to their rounding; TestCrossingsDense, to 1 s.
 func NightOf(site astro.Site, date astro.Date) (Night, error) {
 	span, err := NoonToNoon(site, date)
 	if err != nil {

@@ -136,7 +136,7 @@ const (
 //
 // Source: [cite.Simon1994] for the arguments; the fit is this project's own.
 //
-// Checked: TestEarthSeries, TestFallback, against testdata/astro/velocity.csv.
+// Checked: TestBarycentre, TestEarthVelocity, against testdata/astro/velocity.csv.
 func EarthAt(t astro.Instant) Earth {
 	y := t.YearsTT()
 	if y < seriesFrom || y > seriesUntil {

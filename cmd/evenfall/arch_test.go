@@ -91,7 +91,8 @@ type breach struct{ at, rule string }
 
 // survey reads every Go file below a root and lists what breaks the rules.
 func survey(root string) ([]breach, error) {
-	s := &surveyor{fset: token.NewFileSet(), cited: map[string]string{}, works: map[string]string{}}
+	s := &surveyor{fset: token.NewFileSet(), cited: map[string]string{}, works: map[string]string{},
+		named: map[string]string{}, tests: map[string]bool{}}
 	err := filepath.WalkDir(root, func(path string, d fs.DirEntry, err error) error {
 		if err != nil {
 			return err
@@ -117,6 +118,8 @@ type surveyor struct {
 	found []breach
 	cited map[string]string // name: where first
 	works map[string]string
+	named map[string]string // tests that docstrings name
+	tests map[string]bool
 }
 
 func (s *surveyor) report(pos token.Pos, rel, format string, a ...any) {
@@ -152,11 +155,21 @@ func (s *surveyor) file(path, rel string) error {
 			s.cited[m[1]] = rel
 		}
 	}
+	for _, block := range checked.FindAllString(string(src), -1) {
+		for _, name := range testName.FindAllString(block, -1) {
+			s.named[name] = rel
+		}
+	}
 	for _, d := range f.Decls {
 		s.decl(d, dir, rel)
 	}
 	return nil
 }
+
+var (
+	checked  = regexp.MustCompile(`// Checked:[^\n]*(\n//[^\n]*\w[^\n]*)*`)
+	testName = regexp.MustCompile(`\b(Test|Fuzz|Benchmark)[A-Z]\w+`)
+)
 
 func (s *surveyor) imports(f *ast.File, dir, rel string) {
 	for _, i := range f.Imports {
@@ -203,6 +216,9 @@ func (s *surveyor) clocks(f *ast.File, dir, rel string) {
 func (s *surveyor) decl(d ast.Decl, dir, rel string) {
 	switch d := d.(type) {
 	case *ast.FuncDecl:
+		if testName.MatchString(d.Name.Name) {
+			s.tests[d.Name.Name] = true
+		}
 		from, to := s.fset.Position(d.Pos()).Line, s.fset.Position(d.End()).Line
 		if to-from+1 > longestFunction {
 			s.report(d.Pos(), rel, "function %s of %d lines, at most %d", d.Name.Name, to-from+1, longestFunction)
@@ -221,11 +237,17 @@ func (s *surveyor) decl(d ast.Decl, dir, rel string) {
 	}
 }
 
-// citations compares what is cited with what astro/cite lists.
+// citations compares what is cited with what astro/cite lists, and the tests
+// that docstrings name with those there are.
 func (s *surveyor) citations() {
 	for name, where := range s.cited {
 		if _, ok := s.works[name]; !ok {
 			s.found = append(s.found, breach{where, "cite." + name + " is not in astro/cite"})
+		}
+	}
+	for name, where := range s.named {
+		if !s.tests[name] {
+			s.found = append(s.found, breach{where, "a docstring names the test " + name + ", which is not there"})
 		}
 	}
 	for name, where := range s.works {
@@ -279,6 +301,7 @@ func TestArchitectureCatches(t *testing.T) {
 		"outside astro/clock":     {"targets/a.go", "package targets\nimport \"time\"\nvar T = time.Now()\n"},
 		"outside astro/timescale": {"targets/a.go", "package targets\nvar T = astro.InstantFrom\n"},
 		"is not in astro/cite":    {"astro/a.go", "package astro\n// Source: [cite" + ".Nobody1900].\n"},
+		"which is not there":      {"astro/a.go", "package astro\n// Checked: Te" + "stNothingAtAll.\n"},
 		"is cited nowhere":        {"astro/cite/a.go", "package cite\nvar Somebody1901 = 1\n"},
 		"lines, at most 80":       {"astro/a.go", "package astro\n" + long},
 		"lines, at most 400":      {"astro/a.go", "package astro\n" + strings.Repeat("// more\n", 410)},

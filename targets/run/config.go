@@ -80,7 +80,7 @@ type HandOver struct {
 //     where it gives no usable position of the site.
 //   - every problem, with line and column.
 //
-// Checked: TestConfigBad, TestTemplateIsDefaults, FuzzParseConfig.
+// Checked: TestConfigBad, TestTemplateIsWhole, FuzzParseConfig.
 func ParseConfig(data []byte, name string) (*Config, []*table.Error) {
 	t := &tree{name: name, data: append([]byte(nil), data...)}
 	root := t.parse()

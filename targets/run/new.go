@@ -32,7 +32,7 @@ var ErrExists = errors.New("is not empty; nothing was written: choose a new name
 //   - dir: made if it is not there; an empty folder will do.
 //   - p: the site; the zero value stands for one to be filled in.
 //
-// Checked: TestNewIsClean, TestNewRefuses.
+// Checked: TestNewIsClean.
 func New(dir string, p Place) error {
 	if entries, err := os.ReadDir(dir); err == nil && len(entries) > 0 {
 		return fmt.Errorf("%q %w", dir, ErrExists)

@@ -33,7 +33,7 @@ func parseNumber(s string) (v float64, wrong, fix string) {
 // LastDigitHalf returns half a unit of the last printed digit of a number: the
 // error assumed where none is given. 0 where the text is no number.
 //
-// Checked: TestLastDigitHalf.
+// Checked: TestErrorsAssumedFromDigits.
 func LastDigitHalf(text string) float64 {
 	mantissa, exponent, _ := strings.Cut(strings.ToLower(strings.TrimSpace(text)), "e")
 	if _, err := strconv.ParseFloat(mantissa, 64); err != nil {
