@@ -1,6 +1,7 @@
 package main
 
 import (
+	"strconv"
 	"strings"
 
 	"github.com/spf13/cobra"
@@ -50,7 +51,10 @@ func runRead(w world, o *options, file string, columns []string) error {
 		return err
 	}
 	if o.format == "json" {
-		err = printJSON(w.out, readShape(list))
+		var shape any
+		if shape, err = readShape(list); err == nil {
+			err = printJSON(w.out, shape)
+		}
 	} else {
 		err = table.Write(w.out, list)
 	}
@@ -60,22 +64,32 @@ func runRead(w world, o *options, file string, columns []string) error {
 	return s.status()
 }
 
-// readShape is a list as JSON: each target by its columns, as text exactly as
-// it would be written to a list.
-func readShape(list []targets.Target) any {
-	var out []map[string]string
+// readShape is a list as JSON: each target by its columns, numbers as numbers.
+func readShape(list []targets.Target) (any, error) {
+	out := []map[string]any{}
 	for i := range list {
-		row := map[string]string{}
-		v := view{t: &list[i]}
+		t := &list[i]
+		v := view{t: t}
 		listed, err := v.listed()
 		if err != nil {
-			continue
+			return nil, err
 		}
-		row["name"], row["kind"] = list[i].Name, string(list[i].Kind)
+		row := map[string]any{"name": t.Name, "kind": string(t.Kind)}
+		for name, text := range map[string]string{"id": t.ID, "kind_note": t.KindNote, "notes": t.Notes, "source": t.Source, "conflicts": t.Conflicts} {
+			if text != "" {
+				row[name] = text
+			}
+		}
+		if len(t.Unconfirmed) > 0 {
+			row["unconfirmed"] = t.Unconfirmed
+		}
 		for _, l := range listed {
 			row[l.Column] = l.Value
+			if n, err := strconv.ParseFloat(l.Value, 64); err == nil && table.IsNumber(l.Column) {
+				row[l.Column] = n
+			}
 		}
 		out = append(out, row)
 	}
-	return map[string]any{"targets": out}
+	return map[string]any{"targets": out}, nil
 }

@@ -189,6 +189,9 @@ func (s *session) readLists(w world, o *options) error {
 			return err
 		}
 		s.requests = list
+		for i := range list {
+			s.mustMatch(w, list[i].At, list[i].Target, false)
+		}
 	}
 	for _, name := range o.magnitudes {
 		list, err := readFile(w, name, table.ReadMagnitudes, s)
@@ -196,8 +199,18 @@ func (s *session) readLists(w world, o *options) error {
 			return err
 		}
 		s.magnitudes = append(s.magnitudes, list...)
+		for i := range list {
+			s.mustMatch(w, list[i].At, list[i].Target, true)
+		}
 	}
 	return nil
+}
+
+// mustMatch reports a row of a file that names no target of the lists.
+func (s *session) mustMatch(w world, at targets.Where, name string, warning bool) {
+	if _, err := table.Match(s.targets, name); err != nil {
+		s.report(w, []*table.Error{{At: at, Field: "target", Value: table.Clean(name), Problem: err.Error(), Fix: "name a target of the lists, by id or name", Warning: warning}})
+	}
 }
 
 // readFile reads one file, or standard input for -, and reports its problems.

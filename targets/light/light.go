@@ -9,6 +9,7 @@ import (
 	"fmt"
 	"math"
 	"regexp"
+	"strings"
 
 	"evenfall/astro"
 	"evenfall/targets"
@@ -114,11 +115,32 @@ func NewState(t targets.Target, v stage.Verdict, mags []targets.Magnitude) *Stat
 	default:
 		s.model = newConstant(t)
 	}
+	s.note = unconfirmed(&t) + s.note
 	s.eclipse = newEclipse(t)
 	if l, ok := s.model.(*longPeriod); ok {
 		s.maximum = l
 	}
 	return s
+}
+
+// unconfirmed says which of the values that a forecast may rest on no open
+// source bore out.
+func unconfirmed(t *targets.Target) string {
+	var list []string
+	for _, c := range []string{"mag_max", "mag_min", "period_d", "epoch_max_jd", "epoch_min_jd", "eclipse_min", "log_fhalpha", "log_fhbeta", "log_f5007", "diam_arcsec"} {
+		if t.IsUnconfirmed(c) {
+			list = append(list, c)
+		}
+	}
+	for _, b := range preferred {
+		if t.IsUnconfirmed(string(b)) {
+			list = append(list, string(b))
+		}
+	}
+	if len(list) == 0 {
+		return ""
+	}
+	return "; unconfirmed: " + strings.Join(list, " ")
 }
 
 // newest names the latest measured magnitude.

@@ -63,7 +63,8 @@ func newLongPeriod(t targets.Target) model {
 	}
 	if p := t.Var.PeriodD; usable(p) && p.Value > 0 {
 		l.periodD = p.Value
-		if e := t.Var.EpochMaxJD; usable(e) {
+		// the catalogue dates RV Tauri stars by their minima as often as not
+		if e := t.Var.EpochMaxJD; usable(e) && !rvVariable.MatchString(t.Var.Type) {
 			l.epoch = e.Value
 		}
 	}
@@ -235,7 +236,7 @@ func (l *longPeriod) phaseWords(p *Phase, cycles float64) string {
 	case math.IsNaN(l.periodD):
 		return "; no period listed: phase unknown"
 	case math.IsNaN(l.epoch):
-		return "; no epoch listed: phase unknown"
+		return "; no epoch of maximum to go by: phase unknown"
 	case p.Status == PhaseUnknown:
 		return fmt.Sprintf("; elements %.0f cycles old: phase unknown", math.Abs(cycles))
 	}

@@ -9,6 +9,16 @@ import (
 // ColumnInfo describes a column of a target list.
 type ColumnInfo struct{ Name, Unit, Meaning string }
 
+// IsNumber tells whether a column of a target list holds numbers.
+func IsNumber(name string) bool {
+	for i := range columns {
+		if columns[i].Name == name {
+			return columns[i].text == nil
+		}
+	}
+	return name == "ra_deg" || name == "dec_deg" || name == "epoch_jyr"
+}
+
 // column is one column: how it is called, what it may hold and where it goes.
 type column struct {
 	ColumnInfo
