@@ -176,9 +176,16 @@ func (t *tracker) best(c *Course) {
 	}
 }
 
-// Window returns the window to speak of at an instant: the wished-for one
-// that holds it or comes next, else the possible one, else the last that was.
+// Window returns the window to speak of at an instant: the one that holds it,
+// wished for before possible, else the next wished for, else the next
+// possible.
 func (c *Course) Window(at astro.Instant) (w astro.Span, should, ok bool) {
+	if w, ok := within(c.Should, at); ok {
+		return w, true, true
+	}
+	if w, ok := within(c.Can, at); ok {
+		return w, false, true
+	}
 	if w, ok := pick(c.Should, at); ok {
 		return w, true, true
 	}

@@ -157,6 +157,12 @@ func horizonAt(sorted []targets.HorizonPoint, az astro.Angle) astro.Angle {
 	return sorted[0].Altitude
 }
 
+// HorizonAt returns the altitude of a site's horizon at an azimuth; the corners
+// may come in any order.
+func HorizonAt(corners []targets.HorizonPoint, az astro.Angle) astro.Angle {
+	return horizonAt(sortedHorizon(corners), az)
+}
+
 // nextKept returns when a limit is kept again after an instant; nil: not again
 // this night.
 func (l *limit) nextKept(at astro.Instant) *astro.Instant {

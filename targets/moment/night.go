@@ -70,7 +70,7 @@ func NewNight(site astro.Site, date astro.Date, limits targets.Limits, condition
 // findEdges turns limits on refracted altitude into airless ones.
 func findEdges(l targets.Limits, w astro.Weather) edges {
 	wish := l.WishAltitude
-	if a := altitudeOfAirmass(l.WishAirmass); wish.Less(a) {
+	if a := AltitudeOfAirmass(l.WishAirmass); wish.Less(a) {
 		wish = a
 	}
 	return edges{
@@ -82,9 +82,9 @@ func findEdges(l targets.Limits, w astro.Weather) edges {
 	}
 }
 
-// altitudeOfAirmass returns the refracted altitude at which the airmass is x:
+// AltitudeOfAirmass returns the refracted altitude at which the airmass is x:
 // by bisection, as airmass falls with altitude.
-func altitudeOfAirmass(x float64) astro.Angle {
+func AltitudeOfAirmass(x float64) astro.Angle {
 	lo, hi := 0.0, 90.0
 	for range 60 {
 		mid := (lo + hi) / 2

@@ -55,7 +55,7 @@ var typicalMotionWD = astro.Arcsec(0.25)
 //  1. Milliseconds; callers keep the answer for as long as the target and its
 //     magnitudes are the same.
 func Prepare(t targets.Target, mags []targets.Magnitude, m Models) Prepared {
-	p := Prepared{Target: t, Star: star(&t), Verdict: m.Stage.Judge(t)}
+	p := Prepared{Target: t, Star: StarOf(&t), Verdict: m.Stage.Judge(t)}
 	p.Light = light.NewState(t, p.Verdict, mags)
 	if !t.MotionKnown() {
 		p.Drift.MotionMissing = true
@@ -67,8 +67,8 @@ func Prepare(t targets.Target, mags []targets.Magnitude, m Models) Prepared {
 	return p
 }
 
-// star turns a listed place into one that can be computed with.
-func star(t *targets.Target) frame.Star {
+// StarOf turns a listed place into one that can be computed with.
+func StarOf(t *targets.Target) frame.Star {
 	return frame.NewStar(frame.Catalogue{
 		RA: t.Place.RA, Dec: t.Place.Dec, EpochJyr: t.Place.EpochJyr,
 		PMRA:     astro.Arcsec(t.Place.PMRA.Value / 1000),

@@ -44,6 +44,9 @@ func New(f *frame.Frame, stars []frame.Star) *Sky {
 // Len returns the number of targets.
 func (s *Sky) Len() int { return len(s.x) }
 
+// Direction returns the observed direction of a target at the night's middle.
+func (s *Sky) Direction(i int) astro.Vec { return astro.Vec{X: s.x[i], Y: s.y[i], Z: s.z[i]} }
+
 // Columns is what one pass gives, a number for each target of the list.
 type Columns struct {
 	SinAlt  []float64 // sine of the airless altitude

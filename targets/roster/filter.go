@@ -1,0 +1,185 @@
+package roster
+
+import (
+	"fmt"
+	"slices"
+	"strconv"
+	"strings"
+
+	"evenfall/targets"
+	"evenfall/targets/moment"
+)
+
+// Filter is what a line of the screen asks of targets: words that must occur,
+// and conditions on figures. The zero value lets everything pass.
+type Filter struct {
+	words []string
+	conds []condition
+}
+
+// condition is one comparison, e.g. alt>35.
+type condition struct {
+	column, op, text string
+	value            float64
+}
+
+// operators, the longer first.
+var operators = []string{">=", "<=", "!=", ">", "<", "="}
+
+// textColumns can be compared with = and != alone.
+var textColumns = []string{"kind", "stage", "ends"}
+
+// numberColumns are figures of the moment; bands of magnitudes come on top.
+var numberColumns = []string{"alt", "x", "moon", "sun", "ha", "ra", "dec", "mag", "sb", "left", "best", "period"}
+
+// ParseFilter reads a line such as
+//
+//	lep kind=wd alt>35 V<16 stage=TPAGB
+//
+// Returns:
+//   - an error that names the word it stumbled on and what may stand there.
+//
+// Notes:
+//  1. Figures: alt deg, x airmass, moon and sun deg, ha h, ra and dec deg, mag
+//     expected, sb mag/arcsec2, left min, best airmass, period d; a band of
+//     magnitudes means the expected one in it, nebulae answer with sb.
+func ParseFilter(line string) (Filter, error) {
+	var f Filter
+	for _, word := range strings.Fields(line) {
+		column, op, text := split(word)
+		if op == "" {
+			f.words = append(f.words, strings.ToLower(word))
+			continue
+		}
+		c := condition{column: column, op: op, text: text}
+		low := strings.ToLower(column)
+		switch {
+		case slices.Contains(textColumns, low):
+			if op != "=" && op != "!=" {
+				return Filter{}, fmt.Errorf("%s: %s is compared with = or !=", word, low)
+			}
+			c.column = low
+		case slices.Contains(numberColumns, low) && !isBand(column), isBand(column):
+			v, err := strconv.ParseFloat(text, 64)
+			if err != nil {
+				return Filter{}, fmt.Errorf("%s: write a number after %s", word, op)
+			}
+			c.value = v
+			if !isBand(column) {
+				c.column = low
+			}
+		default:
+			return Filter{}, fmt.Errorf("%s: no column %s; there are %s, and bands such as V", word, column,
+				strings.Join(append(slices.Clone(textColumns), numberColumns...), " "))
+		}
+		f.conds = append(f.conds, c)
+	}
+	return f, nil
+}
+
+func split(word string) (column, op, text string) {
+	for _, o := range operators {
+		if i := strings.Index(word, o); i > 0 {
+			return word[:i], o, word[i+len(o):]
+		}
+	}
+	return word, "", ""
+}
+
+func isBand(s string) bool { return slices.Contains(targets.Bands, targets.Band(s)) }
+
+// Empty tells whether everything passes.
+func (f *Filter) Empty() bool { return len(f.words)+len(f.conds) == 0 }
+
+// text tells whether a target's texts pass; cheap.
+func (f *Filter) text(search string) bool {
+	for _, w := range f.words {
+		if !strings.Contains(search, w) {
+			return false
+		}
+	}
+	return true
+}
+
+// passes tells whether a target's figures pass. What is not known does not.
+func (f *Filter) passes(r *Roster, i int, m *moment.Moment) bool {
+	for _, c := range f.conds {
+		if !c.holds(r, i, m) {
+			return false
+		}
+	}
+	return true
+}
+
+func (c *condition) holds(r *Roster, i int, m *moment.Moment) bool {
+	t := &r.entries[i].Target
+	switch c.column {
+	case "kind":
+		return c.same(string(t.Kind))
+	case "stage":
+		return c.same(m.Stage.Best)
+	case "ends":
+		return c.same(string(m.EndsBy))
+	}
+	v, ok := c.figure(t, m)
+	return ok && c.compare(v)
+}
+
+func (c *condition) same(s string) bool { return strings.EqualFold(s, c.text) == (c.op == "=") }
+
+// figure returns the number that a condition is about.
+func (c *condition) figure(t *targets.Target, m *moment.Moment) (float64, bool) {
+	switch c.column {
+	case "alt":
+		return m.Apparent.Deg(), true
+	case "x":
+		return float64(m.Airmass), m.AirOK
+	case "moon":
+		return m.MoonSep.Deg(), true
+	case "sun":
+		return m.SunSep.Deg(), true
+	case "ha":
+		return m.Place.HourAngle.Hours(), true
+	case "ra":
+		return m.RA.Deg(), true
+	case "dec":
+		return m.Dec.Deg(), true
+	case "left":
+		return m.Left.Minutes(), m.Left > 0
+	case "best":
+		return float64(m.Course.BestAirmass), m.Course.Best != nil
+	case "period":
+		return t.Var.PeriodD.Value, t.Var.PeriodD.Known
+	case "mag":
+		return m.Expect.Mag.Mags(), m.Expect.Known
+	case "sb":
+		if m.Expect.SB == nil {
+			return 0, false
+		}
+		return m.Expect.SB.Value.MagArcsec2(), true
+	}
+	if m.Expect.SB != nil {
+		return m.Expect.SB.Value.MagArcsec2(), true
+	}
+	if string(m.Expect.Band) == c.column {
+		return m.Expect.Mag.Mags(), m.Expect.Known
+	}
+	b := t.Mags[targets.Band(c.column)]
+	return b.Value, b.Known
+}
+
+func (c *condition) compare(v float64) bool {
+	switch c.op {
+	case ">":
+		return v > c.value
+	case "<":
+		return v < c.value
+	case ">=":
+		return v >= c.value
+	case "<=":
+		return v <= c.value
+	case "!=":
+		return v != c.value
+	}
+	return v == c.value
+}

@@ -1,0 +1,149 @@
+// Package roster holds a list of targets ready to be ranked, sorted and
+// filtered at any instant: exactly for lists of ordinary length, by a sweep for
+// those of hundreds of thousands. Its answers are snapshots that never change,
+// so that a screen can go on drawing one while the next is made. It knows no
+// screen, reads no file and no clock.
+package roster
+
+import (
+	"slices"
+	"strings"
+	"sync"
+
+	"evenfall/astro/frame"
+	"evenfall/targets"
+	"evenfall/targets/moment"
+	"evenfall/targets/sweep"
+)
+
+// Bulk is the length of list from which on windows come from the sweep, to a
+// minute, instead of target by target. Rows that are shown are exact always.
+const Bulk = 3000
+
+// Entry is one target with what is wanted of it.
+type Entry struct {
+	Target     targets.Target
+	Magnitudes []targets.Magnitude
+	Want       moment.Want
+	Session    bool // typed in on the screen, kept for the session
+}
+
+// Roster is a list with what does not depend on the night. It never changes:
+// With returns another. It is safe for use by several goroutines.
+type Roster struct {
+	entries []Entry
+	stars   []frame.Star
+	search  []string // lower-case text that filters look into
+	byName  []int32  // rank by name
+	models  moment.Models
+
+	mu       sync.Mutex
+	prepared []*moment.Prepared
+	nights   map[string]*nightly
+}
+
+// nightly is what is kept of a night.
+type nightly struct {
+	mu      sync.Mutex
+	courses map[int]*moment.Course
+	sky     *sweep.Sky
+}
+
+// keepNights is how many nights' courses are kept before the store is emptied.
+const keepNights = 4
+
+// New makes a roster.
+func New(entries []Entry, models moment.Models) *Roster {
+	r := &Roster{entries: entries, models: models, nights: map[string]*nightly{}}
+	r.stars = make([]frame.Star, len(entries))
+	r.search = make([]string, len(entries))
+	r.prepared = make([]*moment.Prepared, len(entries))
+	order := make([]int32, len(entries))
+	for i := range entries {
+		t := &entries[i].Target
+		r.stars[i] = moment.StarOf(t)
+		r.search[i] = strings.ToLower(t.Name + " " + t.ID + " " + string(t.Kind) + " " + t.KindNote + " " + t.Physics.SpType + " " + t.Var.Type)
+		order[i] = int32(i)
+	}
+	slices.SortStableFunc(order, func(a, b int32) int {
+		return strings.Compare(strings.ToLower(entries[a].Target.Name), strings.ToLower(entries[b].Target.Name))
+	})
+	r.byName = make([]int32, len(entries))
+	for rank, i := range order {
+		r.byName[i] = int32(rank)
+	}
+	return r
+}
+
+// Len returns the number of targets.
+func (r *Roster) Len() int { return len(r.entries) }
+
+// Entry returns one target with what is wanted of it.
+func (r *Roster) Entry(i int) *Entry { return &r.entries[i] }
+
+// With returns a roster with one target more, at its end; what was prepared is
+// kept.
+func (r *Roster) With(e Entry) *Roster {
+	n := New(append(slices.Clone(r.entries), e), r.models)
+	r.mu.Lock()
+	defer r.mu.Unlock()
+	copy(n.prepared, r.prepared)
+	return n
+}
+
+// Prepared returns a target's judgement and forecast state, made when first
+// asked for.
+func (r *Roster) Prepared(i int) *moment.Prepared {
+	r.mu.Lock()
+	p := r.prepared[i]
+	r.mu.Unlock()
+	if p != nil {
+		return p
+	}
+	made := moment.Prepare(r.entries[i].Target, r.entries[i].Magnitudes, r.models)
+	r.mu.Lock()
+	defer r.mu.Unlock()
+	if r.prepared[i] == nil {
+		r.prepared[i] = &made
+	}
+	return r.prepared[i]
+}
+
+// night returns what is kept of a night, a new store where there is none.
+func (r *Roster) night(n *moment.Night) *nightly {
+	r.mu.Lock()
+	defer r.mu.Unlock()
+	key := n.Date.String()
+	k, ok := r.nights[key]
+	if !ok {
+		if len(r.nights) >= keepNights {
+			clear(r.nights)
+		}
+		k = &nightly{courses: map[int]*moment.Course{}}
+		r.nights[key] = k
+	}
+	return k
+}
+
+// Course returns a target's night, worked out when first asked for.
+func (r *Roster) Course(n *moment.Night, i int) *moment.Course {
+	k := r.night(n)
+	k.mu.Lock()
+	c := k.courses[i]
+	k.mu.Unlock()
+	if c != nil {
+		return c
+	}
+	made := moment.Tonight(n, r.Prepared(i), r.entries[i].Want)
+	k.mu.Lock()
+	defer k.mu.Unlock()
+	if k.courses[i] == nil {
+		k.courses[i] = &made
+	}
+	return k.courses[i]
+}
+
+// Moment returns everything of one target at the instant of a scene, exact.
+func (r *Roster) Moment(s *moment.Scene, i int) moment.Moment {
+	return moment.Of(s, r.Prepared(i), r.Course(s.Night, i), r.entries[i].Want)
+}
