@@ -18,7 +18,7 @@ import (
 // rotation is not known well enough or is anyone's guess.
 var ErrRange = errors.New("date outside 1860 to 2150; nothing is computed there")
 
-// announcedUntil is the end of the time for which Bulletin C of the IERS had
+// announcedUntil (from memory) is the end of the time for which Bulletin C of the IERS had
 // spoken when this was written; later dates may still get leap seconds.
 var announcedUntil = time.Date(2027, 6, 30, 0, 0, 0, 0, time.UTC)
 

@@ -214,7 +214,7 @@ def usno():
         src = tf.read(os.path.join(tf.SHARED, "data", name + "_fredonia_2023.csv"))
         dates = sorted({r["local_date_UTCminus7"] for r in src})[::3]
         rows = [dict(event=r["event"], utc=r["utc"] + "Z", **site) for r in src if r["local_date_UTCminus7"] in dates and r["utc"]]
-        tf.write(name + ".csv", head(what + ", Fredonia, Arizona, 2023", "30 s of rounding and 5 s: the town's position is known to a minute of arc"),
+        tf.write(name + ".csv", head(what + ", Fredonia, Arizona, 2023", "30 s of rounding and 5 s: the town's position is known to a minute of arc (36 57 N, 112 32 W, typed from memory)"),
                  [("lat", "deg", ""), ("lon", "deg east +", ""), ("event", "rise or set", ""), ("utc", "RFC 3339", "")], rows)
     src = tf.read(os.path.join(tf.SHARED, "data", "usno_twilight_2024.csv"))
     rows = [dict(site=r["site"], lat=r["lat"], lon=r["lon_east"], event=r["event"], utc=r["utc"] + ":00Z") for r in src]
