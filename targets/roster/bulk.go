@@ -1,12 +1,11 @@
 package roster
 
 import (
-	"cmp"
 	"context"
 	"fmt"
 	"math"
 	"slices"
-	"strings"
+	"time"
 
 	"evenfall/astro"
 	"evenfall/astro/air"
@@ -19,7 +18,6 @@ import (
 
 // quick is what the sweep knows of one target.
 type quick struct {
-	row     int32
 	class   uint8   // 0 to take, 1 merely possible, 2 blocked
 	hours   float32 // until the window ends; blocked: until it opens, infinite where not tonight
 	airmass float32
@@ -58,20 +56,33 @@ func (r *Roster) bulk(ctx context.Context, s *Snapshot, ask Ask) error {
 	cols := sweep.NewColumns(r.Len())
 	sky.At(&s.Scene.Frame, s.Scene.Moon.Dir, cols)
 	b := boundsOf(&s.Scene)
-	list := make([]quick, 0, r.Len())
+	s.quick = make([]quick, r.Len())
+	ranked := make([]place, 0, r.Len())
 	for i := range r.entries {
 		if i%4096 == 0 && ctx.Err() != nil {
 			return fmt.Errorf("ranking %d targets: %w", r.Len(), ctx.Err())
 		}
-		if !ask.Filter.text(r.search[i]) {
-			continue
-		}
 		q := b.judge(&s.Scene.Frame, s.Scene.Sun.Dir, sky.Direction(i), cols, i)
-		if r.quickPasses(&ask.Filter, &s.Scene, &q) {
-			list = append(list, q)
+		s.quick[i] = q
+		ranked = append(ranked, place{q.nextKey(r.entries[i].Want.Weight), int32(i)})
+	}
+	sortPlaces(ranked)
+	for k, p := range ranked {
+		if s.quick[p.row].class < 2 {
+			s.rank[p.row] = int32(k + 1)
+			s.Take++
 		}
 	}
-	return r.order(ctx, s, ask.Sort, list)
+	list := ranked[:0]
+	for k, p := range ranked {
+		if k%4096 == 0 && ctx.Err() != nil {
+			return fmt.Errorf("filtering %d targets: %w", r.Len(), ctx.Err())
+		}
+		if ask.Filter.text(r.search[p.row]) && r.quickPasses(&ask, s, int(p.row)) {
+			list = append(list, p)
+		}
+	}
+	return r.order(ctx, s, ask, list)
 }
 
 // boundsOf turns the night's limits into sines and cosines.
@@ -117,7 +128,7 @@ const solarHours = 12 / math.Pi / 1.00273790935
 //	cos H0 = (sin h - sin lat sin dec) / (cos lat cos dec)     H0: where it stands at altitude h
 func (b *bounds) judge(f *frame.Frame, sun, u astro.Vec, c *sweep.Columns, i int) quick {
 	sa := c.SinAlt[i]
-	q := quick{row: int32(i), class: 2, airmass: c.Airmass[i], sinAlt: sa, cosMoon: c.CosMoon[i], hours: float32(math.Inf(1))}
+	q := quick{class: 2, airmass: c.Airmass[i], sinAlt: sa, cosMoon: c.CosMoon[i], hours: float32(math.Inf(1))}
 	sinDec := f.ToDate[2].Dot(u)
 	cosDec := math.Sqrt(math.Max(1-sinDec*sinDec, 1e-18))
 	h := math.Atan2(-f.East.Dot(u), (sa-b.sinLat*sinDec)/b.cosLat)
@@ -160,109 +171,112 @@ func (b *bounds) reach(sinH, sinDec, cosDec float64) float64 {
 }
 
 // quickPasses tells whether a target passes the conditions of a filter,
-// without working out its night.
-func (r *Roster) quickPasses(f *Filter, s *moment.Scene, q *quick) bool {
+// without working out its night where that can be avoided.
+func (r *Roster) quickPasses(ask *Ask, s *Snapshot, i int) bool {
+	f := &ask.Filter
 	if len(f.conds) == 0 {
 		return true
 	}
-	i := int(q.row)
+	q := &s.quick[i]
 	var m moment.Moment
-	m.At = s.Instant
-	m.Apparent = air.Refract(sweep.Altitude(q.sinAlt), s.Night.Site.Air)
+	m.At = s.Scene.Instant
+	m.Apparent = air.Refract(sweep.Altitude(q.sinAlt), s.Scene.Night.Site.Air)
 	if x, err := air.Mass(m.Apparent); err == nil {
 		m.Airmass, m.AirOK = x, true
 	}
 	m.MoonSep = astro.Rad(math.Acos(math.Max(-1, math.Min(1, float64(q.cosMoon)))))
+	if q.class < 2 {
+		m.Left = timeOf(q.hours)
+	}
 	for _, c := range f.conds {
 		switch c.column {
 		case "sun", "ha", "ra", "dec":
-			m.Place = s.Frame.Horizontal(&r.stars[i])
+			m.Place = s.Scene.Frame.Horizontal(&r.stars[i])
 			m.RA, m.Dec = m.Place.ICRS.LonLat()
-			m.SunSep = astro.Separation(m.Place.Dir, s.Sun.Dir)
+			m.SunSep = astro.Separation(m.Place.Dir, s.Scene.Sun.Dir)
 		case "stage":
-			m.Stage = r.Prepared(i).Verdict
-		case "left":
-			if q.class < 2 {
-				m.Left = timeOf(q.hours)
+			m.Stage.Best = r.Stage(i)
+		case "mag":
+			if v := r.listed(int32(i)); !math.IsInf(v, 1) {
+				m.Expect = light.Forecast{Known: true, Mag: astro.Mags(v)}
 			}
-		case "mag", "sb":
-			m.Expect = r.Prepared(i).Light.At(s.Instant, light.Ask{Band: r.entries[i].Want.Band, Level: r.entries[i].Want.Level})
-		case "best", "ends":
-			m = r.Moment(s, i)
+		case "sb", "best", "bestx", "ends":
+			m = *s.Row(i)
 		}
 	}
-	return f.passes(r, i, &m)
+	return f.passes(r, i, &m, ask.Marks)
 }
 
 // order sorts what passed.
-func (r *Roster) order(ctx context.Context, s *Snapshot, o Sort, list []quick) error {
-	next := func(a, b quick) int {
-		return cmp.Or(cmp.Compare(a.class, b.class), cmp.Compare(a.hours, b.hours),
-			cmp.Compare(r.entries[b.row].Want.Weight, r.entries[a.row].Want.Weight), cmp.Compare(a.airmass, b.airmass), cmp.Compare(a.row, b.row))
-	}
-	slices.SortFunc(list, next)
-	for place, q := range list {
-		if q.class < 2 {
-			s.rank[int(q.row)] = place + 1
+func (r *Roster) order(ctx context.Context, s *Snapshot, ask Ask, list []place) error {
+	defer func() {
+		s.Fresh = make([]int32, len(list))
+		for k, p := range list {
+			s.Fresh[k] = p.row
 		}
+		if len(list) <= Bulk {
+			s.sort(ask)
+		}
+	}()
+	if ask.Sort.Plain() || len(list) <= Bulk {
+		return nil
 	}
-	less, err := r.quickOrder(o)
-	if err != nil {
-		return err
+	key := r.quickKey(s, ask)
+	if key == nil {
+		return fmt.Errorf("%d targets cannot be sorted by %s at once; filter the list down to %d first", len(list), ask.Sort.Key, Bulk)
 	}
-	if less != nil {
-		slices.SortStableFunc(list, less)
+	for k := range list {
+		list[k].key = key(int(list[k].row))
+		if ask.Sort.Reverse {
+			list[k].key = ^list[k].key
+		}
 	}
 	if ctx.Err() != nil {
 		return fmt.Errorf("sorting %d targets: %w", len(list), ctx.Err())
 	}
-	s.Order = make([]int, len(list))
-	for k, q := range list {
-		s.Order[k] = int(q.row)
-	}
+	sortPlaces(list)
 	return nil
 }
 
-// quickOrder returns how a key compares targets of a long list; nil: what to
-// take next.
-func (r *Roster) quickOrder(o Sort) (func(a, b quick) int, error) {
-	sign := 1
-	if o.Reverse {
-		sign = -1
-	}
-	var by func(a, b quick) int
-	switch o.Key {
+// quickKey returns the number that a long list is ordered by; nil: a key that
+// would need every target's night.
+func (r *Roster) quickKey(s *Snapshot, ask Ask) func(i int) uint64 {
+	q, place := s.quick, func(i int) *targets.Place { return &r.entries[i].Target.Place }
+	switch ask.Sort.Key {
 	case "", "next":
-		if !o.Reverse {
-			return nil, nil
-		}
-		by = func(a, b quick) int { return cmp.Or(cmp.Compare(a.class, b.class), cmp.Compare(a.hours, b.hours)) }
+		return func(i int) uint64 { return q[i].nextKey(r.entries[i].Want.Weight) }
 	case "name":
-		by = func(a, b quick) int { return cmp.Compare(r.byName[a.row], r.byName[b.row]) }
-	case "alt":
-		by = func(a, b quick) int { return cmp.Compare(b.sinAlt, a.sinAlt) }
+		return func(i int) uint64 { return uint64(r.byName[i]) }
+	case "alt", "x":
+		return func(i int) uint64 { return bits(-q[i].sinAlt) }
 	case "left":
-		by = func(a, b quick) int { return cmp.Or(cmp.Compare(a.class/2, b.class/2), cmp.Compare(a.hours, b.hours)) }
+		return func(i int) uint64 { return bits(float64(q[i].class/2)*1e6 + math.Min(float64(q[i].hours), 1e5)) }
 	case "moon":
-		by = func(a, b quick) int { return cmp.Compare(a.cosMoon, b.cosMoon) }
+		return func(i int) uint64 { return bits(float64(q[i].cosMoon)) }
 	case "ra":
-		by = func(a, b quick) int {
-			return cmp.Compare(r.entries[a.row].Target.Place.RA.Rad(), r.entries[b.row].Target.Place.RA.Rad())
-		}
+		return func(i int) uint64 { return bits(place(i).RA.Rad()) }
 	case "dec":
-		by = func(a, b quick) int {
-			return cmp.Compare(r.entries[a.row].Target.Place.Dec.Rad(), r.entries[b.row].Target.Place.Dec.Rad())
-		}
+		return func(i int) uint64 { return bits(place(i).Dec.Rad()) }
 	case "kind":
-		by = func(a, b quick) int {
-			return strings.Compare(string(r.entries[a.row].Target.Kind), string(r.entries[b.row].Target.Kind))
-		}
+		return func(i int) uint64 { return uint64(slices.Index(targets.Kinds, r.entries[i].Target.Kind)) }
 	case "mag":
-		by = func(a, b quick) int { return cmp.Compare(r.listed(a.row), r.listed(b.row)) }
-	default:
-		return nil, fmt.Errorf("a list of %d targets cannot be sorted by %s; filter it first", r.Len(), o.Key)
+		return func(i int) uint64 { return bits(r.listed(int32(i))) }
+	case "period":
+		return func(i int) uint64 {
+			if p := r.entries[i].Target.Var.PeriodD; p.Known {
+				return bits(p.Value)
+			}
+			return math.MaxUint64
+		}
+	case "mark":
+		return func(i int) uint64 {
+			if ask.Marks[i] {
+				return 0
+			}
+			return 1
+		}
 	}
-	return func(a, b quick) int { return sign * by(a, b) }, nil
+	return nil
 }
 
 // listed returns a listed magnitude to sort a long list by: V, else G, else
@@ -276,3 +290,6 @@ func (r *Roster) listed(row int32) float64 {
 	}
 	return math.Inf(1)
 }
+
+// timeOf turns hours into a duration.
+func timeOf(hours float32) time.Duration { return time.Duration(float64(hours) * float64(time.Hour)) }

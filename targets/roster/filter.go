@@ -27,10 +27,10 @@ type condition struct {
 var operators = []string{">=", "<=", "!=", ">", "<", "="}
 
 // textColumns can be compared with = and != alone.
-var textColumns = []string{"kind", "stage", "ends"}
+var textColumns = []string{"kind", "stage", "ends", "mark"}
 
 // numberColumns are figures of the moment; bands of magnitudes come on top.
-var numberColumns = []string{"alt", "x", "moon", "sun", "ha", "ra", "dec", "mag", "sb", "left", "best", "period"}
+var numberColumns = []string{"alt", "x", "moon", "sun", "ha", "ra", "dec", "mag", "sb", "left", "best", "bestx", "period"}
 
 // ParseFilter reads a line such as
 //
@@ -41,7 +41,8 @@ var numberColumns = []string{"alt", "x", "moon", "sun", "ha", "ra", "dec", "mag"
 //
 // Notes:
 //  1. Figures: alt deg, x airmass, moon and sun deg, ha h, ra and dec deg, mag
-//     expected, sb mag/arcsec2, left min, best airmass, period d; a band of
+//     expected, sb mag/arcsec2, left min, best UTC hour, bestx airmass then,
+//     period d; mark=yes the marked; a band of
 //     magnitudes means the expected one in it, nebulae answer with sb.
 func ParseFilter(line string) (Filter, error) {
 	var f Filter
@@ -102,8 +103,14 @@ func (f *Filter) text(search string) bool {
 }
 
 // passes tells whether a target's figures pass. What is not known does not.
-func (f *Filter) passes(r *Roster, i int, m *moment.Moment) bool {
+func (f *Filter) passes(r *Roster, i int, m *moment.Moment, marks map[int]bool) bool {
 	for _, c := range f.conds {
+		if c.column == "mark" {
+			if word := strings.ToLower(c.text); (marks[i] == (word != "no")) != (c.op == "=") {
+				return false
+			}
+			continue
+		}
 		if !c.holds(r, i, m) {
 			return false
 		}
@@ -147,6 +154,12 @@ func (c *condition) figure(t *targets.Target, m *moment.Moment) (float64, bool) 
 	case "left":
 		return m.Left.Minutes(), m.Left > 0
 	case "best":
+		if m.Course.Best == nil {
+			return 0, false
+		}
+		t := m.Course.Best.UTC()
+		return float64(t.Hour()) + float64(t.Minute())/60, true
+	case "bestx":
 		return float64(m.Course.BestAirmass), m.Course.Best != nil
 	case "period":
 		return t.Var.PeriodD.Value, t.Var.PeriodD.Known

@@ -28,6 +28,10 @@ type Entry struct {
 	Session    bool // typed in on the screen, kept for the session
 }
 
+// Wants returns what a target is wanted with in a night, as instruments may
+// be mounted in one night and not in another.
+type Wants func(n *moment.Night, i int, e *Entry) moment.Want
+
 // Roster is a list with what does not depend on the night. It never changes:
 // With returns another. It is safe for use by several goroutines.
 type Roster struct {
@@ -36,9 +40,11 @@ type Roster struct {
 	search  []string // lower-case text that filters look into
 	byName  []int32  // rank by name
 	models  moment.Models
+	wants   Wants
 
 	mu       sync.Mutex
 	prepared []*moment.Prepared
+	best     []string // likeliest stages of long lists, judged when asked for
 	nights   map[string]*nightly
 }
 
@@ -53,11 +59,17 @@ type nightly struct {
 const keepNights = 4
 
 // New makes a roster.
-func New(entries []Entry, models moment.Models) *Roster {
-	r := &Roster{entries: entries, models: models, nights: map[string]*nightly{}}
+//
+// Given:
+//   - wants: what each target is wanted with in a night; nil: Entry.Want.
+func New(entries []Entry, models moment.Models, wants Wants) *Roster {
+	if wants == nil {
+		wants = func(_ *moment.Night, _ int, e *Entry) moment.Want { return e.Want }
+	}
+	r := &Roster{entries: entries, models: models, wants: wants, nights: map[string]*nightly{}}
 	r.stars = make([]frame.Star, len(entries))
 	r.search = make([]string, len(entries))
-	r.prepared = make([]*moment.Prepared, len(entries))
+	r.prepared, r.best = make([]*moment.Prepared, len(entries)), make([]string, len(entries))
 	order := make([]int32, len(entries))
 	for i := range entries {
 		t := &entries[i].Target
@@ -84,7 +96,7 @@ func (r *Roster) Entry(i int) *Entry { return &r.entries[i] }
 // With returns a roster with one target more, at its end; what was prepared is
 // kept.
 func (r *Roster) With(e Entry) *Roster {
-	n := New(append(slices.Clone(r.entries), e), r.models)
+	n := New(append(slices.Clone(r.entries), e), r.models, r.wants)
 	r.mu.Lock()
 	defer r.mu.Unlock()
 	copy(n.prepared, r.prepared)
@@ -125,6 +137,28 @@ func (r *Roster) night(n *moment.Night) *nightly {
 	return k
 }
 
+// Want returns what a target is wanted with in a night.
+func (r *Roster) Want(n *moment.Night, i int) moment.Want { return r.wants(n, i, &r.entries[i]) }
+
+// Stage returns the likeliest stage of a target, without keeping all that its
+// judgement holds.
+func (r *Roster) Stage(i int) string {
+	r.mu.Lock()
+	known, p := r.best[i], r.prepared[i]
+	r.mu.Unlock()
+	switch {
+	case known != "":
+		return known
+	case p != nil:
+		return p.Verdict.Best
+	}
+	v := r.models.Stage.Judge(r.entries[i].Target)
+	r.mu.Lock()
+	defer r.mu.Unlock()
+	r.best[i] = v.Best
+	return v.Best
+}
+
 // Course returns a target's night, worked out when first asked for.
 func (r *Roster) Course(n *moment.Night, i int) *moment.Course {
 	k := r.night(n)
@@ -134,7 +168,7 @@ func (r *Roster) Course(n *moment.Night, i int) *moment.Course {
 	if c != nil {
 		return c
 	}
-	made := moment.Tonight(n, r.Prepared(i), r.entries[i].Want)
+	made := moment.Tonight(n, r.Prepared(i), r.Want(n, i))
 	k.mu.Lock()
 	defer k.mu.Unlock()
 	if k.courses[i] == nil {
@@ -145,5 +179,5 @@ func (r *Roster) Course(n *moment.Night, i int) *moment.Course {
 
 // Moment returns everything of one target at the instant of a scene, exact.
 func (r *Roster) Moment(s *moment.Scene, i int) moment.Moment {
-	return moment.Of(s, r.Prepared(i), r.Course(s.Night, i), r.entries[i].Want)
+	return moment.Of(s, r.Prepared(i), r.Course(s.Night, i), r.Want(s.Night, i))
 }

@@ -6,6 +6,7 @@ import (
 	"math"
 	"math/rand"
 	"slices"
+	"strings"
 	"testing"
 	"time"
 
@@ -47,7 +48,7 @@ func builtinRoster(t testing.TB) *Roster {
 	for _, s := range stars {
 		list = append(list, Entry{Target: s, Want: moment.Want{Weight: 1, Level: 0.8}})
 	}
-	return New(list, moment.NewModels())
+	return New(list, moment.NewModels(), nil)
 }
 
 // many makes a list of random white dwarfs all over the sky.
@@ -60,7 +61,7 @@ func many(n int) *Roster {
 				PMRA: targets.Known(100 * r.NormFloat64()), PMDec: targets.Known(100 * r.NormFloat64())},
 			Mags: map[targets.Band]targets.Measure{"G": targets.Known(12 + 8*r.Float64())}}}
 	}
-	return New(list, moment.NewModels())
+	return New(list, moment.NewModels(), nil)
 }
 
 func TestSnapshotRanks(t *testing.T) {
@@ -73,7 +74,7 @@ func TestSnapshotRanks(t *testing.T) {
 		t.Fatalf("%d rows, bulk %v", len(s.Order), s.Bulk)
 	}
 	for place, i := range s.Order {
-		m := s.Row(i)
+		m := s.Row(int(i))
 		if m.InCan != (m.Rank == place+1) {
 			t.Errorf("place %d has rank %d", place, m.Rank)
 		}
@@ -139,7 +140,7 @@ func TestFilter(t *testing.T) {
 		}
 		for i := range r.Len() {
 			m := s.Row(i)
-			if got := slices.Contains(s.Order, i); got != want(&r.Entry(i).Target, m) {
+			if got := slices.Contains(s.Order, int32(i)); got != want(&r.Entry(i).Target, m) {
 				t.Errorf("%q: %s passes %v", line, r.Entry(i).Target.Name, got)
 			}
 		}
@@ -160,9 +161,94 @@ func TestSort(t *testing.T) {
 			t.Fatal(err)
 		}
 		for k := 1; k < len(up.Order); k++ {
-			if key != "next" && up.compare(key, up.Order[k-1], up.Order[k]) > 0 {
+			if key != "next" && up.compare(key, nil, int(up.Order[k-1]), int(up.Order[k])) > 0 {
 				t.Fatalf("%s: place %d stands after %d", key, k-1, k)
 			}
+		}
+	}
+}
+
+// A long list stands in each order as its exact rows would have it, to what
+// the sweep resolves.
+func TestSortBulk(t *testing.T) {
+	r, sc := many(Bulk+500), scene(t, "2026-12-02T04:00:00Z")
+	for _, key := range SortKeys {
+		for _, reverse := range []bool{false, true} {
+			s, err := r.Snapshot(context.Background(), Ask{Scene: sc, Sort: Sort{key, reverse}})
+			if err != nil {
+				if !strings.Contains(err.Error(), "filter the list") {
+					t.Fatal(err)
+				}
+				continue
+			}
+			if len(s.Order) != r.Len() {
+				t.Fatalf("%s: %d rows", key, len(s.Order))
+			}
+			for k := 7; k < len(s.Order); k += 7 {
+				a, b := s.Row(int(s.Order[k-7])), s.Row(int(s.Order[k]))
+				bad := 0.0
+				switch key {
+				case "alt":
+					bad = b.Apparent.Deg() - a.Apparent.Deg()
+				case "moon":
+					bad = b.MoonSep.Deg() - a.MoonSep.Deg()
+				case "dec":
+					bad = a.Dec.Deg() - b.Dec.Deg()
+				}
+				if reverse {
+					bad = -bad
+				}
+				if bad > 0.01 {
+					t.Fatalf("%s, reversed %v: place %d off by %g", key, reverse, k, bad)
+				}
+			}
+		}
+	}
+	f, err := ParseFilter("alt>60 G<16")
+	if err != nil {
+		t.Fatal(err)
+	}
+	s, err := r.Snapshot(context.Background(), Ask{Scene: sc, Filter: f, Sort: Sort{Key: "best"}})
+	if err != nil || len(s.Order) == 0 || len(s.Order) > 1000 {
+		t.Fatalf("%d rows, %v", len(s.Order), err)
+	}
+	for _, i := range s.Order {
+		if m := s.Row(int(i)); m.Apparent.Deg() < 59.99 {
+			t.Errorf("altitude %v passes alt>60", m.Apparent)
+		}
+	}
+}
+
+// A kept order is shown, the new one stands beside it.
+func TestKeep(t *testing.T) {
+	r := builtinRoster(t)
+	a, err := r.Snapshot(context.Background(), Ask{Scene: scene(t, "2026-12-02T01:30:00Z")})
+	if err != nil {
+		t.Fatal(err)
+	}
+	b, err := r.Snapshot(context.Background(), Ask{Scene: scene(t, "2026-12-02T05:00:00Z"), Keep: a.Order})
+	if err != nil {
+		t.Fatal(err)
+	}
+	if !slices.Equal(a.Order, b.Order) || slices.Equal(b.Order, b.Fresh) {
+		t.Error("the order shown is not the one kept, or the new one is the same")
+	}
+	if c := b.Reordered(); !slices.Equal(c.Order, b.Fresh) || c.Peek(int(c.Order[0])) == nil {
+		t.Error("reordering changes rows or not the order")
+	}
+}
+
+func TestMarks(t *testing.T) {
+	r, sc := builtinRoster(t), scene(t, "2026-12-02T04:00:00Z")
+	marks := map[int]bool{3: true, 17: true}
+	for line, want := range map[string]int{"mark=yes": 2, "mark=no": 254, "mark!=yes": 254} {
+		f, err := ParseFilter(line)
+		if err != nil {
+			t.Fatal(err)
+		}
+		s, err := r.Snapshot(context.Background(), Ask{Scene: sc, Filter: f, Marks: marks})
+		if err != nil || len(s.Order) != want {
+			t.Errorf("%s: %d rows, %v", line, len(s.Order), err)
 		}
 	}
 }
@@ -198,6 +284,19 @@ func BenchmarkSnapshotExact(b *testing.B) {
 	sc := scene(b, "2026-12-02T04:00:00Z")
 	for b.Loop() {
 		if _, err := r.Snapshot(context.Background(), Ask{Scene: sc}); err != nil {
+			b.Fatal(err)
+		}
+	}
+}
+
+func BenchmarkSnapshotBulkFiltered(b *testing.B) {
+	r, sc := many(360_000), scene(b, "2026-12-02T04:00:00Z")
+	f, err := ParseFilter("alt>35 G<16")
+	if err != nil {
+		b.Fatal(err)
+	}
+	for b.Loop() {
+		if _, err := r.Snapshot(context.Background(), Ask{Scene: sc, Filter: f}); err != nil {
 			b.Fatal(err)
 		}
 	}

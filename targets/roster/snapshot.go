@@ -4,11 +4,13 @@ import (
 	"context"
 	"fmt"
 	"slices"
-	"strings"
 	"sync"
 	"time"
 
+	"evenfall/astro"
+	"evenfall/astro/air"
 	"evenfall/targets/moment"
+	"evenfall/targets/sweep"
 )
 
 // Ask is what a snapshot is asked for.
@@ -16,50 +18,95 @@ type Ask struct {
 	Scene  moment.Scene
 	Filter Filter
 	Sort   Sort
+	Marks  map[int]bool // marked targets, for filter and order; not changed afterwards
+	// Keep is an order to go on showing: the new one is worked out too and
+	// stands in Fresh. nil: show the new one.
+	Keep []int32
+	// Exact lists rows that will be shown: those of long lists are worked out
+	// in full at once. Ahead is how many more from the top of a new order.
+	Exact []int32
+	Ahead int
 }
-
-// Sort is an order: a key, reversed or not. The zero value is the order of
-// what to take next.
-type Sort struct {
-	Key     string
-	Reverse bool
-}
-
-// SortKeys lists what a list can be ordered by; the first is what to take next.
-var SortKeys = []string{"next", "name", "alt", "left", "mag", "moon", "ra", "dec", "kind", "stage"}
 
 // Snapshot is a list at one instant: its order, and each row when asked for.
 // It never changes but for rows worked out on the way.
 type Snapshot struct {
 	Roster *Roster
 	Scene  moment.Scene
-	Order  []int // places in the roster, first to take first; filtered
-	Total  int   // before filtering
-	Bulk   bool  // ends of windows from the sweep, to a minute
+	Order  []int32 // places in the roster, as shown: first to take first; filtered
+	Fresh  []int32 // the order as it would be now; the same as Order unless one was kept
+	Total  int     // before filtering
+	Take   int     // how many can be taken now, before filtering
+	Bulk   bool    // ends of windows from the sweep, to a minute
 
-	mu   sync.Mutex
-	rows map[int]*moment.Moment
-	rank map[int]int
+	quick []quick // by place in the roster; long lists only
+	rank  []int32
+	mu    sync.Mutex
+	rows  map[int]*moment.Moment
 }
 
 // Row returns a target's moment; exact, worked out when first asked for.
 func (s *Snapshot) Row(i int) *moment.Moment {
-	s.mu.Lock()
-	m := s.rows[i]
-	s.mu.Unlock()
-	if m != nil {
+	if m := s.Peek(i); m != nil {
 		return m
 	}
 	made := s.Roster.Moment(&s.Scene, i)
 	s.mu.Lock()
 	defer s.mu.Unlock()
-	made.Rank = s.rank[i]
+	made.Rank = int(s.rank[i])
 	s.rows[i] = &made
 	return &made
 }
 
+// Peek returns a target's moment if it has been worked out, else nil.
+func (s *Snapshot) Peek(i int) *moment.Moment {
+	s.mu.Lock()
+	defer s.mu.Unlock()
+	return s.rows[i]
+}
+
+// Quick is what the sweep knows of a row that has not been worked out.
+type Quick struct {
+	Altitude astro.Angle // refracted
+	Airmass  astro.Airmass
+	AirOK    bool
+	InCan    bool
+	InShould bool
+	Left     time.Duration // until the window ends; blocked: until it opens, if Opens
+	Opens    bool
+	Rank     int
+}
+
+// Quick returns what the sweep knows of a target of a long list.
+func (s *Snapshot) Quick(i int) Quick {
+	if s.quick == nil {
+		return Quick{}
+	}
+	q := &s.quick[i]
+	out := Quick{Altitude: air.Refract(sweep.Altitude(q.sinAlt), s.Scene.Night.Site.Air), InCan: q.class < 2, InShould: q.class == 0, Rank: int(s.rank[i])}
+	if x, err := air.Mass(out.Altitude); err == nil {
+		out.Airmass, out.AirOK = x, true
+	}
+	if q.hours < 48 {
+		out.Left, out.Opens = timeOf(q.hours), true
+	}
+	return out
+}
+
 // Find returns the place in the order of a target; -1: filtered out.
-func (s *Snapshot) Find(i int) int { return slices.Index(s.Order, i) }
+func (s *Snapshot) Find(i int) int { return slices.Index(s.Order, int32(i)) }
+
+// Reordered returns the same snapshot in the order that holds now.
+func (s *Snapshot) Reordered() *Snapshot {
+	s.mu.Lock()
+	defer s.mu.Unlock()
+	rows := make(map[int]*moment.Moment, len(s.rows))
+	for i, m := range s.rows {
+		rows[i] = m
+	}
+	return &Snapshot{Roster: s.Roster, Scene: s.Scene, Order: s.Fresh, Fresh: s.Fresh, Total: s.Total, Take: s.Take,
+		Bulk: s.Bulk, quick: s.quick, rank: s.rank, rows: rows}
+}
 
 // checkEvery is how many rows are worked on between looks at the context.
 const checkEvery = 64
@@ -71,20 +118,40 @@ const checkEvery = 64
 //   - ask: scene, filter, order.
 //
 // Returns:
-//   - the snapshot, or the context's error.
+//   - the snapshot, or the context's error, or one that says why a long list
+//     cannot be ordered so.
 //
 // Notes:
 //  1. Lists of up to Bulk targets are exact in every figure. Longer ones are
 //     ranked by the sweep: altitude and airmass exact, ends of windows by the
-//     closed form of the hour angle, to a minute.
+//     closed form of the hour angle, to a minute; the rows of Exact and the
+//     first ones are exact there too.
 //
-// Checked: TestSnapshotRanks, TestSweepRanksLikeMoments, BenchmarkSnapshotBulk.
+// Checked: TestSnapshotRanks, TestSweepRanksLikeMoments, TestKeep, BenchmarkSnapshotBulk.
 func (r *Roster) Snapshot(ctx context.Context, ask Ask) (*Snapshot, error) {
-	s := &Snapshot{Roster: r, Scene: ask.Scene, Total: r.Len(), rows: map[int]*moment.Moment{}, rank: map[int]int{}}
+	s := &Snapshot{Roster: r, Scene: ask.Scene, Total: r.Len(), rows: map[int]*moment.Moment{}, rank: make([]int32, r.Len())}
+	var err error
 	if r.Len() > Bulk {
-		return s, r.bulk(ctx, s, ask)
+		err = r.bulk(ctx, s, ask)
+	} else {
+		err = r.exact(ctx, s, ask)
 	}
-	return s, r.exact(ctx, s, ask)
+	if err != nil {
+		return s, err
+	}
+	s.Order = s.Fresh
+	if ask.Keep != nil {
+		s.Order = ask.Keep
+	}
+	if s.Bulk {
+		for _, i := range ask.Exact {
+			s.Row(int(i))
+		}
+		for _, i := range s.Order[:min(ask.Ahead, len(s.Order))] {
+			s.Row(int(i))
+		}
+	}
+	return s, nil
 }
 
 // exact works out every row.
@@ -99,83 +166,17 @@ func (r *Roster) exact(ctx context.Context, s *Snapshot, ask Ask) error {
 	order := moment.Rank(all)
 	for i := range all {
 		s.rows[i] = &all[i]
-		s.rank[i] = all[i].Rank
-	}
-	for _, i := range order {
-		if ask.Filter.text(r.search[i]) && ask.Filter.passes(r, i, &all[i]) {
-			s.Order = append(s.Order, i)
+		s.rank[i] = int32(all[i].Rank)
+		if all[i].InCan {
+			s.Take++
 		}
 	}
-	if less := s.less(ask.Sort); less != nil {
-		slices.SortStableFunc(s.Order, less)
+	s.Fresh = make([]int32, 0, r.Len())
+	for _, i := range order {
+		if ask.Filter.text(r.search[i]) && ask.Filter.passes(r, i, &all[i], ask.Marks) {
+			s.Fresh = append(s.Fresh, int32(i))
+		}
 	}
+	s.sort(ask)
 	return nil
 }
-
-// less returns how an order compares two targets; nil: what to take next.
-func (s *Snapshot) less(o Sort) func(a, b int) int {
-	if o.Key == "" || o.Key == SortKeys[0] {
-		if !o.Reverse {
-			return nil
-		}
-	}
-	sign := 1
-	if o.Reverse {
-		sign = -1
-	}
-	return func(a, b int) int { return sign * s.compare(o.Key, a, b) }
-}
-
-func (s *Snapshot) compare(key string, a, b int) int {
-	r := s.Roster
-	switch key {
-	case "name":
-		return int(r.byName[a]) - int(r.byName[b])
-	case "kind":
-		return strings.Compare(string(r.entries[a].Target.Kind), string(r.entries[b].Target.Kind))
-	}
-	x, y := s.Row(a), s.Row(b)
-	switch key {
-	case "alt":
-		return number(y.Apparent.Deg() - x.Apparent.Deg())
-	case "moon":
-		return number(y.MoonSep.Deg() - x.MoonSep.Deg())
-	case "ra":
-		return number(x.RA.Deg() - y.RA.Deg())
-	case "dec":
-		return number(x.Dec.Deg() - y.Dec.Deg())
-	case "stage":
-		return strings.Compare(x.Stage.Best, y.Stage.Best)
-	case "left":
-		return presentFirst(x.Left > 0, y.Left > 0, x.Left.Seconds()-y.Left.Seconds())
-	case "mag":
-		return presentFirst(x.Expect.Known, y.Expect.Known, x.Expect.Mag.Mags()-y.Expect.Mag.Mags())
-	}
-	return presentFirst(x.Rank > 0, y.Rank > 0, float64(x.Rank-y.Rank))
-}
-
-func number(d float64) int {
-	switch {
-	case d < 0:
-		return -1
-	case d > 0:
-		return 1
-	}
-	return 0
-}
-
-// presentFirst puts what is known before what is not.
-func presentFirst(a, b bool, d float64) int {
-	switch {
-	case a && !b:
-		return -1
-	case b && !a:
-		return 1
-	case !a:
-		return 0
-	}
-	return number(d)
-}
-
-// timeOf turns hours into a duration.
-func timeOf(hours float32) time.Duration { return time.Duration(float64(hours) * float64(time.Hour)) }
