@@ -52,6 +52,12 @@ var layers = map[string][]string{
 	"tui/early":       {},
 	"tui/kit":         {"targets/...", "astro/..."},
 	"tui/term":        {},
+	"tui/next":        {"tui/kit", "targets/...", "astro/..."},
+	"tui/star":        {"tui/kit", "targets/...", "astro/..."},
+	"tui/entry":       {"tui/kit", "targets/...", "astro/..."},
+	"tui/plain":       {"tui/kit", "targets/...", "astro/..."},
+	"tui/help":        {"tui/kit", "targets/...", "astro/..."},
+	"tui/desk":        {"tui/kit", "tui/next", "tui/star", "tui/entry", "tui/plain", "tui/help", "targets/...", "astro/..."},
 	"cmd/evenfall":    {"tui/...", "targets/...", "astro/..."},
 }
 
@@ -60,12 +66,14 @@ var fences = []struct {
 	path  *regexp.Regexp
 	where []string
 }{
-	{regexp.MustCompile(`^os(/|$)`), []string{"cmd/evenfall", "targets/run", "targets/store", "astro/clock", "tui/term", "astro/check"}},
+	{regexp.MustCompile(`^os(/|$)`), []string{"cmd/evenfall", "targets/run", "targets/store", "astro/clock", "tui", "tui/term", "astro/check"}},
 	{regexp.MustCompile(`^net(/|$)`), nil},
 	{regexp.MustCompile(`^math/rand`), nil},
 	{regexp.MustCompile(`^github\.com/soniakeys/`), []string{"astro/meeusfence"}},
 	{regexp.MustCompile(`^github\.com/charmbracelet/bubbletea`), []string{"tui", "tui/early"}},
-	{regexp.MustCompile(`^github\.com/charmbracelet/lipgloss`), []string{"tui", "tui/early", "tui/kit"}},
+	{regexp.MustCompile(`^github\.com/charmbracelet/lipgloss`), []string{"tui/early", "tui/kit"}},
+	{regexp.MustCompile(`^github\.com/(charmbracelet/x/ansi|muesli/termenv)`), []string{"tui/kit"}},
+	{regexp.MustCompile(`^github\.com/aymanbagabas/`), []string{"tui/term"}},
 	{regexp.MustCompile(`^github\.com/charmbracelet/x/term`), []string{"cmd/evenfall", "tui/term"}},
 	{regexp.MustCompile(`^github\.com/spf13/`), []string{"cmd/evenfall"}},
 	{regexp.MustCompile(`^github\.com/pelletier/`), []string{"targets/run"}},

@@ -12,6 +12,7 @@ import (
 	"evenfall/astro"
 	"evenfall/targets"
 	"evenfall/targets/moment"
+	"evenfall/tui/kit"
 )
 
 func showCommand(w world, o *options) *cobra.Command {
@@ -307,7 +308,7 @@ func (v view) stageText(b *strings.Builder) {
 
 func (v view) lightText(b *strings.Builder) {
 	f := &v.m.Expect
-	fmt.Fprintf(b, "\nexpected brightness: %s  (%.0f %% interval, brighter end first)\n", strings.TrimSpace(expectWord(f)), 100*f.Level)
+	fmt.Fprintf(b, "\nexpected brightness: %s  (%.0f %% interval, brighter end first)\n", strings.TrimSpace(kit.ExpectWord(f)), 100*f.Level)
 	if f.SB != nil {
 		fmt.Fprintf(b, "  surface brightness %.2f %.2f..%.2f mag per square arcsec in the line\n",
 			f.SB.Value.MagArcsec2(), f.SB.Lo.MagArcsec2(), f.SB.Hi.MagArcsec2())
@@ -326,17 +327,6 @@ func (v view) lightText(b *strings.Builder) {
 		fmt.Fprintf(b, "  basis: %s\n", f.Basis)
 	}
 	for _, e := range v.p.Light.Next(v.m.At) {
-		fmt.Fprintf(b, "  next %s %s, +- %s (%s)\n", e.Kind, e.At.UTC().Round(time.Second).Format("2006-01-02 15:04:05 UTC"), duration(e.SigmaS), e.Status)
+		fmt.Fprintf(b, "  next %s %s, +- %s (%s)\n", e.Kind, e.At.UTC().Round(time.Second).Format("2006-01-02 15:04:05 UTC"), kit.Duration(e.SigmaS), e.Status)
 	}
-}
-
-// duration writes seconds in the unit that suits them.
-func duration(s float64) string {
-	switch {
-	case s < 300:
-		return fmt.Sprintf("%.0f s", s)
-	case s < 86400:
-		return fmt.Sprintf("%.1f h", s/3600)
-	}
-	return fmt.Sprintf("%.0f d", s/86400)
 }

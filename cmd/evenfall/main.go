@@ -14,6 +14,7 @@ import (
 	_ "evenfall/tui/early" // before anything asks the terminal
 
 	"evenfall/astro/clock"
+	"evenfall/tui/term"
 )
 
 // Exit statuses, as promised to scripts.
@@ -22,6 +23,7 @@ const (
 	exitRefused = 1 // a cell, row or key was refused; the rest is printed
 	exitUsage   = 2
 	exitFailure = 3 // disk, lock
+	// 128 and the signal's number where one ended the program
 )
 
 // usageError is a mistake in the words of a call.
@@ -52,7 +54,11 @@ func main() {
 func execute(w world, args []string) int {
 	err := rootCommand(w, args).Execute()
 	var usage usageError
+	var signalled term.Signalled
 	switch {
+	case errors.As(err, &signalled):
+		fmt.Fprintln(w.err, "evenfall:", err)
+		return signalled.Status()
 	case err == nil:
 		return exitDone
 	case errors.Is(err, errRefused):

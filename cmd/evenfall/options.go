@@ -25,6 +25,8 @@ type options struct {
 	level              float64
 	format             string
 	sort               string
+	theme, glyphs      string
+	tick               string
 	handover           bool
 	latSet, lonSet     bool
 	elevSet, formatSet bool

@@ -1,13 +1,27 @@
 package main
 
 import (
+	"bytes"
 	"fmt"
 	"os"
+	"path/filepath"
+	"slices"
 	"strconv"
+	"strings"
+	"sync"
+	"time"
 
 	"github.com/charmbracelet/x/term"
 
+	"evenfall/astro"
+	"evenfall/astro/clock"
+	"evenfall/targets"
+	"evenfall/targets/moment"
+	"evenfall/targets/roster"
 	"evenfall/tui"
+	"evenfall/tui/desk"
+	"evenfall/tui/kit"
+	terminal "evenfall/tui/term"
 )
 
 // terminalSize returns the width of the terminal that standard output is, 0
@@ -26,49 +40,117 @@ func terminalSize() (width int, both bool) {
 	return width, term.IsTerminal(os.Stdin.Fd())
 }
 
-// openScreen shows the list in the terminal.
+// ticks is how often the clock on the screen may go on.
+var ticks = map[string]time.Duration{"1s": time.Second, "10s": 10 * time.Second, "60s": time.Minute, "off": 0}
+
+// openScreen shows the screens in the terminal.
 func openScreen(w world, o *options) error {
 	if os.Getenv("TERM") == "dumb" {
+		fmt.Fprintln(w.err, "evenfall: TERM is dumb: here is the list as text; evenfall list and evenfall show do the rest")
 		return runList(w, o)
 	}
+	settings := kit.Settings{Theme: first(o.theme, os.Getenv("EVENFALL_THEME")), Glyphs: first(o.glyphs, os.Getenv("EVENFALL_GLYPHS")), Getenv: os.Getenv}
+	look, err := settings.Look()
+	if err != nil {
+		return usagef("%w", err)
+	}
+	every, ok := ticks[o.tick]
+	if !ok {
+		return usagef("--tick %s: use one of 1s, 10s, 60s, off", quote(o.tick))
+	}
+	// what reading has to say would be lost behind the screen
+	var said bytes.Buffer
 	quiet := w
+	quiet.err = &said
 	s, err := openSession(quiet, o)
 	if err != nil {
+		w.err.Write(said.Bytes())
 		return err
 	}
-	return tui.Open(func() tui.Page {
-		fresh := *s
-		if o.at == "" && o.night == "" {
-			if err := fresh.setTime(w, o); err != nil {
-				fresh.at = s.at
-			}
-		}
-		fresh.compute(o)
-		return fresh.page()
-	}, w.in, w.out)
+	src := s.source(o)
+	src.Look, src.Every, src.Notices = look, every, notices(said.String())
+	opts := tui.Options{Source: src, Clock: w.clock, In: os.Stdin, Out: os.Stdout, Tick: every, Crash: terminal.CrashLog{Path: s.crashPath()},
+		Getenv: os.Getenv, Save: func() {}, Exit: os.Exit}
+	if o.at != "" {
+		opts.Clock = clock.Fixed{At: s.at.UTC()}
+	}
+	err = tui.Open(opts)
+	w.err.Write(said.Bytes())
+	return err
 }
 
-// page makes the rows of the screen.
-func (s *session) page() tui.Page {
-	t := s.at.UTC()
-	p := tui.Page{Title: "evenfall  " + s.site.Name}
-	if s.demo {
-		p.Title = "evenfall  DEMONSTRATION  " + s.site.Name
-	}
-	p.Time = fmt.Sprintf("%s  LST %s  %s  Moon %.0f %% lit", t.Format("Mon 2 Jan 2006 15:04 UTC"),
-		s.scene.Frame.LST.HMS(0), s.scene.Part, 100*s.scene.Phase.Illuminated)
-	for _, i := range s.order {
-		m := &s.moments[i]
-		row := tui.Row{Name: s.targets[i].Name, Kind: string(s.targets[i].Kind), Airmass: "-",
-			Stage: stageWord(&m.Stage), Expected: expectWord(&m.Expect)}
-		row.Altitude = fmt.Sprintf("%.1f%s", m.Apparent.Deg(), map[bool]string{true: "+", false: "-"}[m.Rising])
-		if m.AirOK {
-			row.Airmass = fmt.Sprintf("%.2f", float64(m.Airmass))
+func first(values ...string) string {
+	for _, v := range values {
+		if v != "" {
+			return v
 		}
-		if !m.InCan {
-			row.Blocked = blockedWord(m)
-		}
-		p.Rows = append(p.Rows, row)
 	}
-	return p
+	return ""
+}
+
+// notices condenses what reading said into what fits the status line.
+func notices(said string) []string {
+	lines := strings.Split(strings.TrimSpace(said), "\n")
+	lines = slices.DeleteFunc(lines, func(l string) bool { return l == "" || l == demoNotice })
+	switch len(lines) {
+	case 0:
+		return nil
+	case 1:
+		return lines
+	}
+	return []string{fmt.Sprintf("%d remarks on the files read; evenfall check lists them. The first: %s", len(lines), lines[0])}
+}
+
+// crashPath is where a failure inside the program is written down: the run
+// folder, or where there is none a folder for what need not last.
+func (s *session) crashPath() string {
+	if s.demo || s.run == nil {
+		return filepath.Join(os.TempDir(), "evenfall-crash-"+strconv.Itoa(os.Getuid())+".log")
+	}
+	return filepath.Join(s.dir, "crash.log")
+}
+
+// source is the session as the screens see it.
+func (s *session) source(o *options) desk.Source {
+	byTarget, wishes := s.magnitudesByTarget(), s.wishes()
+	entries := make([]roster.Entry, len(s.targets))
+	for i := range s.targets {
+		entries[i] = roster.Entry{Target: s.targets[i], Magnitudes: byTarget[i], Want: s.want(o, wishes, s.night.Date, i, s.targets[i].Kind)}
+	}
+	wants := func(n *moment.Night, i int, e *roster.Entry) moment.Want {
+		if n.Date == s.night.Date && !e.Session {
+			return e.Want
+		}
+		return s.want(o, wishes, n.Date, i, e.Target.Kind)
+	}
+	src := desk.Source{Site: s.site, Title: s.title, Demo: s.demo, Zone: s.location(), HandOver: s.handOverFormat(),
+		Band: targets.Band(o.band), Level: o.level, Roster: roster.New(entries, moment.NewModels(), wants),
+		Night: s.nights(), Fixed: o.at != ""}
+	if o.night != "" && o.at == "" {
+		src.Start = s.at.UTC()
+	}
+	return src
+}
+
+// nights prepares nights and keeps them; safe for several goroutines.
+func (s *session) nights() func(astro.Date) (*moment.Night, error) {
+	var mu sync.Mutex
+	kept := map[astro.Date]*moment.Night{s.night.Date: s.night}
+	const most = 8
+	return func(date astro.Date) (*moment.Night, error) {
+		mu.Lock()
+		defer mu.Unlock()
+		if n, ok := kept[date]; ok {
+			return n, nil
+		}
+		n, err := s.nightOf(date)
+		if err != nil {
+			return nil, err
+		}
+		if len(kept) >= most {
+			clear(kept)
+		}
+		kept[date] = n
+		return n, nil
+	}
 }

@@ -7,7 +7,6 @@ import (
 	"io/fs"
 	"os"
 	"path/filepath"
-	"slices"
 	"strings"
 	"time"
 
@@ -26,6 +25,7 @@ type siteChoice struct {
 	title   string
 	demo    bool
 	run     *run.Run // nil: an ad-hoc site
+	dir     string   // the run folder; "" where there is none
 	refused bool     // something in the input was refused
 }
 
@@ -94,7 +94,11 @@ func openSite(w world, o *options) (*siteChoice, error) {
 	if _, err := os.Stat(filepath.Join(dir, "run.toml")); err != nil {
 		return nil, usagef("%s has no run.toml; make a run with 'evenfall new DIR'", quote(dir))
 	}
-	return openRun(w, os.DirFS(dir), dir, false)
+	s, err := openRun(w, os.DirFS(dir), dir, false)
+	if s != nil {
+		s.dir = dir
+	}
+	return s, err
 }
 
 func openRun(w world, fsys fs.FS, name string, demo bool) (*siteChoice, error) {
@@ -278,11 +282,8 @@ func (s *session) setTime(w world, o *options) error {
 			return err
 		}
 	}
-	if s.night, err = moment.NewNight(s.site, date, s.limits, targets.Conditions{}); err != nil {
+	if s.night, err = s.nightOf(date); err != nil {
 		return usagef("%w", err)
-	}
-	if s.run != nil {
-		s.night.Allocated = s.run.Config.AllocatedOn(s.night.Span, date)
 	}
 	if given && o.at == "" {
 		at = s.night.DefaultMoment()
@@ -295,81 +296,30 @@ func (s *session) setTime(w world, o *options) error {
 	return nil
 }
 
+// nightOf prepares one night of the site.
+func (s *session) nightOf(date astro.Date) (*moment.Night, error) {
+	n, err := moment.NewNight(s.site, date, s.limits, targets.Conditions{})
+	if err == nil && s.run != nil {
+		n.Allocated = s.run.Config.AllocatedOn(n.Span, date)
+	}
+	return n, err
+}
+
 // compute prepares the targets and works out each one's moment.
 func (s *session) compute(o *options) {
 	s.scene = moment.NewScene(s.night, s.at)
 	models := moment.NewModels()
-	byTarget := s.magnitudesByTarget()
-	weights := s.weights()
+	byTarget, wishes := s.magnitudesByTarget(), s.wishes()
 	n := len(s.targets)
 	s.prepared, s.wants = make([]moment.Prepared, n), make([]moment.Want, n)
 	s.courses, s.moments = make([]moment.Course, n), make([]moment.Moment, n)
 	for i := range s.targets {
 		s.prepared[i] = moment.Prepare(s.targets[i], byTarget[i], models)
-		s.wants[i] = moment.Want{Band: targets.Band(o.band), Level: o.level, Weight: weights[i]}
-		s.equip(&s.wants[i], i)
+		s.wants[i] = s.want(o, wishes, s.night.Date, i, s.targets[i].Kind)
 		s.courses[i] = moment.Tonight(s.night, &s.prepared[i], s.wants[i])
 		s.moments[i] = moment.Of(&s.scene, &s.prepared[i], &s.courses[i], s.wants[i])
 	}
 	s.order = moment.Rank(s.moments)
-}
-
-// magnitudesByTarget sorts the magnitudes to their targets; those that name no
-// target were reported when they were read.
-func (s *session) magnitudesByTarget() map[int][]targets.Magnitude {
-	out := map[int][]targets.Magnitude{}
-	for _, m := range s.magnitudes {
-		if i, err := table.Match(s.targets, m.Target); err == nil {
-			out[i] = append(out[i], m)
-		}
-	}
-	return out
-}
-
-// equip finds the instrument and mode that a target's heaviest request, or the
-// default of its kind, takes it with; their limits then hold.
-func (s *session) equip(w *moment.Want, i int) {
-	if s.run == nil || len(s.run.Config.Instruments) == 0 {
-		return
-	}
-	night, listed := s.run.Config.NightOn(s.night.Date)
-	request, ok := s.run.Config.DefaultRequest(s.targets[i].Kind, night.Instruments...)
-	heaviest := -1.0
-	for k := range s.requests {
-		q := &s.requests[k]
-		if j, err := table.Match(s.targets, q.Target); err == nil && j == i && q.Instrument != "" && q.Weight > heaviest {
-			request, heaviest, ok = *q, q.Weight, true
-		}
-	}
-	if !ok {
-		return
-	}
-	if w.Instrument, ok = s.run.Config.Instrument(request.Instrument); !ok {
-		return
-	}
-	w.Mode, _ = w.Instrument.Mode(request.Mode)
-	if listed && len(night.Instruments) > 0 && !slices.Contains(night.Instruments, w.Instrument.Name) {
-		w.NotMounted = w.Instrument.Name
-	}
-}
-
-// weights returns the greatest weight among each target's requests, 1 without.
-func (s *session) weights() []float64 {
-	out := make([]float64, len(s.targets))
-	asked := make([]bool, len(s.targets))
-	for i := range out {
-		out[i] = 1
-	}
-	for _, r := range s.requests {
-		i, err := table.Match(s.targets, r.Target)
-		if err != nil {
-			continue
-		}
-		if !asked[i] || r.Weight > out[i] {
-			out[i], asked[i] = r.Weight, true
-		}
-	}
-	return out
 }
 
 // find returns the target that a name or id means.

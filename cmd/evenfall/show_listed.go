@@ -1,11 +1,9 @@
 package main
 
 import (
-	"encoding/csv"
 	"fmt"
 	"strings"
 
-	"evenfall/targets"
 	"evenfall/targets/moment"
 	"evenfall/targets/table"
 )
@@ -13,26 +11,12 @@ import (
 // listed returns the columns of a target's list with their units, as they
 // would be written back.
 func (v view) listed() ([]jsonListed, error) {
-	var b strings.Builder
-	if err := table.Write(&b, []targets.Target{*v.t}); err != nil {
-		return nil, fmt.Errorf("writing out %s: %w", v.t.Name, err)
-	}
-	rows, err := csv.NewReader(strings.NewReader(b.String())).ReadAll()
-	if err != nil || len(rows) != 2 {
-		return nil, fmt.Errorf("writing out %s: %d rows, %w", v.t.Name, len(rows), err)
-	}
-	units := map[string]string{}
-	for _, c := range table.Columns() {
-		units[c.Name] = c.Unit
-	}
-	apart := map[string]bool{"id": true, "name": true, "kind": true, "source": true, "unconfirmed": true, "conflicts": true, "notes": true}
+	list, err := table.Listed(v.t)
 	var out []jsonListed
-	for k, column := range rows[0] {
-		if value := rows[1][k]; value != "" && !apart[column] {
-			out = append(out, jsonListed{column, value, units[column], v.t.IsUnconfirmed(column)})
-		}
+	for _, l := range list {
+		out = append(out, jsonListed(l))
 	}
-	return out, nil
+	return out, err
 }
 
 // listText prints what the list says.

@@ -230,11 +230,8 @@ func TestKeep(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	if !slices.Equal(a.Order, b.Order) || slices.Equal(b.Order, b.Fresh) {
+	if !slices.Equal(a.Order, b.Order) || slices.Equal(b.Order, b.Fresh) || !b.Stale || a.Stale {
 		t.Error("the order shown is not the one kept, or the new one is the same")
-	}
-	if c := b.Reordered(); !slices.Equal(c.Order, b.Fresh) || c.Peek(int(c.Order[0])) == nil {
-		t.Error("reordering changes rows or not the order")
 	}
 }
 

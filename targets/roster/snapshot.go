@@ -38,6 +38,7 @@ type Snapshot struct {
 	Total  int     // before filtering
 	Take   int     // how many can be taken now, before filtering
 	Bulk   bool    // ends of windows from the sweep, to a minute
+	Stale  bool    // Order is not Fresh
 
 	quick []quick // by place in the roster; long lists only
 	rank  []int32
@@ -96,18 +97,6 @@ func (s *Snapshot) Quick(i int) Quick {
 // Find returns the place in the order of a target; -1: filtered out.
 func (s *Snapshot) Find(i int) int { return slices.Index(s.Order, int32(i)) }
 
-// Reordered returns the same snapshot in the order that holds now.
-func (s *Snapshot) Reordered() *Snapshot {
-	s.mu.Lock()
-	defer s.mu.Unlock()
-	rows := make(map[int]*moment.Moment, len(s.rows))
-	for i, m := range s.rows {
-		rows[i] = m
-	}
-	return &Snapshot{Roster: s.Roster, Scene: s.Scene, Order: s.Fresh, Fresh: s.Fresh, Total: s.Total, Take: s.Take,
-		Bulk: s.Bulk, quick: s.quick, rank: s.rank, rows: rows}
-}
-
 // checkEvery is how many rows are worked on between looks at the context.
 const checkEvery = 64
 
@@ -141,7 +130,7 @@ func (r *Roster) Snapshot(ctx context.Context, ask Ask) (*Snapshot, error) {
 	}
 	s.Order = s.Fresh
 	if ask.Keep != nil {
-		s.Order = ask.Keep
+		s.Order, s.Stale = ask.Keep, !slices.Equal(ask.Keep, s.Fresh)
 	}
 	if s.Bulk {
 		for _, i := range ask.Exact {

@@ -1,0 +1,321 @@
+// Package desk is the program on the screen without the terminal: which
+// screen is up, which moment is shown, the list and its selection, marks and
+// messages. Keys, results and the clock come in as plain values; pictures and
+// tasks go out. It knows no Bubble Tea, starts no goroutine and reads no clock.
+package desk
+
+import (
+	"context"
+	"time"
+
+	"evenfall/astro"
+	"evenfall/targets"
+	"evenfall/targets/moment"
+	"evenfall/targets/roster"
+	"evenfall/tui/entry"
+	"evenfall/tui/help"
+	"evenfall/tui/kit"
+	"evenfall/tui/next"
+	"evenfall/tui/plain"
+	"evenfall/tui/star"
+)
+
+// Source is what the desk is opened on.
+type Source struct {
+	Site     astro.Site
+	Title    string
+	Demo     bool
+	Zone     *time.Location
+	HandOver moment.HandOver
+	Band     targets.Band
+	Level    float64
+	Roster   *roster.Roster
+	// Night prepares a night; called from tasks, several at a time.
+	Night func(astro.Date) (*moment.Night, error)
+	// Copy sends text to the clipboard and says where it went; called from a
+	// task.
+	Copy func(text string) (string, error)
+	// Fixed: the clock stands still.
+	Fixed bool
+	// Start is a moment of one's own to begin with; zero: the clock's.
+	Start time.Time
+	// Every is how often the list follows the clock; 0: only when asked.
+	Every time.Duration
+	// Notices are said once, at the start.
+	Notices []string
+	Look    *kit.Look
+}
+
+// Task is work for the background. What Run returns goes to Apply.
+type Task struct {
+	Name string
+	Run  func() any
+}
+
+// Desk is the program's state. It is used by one goroutine.
+type Desk struct {
+	src     Source
+	w       kit.World
+	screens []kit.Screen // the last is up
+	entry   kit.Screen   // the form, kept while it is away
+	message string
+	bad     bool
+	last    string // the last message, for help
+	asking  bool   // whether to leave
+	done    bool
+
+	generation int
+	cancel     context.CancelFunc // of the snapshot under way; nil: none
+	filter     roster.Filter      // as parsed from World.Filter
+	askedAt    time.Time          // clock's time of the last snapshot asked for
+	keyAt      time.Time          // clock's time of the last key
+	anchor     int                // the star that the user selected, also while it is filtered out
+	works      int                // in flight
+}
+
+// idleAfter is how long no key must have come before the list puts itself
+// into a new order.
+const idleAfter = time.Minute
+
+// New opens the desk at a time of the clock.
+func New(src Source, now time.Time) (*Desk, []Task) {
+	d := &Desk{src: src, anchor: -1, entry: entry.New(), screens: []kit.Screen{next.New()}}
+	d.w = kit.World{Look: src.Look, Site: src.Site, Title: src.Title, Demo: src.Demo, Zone: src.Zone, HandOver: src.HandOver,
+		Band: src.Band, Level: src.Level, Fixed: src.Fixed, Selected: -1, Place: -1, Wall: now, Shown: now, Live: true,
+		Marks: map[int]bool{}, Width: 80, Height: 24}
+	if !src.Start.IsZero() {
+		d.w.Shown, d.w.Live = src.Start, false
+	}
+	d.keyAt = now
+	for _, n := range src.Notices {
+		d.say(n, false)
+	}
+	return d, d.ask(nil)
+}
+
+// Done tells whether the user left.
+func (d *Desk) Done() bool { return d.done }
+
+// Resize tells the desk how large the screen is.
+func (d *Desk) Resize(width, height int) []Task {
+	d.w.Width, d.w.Height = max(width, 0), max(height, 0)
+	return d.follow()
+}
+
+func (d *Desk) up() kit.Screen { return d.screens[len(d.screens)-1] }
+
+func (d *Desk) put(s kit.Screen) {
+	d.screens[len(d.screens)-1] = s
+	if s.Title() == kit.OnEntry {
+		d.entry = s
+	}
+}
+
+// say puts a message on the status line; a bad one stays until dismissed.
+func (d *Desk) say(text string, bad bool) {
+	if d.bad && !bad {
+		return
+	}
+	d.message, d.bad, d.last = text, bad, text
+}
+
+// Key obeys a key, named as the terminal names it.
+func (d *Desk) Key(press string) []Task {
+	d.keyAt = d.w.Wall
+	if d.asking {
+		d.asking = false
+		d.done = press == "y"
+		return nil
+	}
+	if press == "ctrl+c" {
+		d.leave()
+		return nil
+	}
+	if !d.bad {
+		d.message = ""
+	}
+	s := d.up()
+	if !s.Typing() {
+		if tasks, obeyed := d.common(kit.Lookup(s.Title(), press)); obeyed {
+			return append(tasks, d.follow()...)
+		}
+	} else if d.bad {
+		d.message, d.bad = "", false // typing on reads it
+	}
+	s, job := s.Key(&d.w, press)
+	d.put(s)
+	tasks := d.do(job)
+	return append(tasks, d.follow()...)
+}
+
+// Paste takes pasted text: it goes to a field or is dropped, never to keys.
+func (d *Desk) Paste(text string) []Task {
+	d.keyAt = d.w.Wall
+	p, ok := d.up().(kit.Paster)
+	if !ok {
+		d.say("pasted text is for fields: a adds a target, / filters", false)
+		return nil
+	}
+	s, job := p.Paste(&d.w, text)
+	d.put(s)
+	return append(d.do(job), d.follow()...)
+}
+
+// steps is what the keys of time do.
+var steps = map[kit.Action]kit.Step{
+	kit.MinuteLess: {By: -time.Minute}, kit.MinuteMore: {By: time.Minute},
+	kit.TenLess: {By: -10 * time.Minute}, kit.TenMore: {By: 10 * time.Minute},
+	kit.HourLess: {By: -time.Hour}, kit.HourMore: {By: time.Hour},
+	kit.NightLess: {Nights: -1}, kit.NightMore: {Nights: 1},
+}
+
+// common obeys the keys that mean the same on every screen.
+func (d *Desk) common(a kit.Action) ([]Task, bool) {
+	if step, ok := steps[a]; ok {
+		return d.do(step), true
+	}
+	switch a {
+	case kit.BackToNow:
+		return d.do(kit.Now{}), true
+	case kit.MarkStar:
+		return d.do(kit.Toggle{}), true
+	case kit.AddStar:
+		d.screens = append(d.screens, d.entry)
+	case kit.CopyLines:
+		return d.copy(), true
+	case kit.ShowHelp:
+		d.screens = append(d.screens, help.New(d.up().Title(), d.last))
+	case kit.ChangeTheme:
+		d.theme()
+	case kit.Back:
+		switch {
+		case d.message != "":
+			d.message, d.bad = "", false
+		case len(d.screens) > 1:
+			d.close()
+		}
+	case kit.Leave:
+		if len(d.screens) > 1 {
+			d.close()
+		} else {
+			d.leave()
+		}
+	default:
+		return nil, false
+	}
+	return nil, true
+}
+
+// leave ends the program, or asks first where something is half typed.
+func (d *Desk) leave() {
+	for _, s := range append([]kit.Screen{d.entry}, d.screens...) {
+		if t, ok := s.(kit.Draft); ok && t.HalfTyped() {
+			d.asking = true
+			return
+		}
+	}
+	d.done = true
+}
+
+func (d *Desk) close() {
+	if len(d.screens) > 1 {
+		d.screens = d.screens[:len(d.screens)-1]
+	}
+}
+
+func (d *Desk) theme() {
+	for i, t := range kit.Themes {
+		if t == d.w.Look.Theme {
+			t = kit.Themes[(i+1)%len(kit.Themes)]
+			d.w.Look = kit.NewLook(t, d.w.Look.Level, d.w.Look.Glyphs)
+			d.say("theme "+string(t), false)
+			return
+		}
+	}
+}
+
+// copy shows the hand-over lines of the selected star plainly and sends them
+// to the clipboard.
+func (d *Desk) copy() []Task {
+	m := d.w.Moment()
+	if m == nil {
+		d.say("no star is selected, or it is still being worked out", false)
+		return nil
+	}
+	lines := d.w.HandOver.Lines(&d.w.Entry().Target, m, d.w.Snap.Roster.Prepared(d.w.Selected).Drift)
+	s := plain.New(lines)
+	d.screens = append(d.screens, s)
+	return d.do(kit.Copy{Text: s.Text()})
+}
+
+// do carries out what a key asked for.
+func (d *Desk) do(job kit.Job) []Task {
+	switch j := job.(type) {
+	case kit.All:
+		var tasks []Task
+		for _, one := range j {
+			tasks = append(tasks, d.do(one)...)
+		}
+		return tasks
+	case kit.Work:
+		return []Task{d.work(j)}
+	case kit.Say:
+		d.say(j.Text, j.Bad)
+	case kit.Select:
+		d.anchor = j.Row
+		d.selectRow(j.Row)
+	case kit.Open:
+		if j.Screen == kit.OnStar {
+			d.screens = append(d.screens, star.New())
+		}
+	case kit.Close:
+		d.close()
+	case kit.Toggle:
+		d.toggle()
+	case kit.Find:
+		return d.find(j)
+	case kit.Rerank:
+		d.say("order of "+d.w.Shown.Format("15:04:05"), false)
+		return d.ask(nil)
+	case kit.Step:
+		return d.step(j)
+	case kit.Now:
+		if !d.w.Live {
+			d.say("back to now", false)
+		}
+		d.w.Live, d.w.Shown = true, d.w.Wall
+		return d.ask(nil)
+	case kit.Add:
+		return []Task{d.add(j.Entry)}
+	case kit.Copy:
+		return []Task{d.clip(j.Text)}
+	}
+	return nil
+}
+
+func (d *Desk) selectRow(row int) {
+	d.w.Selected = row
+	d.w.Place = -1
+	if d.w.Snap != nil {
+		d.w.Place = d.w.Snap.Find(row)
+	}
+}
+
+// toggle marks or unmarks the selected star. The map is never changed: tasks
+// under way may be reading it.
+func (d *Desk) toggle() {
+	if d.w.Entry() == nil {
+		d.say("no star is selected", false)
+		return
+	}
+	marks := make(map[int]bool, len(d.w.Marks)+1)
+	for i := range d.w.Marks {
+		marks[i] = true
+	}
+	if marks[d.w.Selected] {
+		delete(marks, d.w.Selected)
+	} else {
+		marks[d.w.Selected] = true
+	}
+	d.w.Marks = marks
+}

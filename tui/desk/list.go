@@ -1,0 +1,280 @@
+package desk
+
+import (
+	"context"
+	"errors"
+	"fmt"
+	"slices"
+	"time"
+
+	"evenfall/astro"
+	"evenfall/astro/timescale"
+	"evenfall/targets/moment"
+	"evenfall/targets/roster"
+	"evenfall/tui/kit"
+)
+
+// listed is what a snapshot's task brings back.
+type listed struct {
+	generation int
+	snap       *roster.Snapshot
+	err        error
+	user       bool // asked for by the user: a new order
+	shown      time.Time
+}
+
+// brought is what another task brings back.
+type brought struct {
+	screen string
+	result kit.Result
+}
+
+// added is a roster with a new target.
+type added struct {
+	roster *roster.Roster
+	row    int
+}
+
+// ask makes the task of a new snapshot. A kept order is gone on with; nil is
+// the user's word for a new one.
+func (d *Desk) ask(keep []int32) []Task {
+	if d.cancel != nil {
+		d.cancel()
+	}
+	ctx, cancel := context.WithCancel(context.Background())
+	d.generation++
+	d.cancel, d.askedAt = cancel, d.w.Wall
+	a := roster.Ask{Filter: d.filter, Sort: d.w.Sort, Marks: d.w.Marks, Keep: keep, Exact: d.rows(), Ahead: d.w.Height}
+	r := d.src.Roster
+	src, shown, generation := d.src, d.w.Shown, d.generation
+	return []Task{{"working out the list", func() any {
+		out := listed{generation: generation, user: keep == nil, shown: shown}
+		a.Scene, out.err = sceneAt(src, shown)
+		if out.err == nil {
+			out.snap, out.err = r.Snapshot(ctx, a)
+		}
+		return out
+	}}}
+}
+
+// sceneAt works out what all targets share at a time: in daylight, of the
+// night to come.
+func sceneAt(src Source, t time.Time) (moment.Scene, error) {
+	at, err := timescale.AtDUT1(t, src.Site.DUT1)
+	if err != nil {
+		return moment.Scene{}, err
+	}
+	var date astro.Date
+	if date, err = moment.DateOfTonight(src.Site, at); err != nil {
+		return moment.Scene{}, err
+	}
+	n, err := src.Night(date)
+	if err != nil {
+		return moment.Scene{}, err
+	}
+	return moment.NewScene(n, at), nil
+}
+
+// rows names what the screen that is up shows.
+func (d *Desk) rows() []int32 {
+	if s, ok := d.up().(kit.Shows); ok {
+		return slices.Clone(s.Rows(&d.w))
+	}
+	return nil
+}
+
+// Apply takes what a task brought back.
+func (d *Desk) Apply(result any) []Task {
+	switch r := result.(type) {
+	case listed:
+		return d.arrived(r)
+	case brought:
+		d.works--
+		for i, s := range d.screens {
+			if s.Title() == r.screen {
+				d.screens[i] = s.Apply(&d.w, r.result)
+			}
+		}
+		if f, ok := r.result.(kit.Failed); ok && !errors.Is(f.Err, context.Canceled) {
+			d.say(f.Name+": "+f.Err.Error(), true)
+		}
+	case added:
+		d.works--
+		d.src.Roster, d.anchor = r.roster, r.row
+		d.say(r.roster.Entry(r.row).Target.Name+" is in the list, kept for this session", false)
+		return d.ask(nil)
+	case kit.Say:
+		d.say(r.Text, r.Bad)
+	}
+	return nil
+}
+
+// arrived swaps the list shown for a new one, unless a later one was asked for.
+func (d *Desk) arrived(r listed) []Task {
+	if r.generation != d.generation {
+		return nil
+	}
+	d.cancel()
+	d.cancel = nil
+	if r.err != nil {
+		if !errors.Is(r.err, context.Canceled) {
+			d.say(r.err.Error(), true)
+		}
+		return nil
+	}
+	if d.w.Snap != nil && r.user && d.w.OrderAt != r.shown && !slices.Equal(r.snap.Order, d.w.Snap.Order) && d.message == "" && d.idle() {
+		d.say("new order, of "+r.shown.Format("15:04")+", as no key was pressed for a while", false)
+	}
+	if r.user {
+		d.w.OrderAt = r.shown
+	}
+	d.w.Snap = r.snap
+	place := d.w.Place
+	switch {
+	case d.anchor >= 0 && r.snap.Find(d.anchor) >= 0:
+		d.selectRow(d.anchor)
+	case len(r.snap.Order) == 0:
+		d.w.Selected, d.w.Place = -1, -1
+	default: // its star is filtered out: the row that stands in its place
+		place = max(min(place, len(r.snap.Order)-1), 0)
+		d.selectRow(int(r.snap.Order[place]))
+	}
+	return d.follow()
+}
+
+func (d *Desk) idle() bool { return d.w.Wall.Sub(d.keyAt) >= idleAfter }
+
+// follow gives the screen that is up its say after a change, and has rows of
+// long lists worked out that have come into sight.
+func (d *Desk) follow() []Task {
+	var tasks []Task
+	if s, ok := d.up().(interface {
+		Refresh(*kit.World) (kit.Screen, kit.Job)
+	}); ok {
+		n, job := s.Refresh(&d.w)
+		d.put(n)
+		tasks = append(tasks, d.do(job)...)
+	}
+	if d.w.Snap == nil || !d.w.Snap.Bulk {
+		return tasks
+	}
+	snap := d.w.Snap
+	var missing []int32
+	for _, i := range d.rows() {
+		if snap.Peek(int(i)) == nil {
+			missing = append(missing, i)
+		}
+	}
+	if len(missing) == 0 {
+		return tasks
+	}
+	return append(tasks, d.work(kit.Work{Name: "working out rows", Run: func(ctx context.Context) (kit.Result, error) {
+		for _, i := range missing {
+			snap.Row(int(i))
+		}
+		return nil, nil
+	}}))
+}
+
+// work makes the task of a screen's own work.
+func (d *Desk) work(j kit.Work) Task {
+	d.works++
+	screen := d.up().Title()
+	return Task{j.Name, func() any {
+		r, err := j.Run(context.Background())
+		if err != nil {
+			return brought{screen, kit.Failed{Name: j.Name, Err: err}}
+		}
+		return brought{screen, r}
+	}}
+}
+
+// find filters and orders.
+func (d *Desk) find(j kit.Find) []Task {
+	f, err := roster.ParseFilter(j.Filter)
+	if err != nil {
+		d.say(err.Error(), true)
+		return nil
+	}
+	d.filter, d.w.Filter, d.w.Sort = f, j.Filter, j.Sort
+	return d.ask(nil)
+}
+
+// add takes a target into the list.
+func (d *Desk) add(e roster.Entry) Task {
+	d.works++
+	r := d.src.Roster
+	return Task{"adding " + e.Target.Name, func() any { return added{r.With(e), r.Len()} }}
+}
+
+// clip sends text to the clipboard.
+func (d *Desk) clip(text string) Task {
+	send := d.src.Copy
+	return Task{"copying", func() any {
+		if send == nil {
+			return kit.Say{Text: "no clipboard here: copy the lines by hand"}
+		}
+		where, err := send(text)
+		if err != nil {
+			return kit.Say{Text: "not sent to the clipboard (" + err.Error() + "): copy the lines by hand"}
+		}
+		return kit.Say{Text: "sent to " + where + "; no answer comes back, so look before you rely on it"}
+	}}
+}
+
+// step shows another moment.
+func (d *Desk) step(j kit.Step) []Task {
+	t := d.w.Shown.Add(j.By).AddDate(0, 0, j.Nights)
+	if j.Nights == 0 {
+		t = t.Truncate(time.Minute)
+		if j.By < 0 && !t.Before(d.w.Shown) {
+			t = t.Add(j.By)
+		}
+	}
+	if _, err := timescale.AtDUT1(t, d.src.Site.DUT1); err != nil {
+		d.say(err.Error(), true)
+		return nil
+	}
+	d.w.Shown, d.w.Live = t, false
+	return d.ask(nil)
+}
+
+// Tick tells the desk the time of the clock, about once a second.
+func (d *Desk) Tick(now time.Time) []Task {
+	d.w.Wall = now
+	if !d.w.Live {
+		return nil
+	}
+	d.w.Shown = now
+	if d.src.Fixed || d.src.Every <= 0 || d.cancel != nil || now.Sub(d.askedAt) < d.src.Every {
+		return nil
+	}
+	keep := []int32(nil)
+	if d.w.Snap != nil {
+		keep = d.w.Snap.Order
+	}
+	if d.idle() && len(d.screens) == 1 && !d.up().Typing() && d.w.Snap != nil && d.w.Snap.Stale {
+		keep = nil
+	}
+	return d.ask(keep)
+}
+
+// state writes what the list is like, for the status line.
+func (d *Desk) state(p *kit.Pen) {
+	if d.w.Filter != "" && d.w.Snap != nil {
+		p.Put(kit.Warn, "filter ").Put(kit.Text, d.w.Filter).Put(kit.Dim, fmt.Sprintf("  %d of %d   ", len(d.w.Snap.Order), d.w.Snap.Total))
+	}
+	if !d.w.Sort.Plain() {
+		p.Put(kit.Warn, "order ").Put(kit.Text, d.w.Sort.Key)
+		if d.w.Sort.Reverse {
+			p.Put(kit.Text, " reversed")
+		}
+		p.Put(kit.Dim, "   ")
+	}
+	if d.w.Snap != nil && d.w.Snap.Stale {
+		p.Put(kit.Dim, "order of "+d.w.OrderAt.Format("15:04")+", r for a new one   ")
+	}
+	if d.works > 0 || d.cancel != nil && d.w.Snap == nil {
+		p.Put(kit.Dim, "working ...")
+	}
+}

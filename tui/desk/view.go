@@ -1,0 +1,57 @@
+package desk
+
+import (
+	"fmt"
+	"strings"
+
+	"evenfall/tui/kit"
+)
+
+// The least size that anything can be read in.
+const (
+	leastWidth  = 40
+	leastHeight = 10
+)
+
+// View draws the whole screen: exactly its height of lines, none wider than
+// it.
+func (d *Desk) View() string {
+	w := &d.w
+	if w.Width < leastWidth || w.Height < leastHeight {
+		p := kit.NewPen(w.Look, w.Width)
+		if w.Height > 0 {
+			p.Put(kit.Text, fmt.Sprintf("too small: %d x %d", w.Width, w.Height)).Line()
+		}
+		return p.Fill(w.Height).String()
+	}
+	s := d.up()
+	body := s.View(w, w.Width, w.Body())
+	p := kit.NewPen(w.Look, w.Width)
+	d.status(s, p)
+	p.Line()
+	p.Put(kit.Dim, kit.Footer(s.Title())).Line()
+	var b strings.Builder
+	b.Grow(len(body) + 256)
+	b.WriteString(body)
+	b.WriteByte('\n')
+	b.WriteString(p.String())
+	return b.String()
+}
+
+// status writes the line above the footer: a question, a line being typed, a
+// message, or what the list is like.
+func (d *Desk) status(s kit.Screen, p *kit.Pen) {
+	switch {
+	case d.asking:
+		p.Put(kit.Warn, "something is half typed: leave all the same? y leaves, any other key stays")
+	case s.Prompt(&d.w, p):
+	case d.message != "" && d.bad:
+		const dismiss = "  esc"
+		text := "! " + d.message
+		p.Put(kit.Bad, kit.Cut(text, p.Width()-len(dismiss))).Put(kit.Dim, dismiss)
+	case d.message != "":
+		p.Put(kit.Good, d.message)
+	default:
+		d.state(p)
+	}
+}

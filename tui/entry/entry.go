@@ -1,0 +1,247 @@
+// Package entry is the screen on which a new target is typed or pasted. It
+// checks what is typed as a list is checked, says where the star would stand,
+// and keeps what is half typed until it is used or emptied.
+package entry
+
+import (
+	"context"
+	"fmt"
+	"strings"
+
+	"evenfall/targets"
+	"evenfall/targets/moment"
+	"evenfall/targets/roster"
+	"evenfall/targets/table"
+	"evenfall/tui/kit"
+)
+
+// The fields, in the order in which they are typed.
+const (
+	name = iota
+	position
+	kind
+	mag
+	motion
+	epoch
+	count
+)
+
+var labels = [count]struct{ word, hint string }{
+	{"name", "or paste a whole line: name, position, V=12.3, pm +12 -30"},
+	{"position", "ICRS: 05 34 31.9 +22 00 52 or degrees 83.633 +22.015"},
+	{"kind", "giant lpv postagb pn wd interacting standard other"},
+	{"magnitude", "V 12.3, or G 15.2"},
+	{"motion", "mas/yr in RA (with cos dec) and dec: +12.3 -45"},
+	{"epoch", "year of the position: 2000 unless given"},
+}
+
+// Screen is the form.
+type Screen struct {
+	fields [count]kit.Field
+	at     int
+	look   *Look // where it would stand; of what was typed when asked
+	asked  table.Typed
+}
+
+// Look is where a target as typed would stand.
+type Look struct {
+	typed  table.Typed
+	moment moment.Moment
+	stage  string
+}
+
+// New returns an empty form.
+func New() Screen { return Screen{} }
+
+// Title names it.
+func (s Screen) Title() string { return kit.OnEntry }
+
+// Typing is always the case here.
+func (s Screen) Typing() bool { return true }
+
+// HalfTyped tells whether anything is typed.
+func (s Screen) HalfTyped() bool { return s.typed() != table.Typed{} }
+
+func (s Screen) typed() table.Typed {
+	f := func(i int) string { return s.fields[i].String() }
+	return table.Typed{Name: f(name), Position: f(position), Kind: f(kind), Mag: f(mag), Motion: f(motion), Epoch: f(epoch)}
+}
+
+// Key obeys a key.
+func (s Screen) Key(w *kit.World, press string) (kit.Screen, kit.Job) {
+	switch kit.Lookup(kit.OnEntry, press) {
+	case kit.Back:
+		return s, kit.Close{}
+	case kit.NextField:
+		if press == "enter" && s.at == count-1 {
+			return s.finish(w)
+		}
+		s.at = (s.at + 1) % count
+		return s, nil
+	case kit.PriorField:
+		s.at = (s.at + count - 1) % count
+		return s, nil
+	}
+	field, ok := s.fields[s.at].Press(press)
+	if ok {
+		s.fields[s.at] = field
+	}
+	return s, nil
+}
+
+// Paste puts text into the field; a whole line is taken apart.
+func (s Screen) Paste(w *kit.World, text string) (kit.Screen, kit.Job) {
+	y, whole := table.FromPaste(text)
+	if !whole || s.at != name && y.Name == "" {
+		s.fields[s.at] = s.fields[s.at].Insert(text)
+		return s, nil
+	}
+	for i, v := range [...]string{y.Name, y.Position, y.Kind, y.Mag, y.Motion, y.Epoch} {
+		if v != "" {
+			s.fields[i] = kit.NewField(v)
+		}
+	}
+	return s, kit.Say{Text: "taken apart; check the fields, enter on the last one adds the target"}
+}
+
+// finish adds the target, or goes to the first field that is wrong.
+func (s Screen) finish(w *kit.World) (kit.Screen, kit.Job) {
+	t, problems := s.typed().Target()
+	for _, p := range problems {
+		if !p.Warning {
+			s.at = fieldOf(p.Field)
+			return s, kit.Say{Text: p.Field + ": " + p.Text, Bad: true}
+		}
+	}
+	if w.Snap != nil {
+		for i := range w.Snap.Roster.Len() {
+			if targets.Key(w.Snap.Roster.Entry(i).Target.Name) == targets.Key(t.Name) {
+				s.at = name
+				return s, kit.Say{Text: "name: " + t.Name + " is in the list already; give this one another name", Bad: true}
+			}
+		}
+	}
+	e := roster.Entry{Target: t, Want: moment.Want{Band: w.Band, Level: w.Level, Weight: 1}, Session: true}
+	return New(), kit.All{kit.Add{Entry: e}, kit.Close{}}
+}
+
+// fieldOf returns the field that a problem is about.
+func fieldOf(column string) int {
+	switch column {
+	case "position":
+		return position
+	case "kind":
+		return kind
+	case "motion":
+		return motion
+	case "epoch":
+		return epoch
+	case "name", "":
+		return name
+	}
+	return mag
+}
+
+// Refresh asks where the target would stand as soon as it can be used.
+func (s Screen) Refresh(w *kit.World) (kit.Screen, kit.Job) {
+	y := s.typed()
+	if w.Snap == nil || y == s.asked {
+		return s, nil
+	}
+	s.asked = y
+	t, problems := y.Target()
+	for _, p := range problems {
+		if !p.Warning {
+			s.look = nil
+			return s, nil
+		}
+	}
+	sc := w.Snap.Scene
+	r := roster.New([]roster.Entry{{Target: t, Want: moment.Want{Band: w.Band, Level: w.Level, Weight: 1}}}, moment.NewModels(), nil)
+	return s, kit.Work{Name: "placing it", Run: func(context.Context) (kit.Result, error) {
+		m := r.Moment(&sc, 0)
+		return &Look{y, m, kit.StageWord(&m.Stage)}, nil
+	}}
+}
+
+// Apply takes where it would stand.
+func (s Screen) Apply(_ *kit.World, r kit.Result) kit.Screen {
+	if l, ok := r.(*Look); ok && l.typed == s.typed() {
+		s.look = l
+	}
+	return s
+}
+
+// Prompt has nothing to say.
+func (s Screen) Prompt(*kit.World, *kit.Pen) bool { return false }
+
+// View draws the form and what is wrong with it.
+func (s Screen) View(w *kit.World, width, height int) string {
+	p := kit.NewPen(w.Look, width)
+	header := 2
+	if height < 12 {
+		header = 1
+	}
+	kit.Header(w, p, header)
+	if height >= 16 {
+		p.Line().Put(kit.Title, "a new target, kept for this session").Line().Line()
+	}
+	for i := range labels {
+		cursor := "  "
+		if i == s.at {
+			cursor = "> "
+		}
+		p.Put(kit.Selected, cursor).Put(kit.Dim, labels[i].word).To(13)
+		s.fields[i].Show(p, i == s.at)
+		if s.fields[i].String() == "" {
+			p.Put(kit.Dim, "  "+labels[i].hint)
+		}
+		p.Line()
+	}
+	if height >= 16 {
+		p.Line()
+	}
+	s.judgement(p, height)
+	p.Fill(height)
+	return p.String()
+}
+
+// judgement says what is wrong, else where the star would stand.
+func (s Screen) judgement(p *kit.Pen, height int) {
+	say := func(r kit.Role, text string) {
+		for _, line := range kit.Wrap(text, p.Width(), 2) {
+			if p.Lines() < height {
+				p.Put(r, line).Line()
+			}
+		}
+	}
+	if !s.HalfTyped() {
+		say(kit.Dim, "name and position are needed, the rest sharpens what can be said")
+		return
+	}
+	t, problems := s.typed().Target()
+	ready := true
+	for _, pr := range problems {
+		ready = ready && pr.Warning
+		if s.fields[fieldOf(pr.Field)].String() != "" || pr.Warning {
+			say(kit.Warn, "! "+pr.Field+": "+pr.Text)
+		}
+	}
+	if !ready {
+		return
+	}
+	say(kit.Text, "ICRS "+t.Place.RA.HMS(2)+" "+t.Place.Dec.DMS(1)+fmt.Sprintf("  (%.5f %+.5f deg)", t.Place.RA.Deg(), t.Place.Dec.Deg()))
+	if s.look != nil && s.look.typed == s.typed() {
+		m := &s.look.moment
+		text := strings.Join(strings.Fields(s.look.stage), " ") + " %; "
+		if m.InCan {
+			text += fmt.Sprintf("now at altitude %.0f%s, X %.2f, left %s, %.0f deg from the Moon", m.Apparent.Deg(), kit.Sense(m.Rising), float64(m.Airmass), kit.Left(m.Left), m.MoonSep.Deg())
+		} else {
+			text += kit.BlockedWord(m)
+		}
+		say(kit.Good, text)
+	}
+	if s.at == count-1 {
+		say(kit.Key, "enter adds it to the list")
+	}
+}

@@ -1,0 +1,123 @@
+// Package help is the screen of keys and signs. The keys come from the one
+// table that makes the handlers too.
+package help
+
+import (
+	"evenfall/tui/kit"
+)
+
+// Screen is the help for one screen.
+type Screen struct {
+	of      string // the screen it is about
+	message string // the last message in full
+	top     int
+}
+
+// New returns the help for a screen.
+func New(of, message string) Screen { return Screen{of: of, message: message} }
+
+// Title names it.
+func (s Screen) Title() string { return kit.OnHelp }
+
+// Typing is never the case here.
+func (s Screen) Typing() bool { return false }
+
+// Apply takes nothing.
+func (s Screen) Apply(*kit.World, kit.Result) kit.Screen { return s }
+
+// Prompt has nothing to say.
+func (s Screen) Prompt(*kit.World, *kit.Pen) bool { return false }
+
+// Key scrolls.
+func (s Screen) Key(w *kit.World, press string) (kit.Screen, kit.Job) {
+	page := max(w.Body()/2, 1)
+	switch kit.Lookup(kit.OnHelp, press) {
+	case kit.Down:
+		s.top++
+	case kit.Up:
+		s.top--
+	case kit.HalfDown:
+		s.top += page
+	case kit.HalfUp:
+		s.top -= page
+	case kit.First:
+		s.top = 0
+	case kit.Last:
+		s.top = 1 << 20
+	}
+	s.top = max(min(s.top, len(s.text(w.Width))-w.Body()), 0)
+	return s, nil
+}
+
+// line is one line of the text.
+type line struct {
+	key, text string
+	head      bool
+}
+
+// signs says what the signs of the screens mean.
+var signs = []string{
+	"> the selected star   * marked   # place in the order of what to take next, - cannot be taken now",
+	"~ beside the place: possible, but outside the wished-for limits",
+	"what %: likeliest stage of its life and its probability; undec: none reaches 60 %",
+	"expected: band, magnitude and 80 % interval, brighter end first; any: the phase is not known; /sq\": per square arcsec",
+	"alt: refracted, degrees, + rising - sinking   X: airmass   best, X: when it is lowest tonight, UTC   left: until the window ends",
+	"Mn: degrees from the Moon",
+	"night strip: s Sun up, c civil, n nautical, a astronomical twilight, . dark, m dark with the Moon up, | the moment shown, figures: hours UTC",
+	"star: = should, - can be taken, b best; the curve is its airmass, 1 at the top",
+	"filter: words that must occur, and conditions such as kind=wd alt>35 x<1.5 V<16 stage=TPAGB moon>60 left>90 mark=yes; = != < <= > >=",
+	"  columns: kind stage ends mark alt x moon sun ha ra dec mag sb left best bestx period, and bands of magnitudes",
+	"NOT NOW: the moment shown is one of your own; n goes back to the clock",
+	"over a slow link: ssh -C makes four in five bytes unnecessary; tmux keeps the program when the link drops",
+	"Caution: the program moves no telescope. Pointing limits, the Sun and the safety of people and instruments are the observatory's; its rules come first.",
+}
+
+func (s Screen) text(width int) []line {
+	var out []line
+	if s.message != "" {
+		out = append(out, line{text: "the last message", head: true})
+		for _, t := range kit.Wrap(s.message, width-2, 2) {
+			out = append(out, line{text: "  " + t})
+		}
+	}
+	out = append(out, line{text: "keys on the screen " + s.of, head: true})
+	for _, b := range kit.KeysOn(s.of) {
+		for i, t := range kit.Wrap(b.Long, width-24, 0) {
+			l := line{text: t}
+			if i == 0 {
+				l.key = b.Show
+			}
+			out = append(out, l)
+		}
+	}
+	if s.of == kit.OnNext {
+		out = append(out, line{key: "in the filter", text: "enter, esc: done   ctrl+u: empty it"})
+	}
+	out = append(out, line{text: "signs", head: true})
+	for _, sign := range signs {
+		for _, t := range kit.Wrap(sign, width-2, 2) {
+			out = append(out, line{text: "  " + t})
+		}
+	}
+	return out
+}
+
+// View draws the help.
+func (s Screen) View(w *kit.World, width, height int) string {
+	p := kit.NewPen(w.Look, width)
+	text := s.text(width)
+	top := max(min(s.top, len(text)-height), 0)
+	for _, l := range text[top:min(top+height, len(text))] {
+		switch {
+		case l.head:
+			p.Put(kit.Title, l.text)
+		case l.key != "" || len(l.text) > 0 && l.text[0] != ' ':
+			p.Put(kit.Key, "  "+l.key).To(23).Put(kit.Text, l.text)
+		default:
+			p.Put(kit.Text, l.text)
+		}
+		p.Line()
+	}
+	p.Fill(height)
+	return p.String()
+}

@@ -1,0 +1,121 @@
+package kit
+
+import (
+	"fmt"
+	"strings"
+	"time"
+
+	"evenfall/astro"
+	"evenfall/targets/moment"
+)
+
+// Header draws the lines above a screen: what run this is, the time and
+// whether it is the clock's, and where there is room the night as a strip and
+// the state of the sky.
+func Header(w *World, p *Pen, lines int) {
+	if lines <= 0 {
+		return
+	}
+	if lines >= 2 {
+		titleLine(w, p)
+	}
+	clockLine(w, p)
+	if lines >= 3 {
+		if w.Snap != nil {
+			Strip(p, w.Snap.Scene.Night, w.Snap.Scene.Instant)
+		}
+		p.Line()
+	}
+	if lines >= 4 {
+		if w.Snap != nil {
+			skyLine(w, p)
+		}
+		p.Line()
+	}
+}
+
+func titleLine(w *World, p *Pen) {
+	p.Put(Title, "evenfall")
+	if w.Demo {
+		p.Put(Warn, "  DEMONSTRATION")
+	}
+	p.Put(Text, "  "+w.Site.Name)
+	if w.Snap != nil {
+		p.Put(Dim, "  night of "+w.Snap.Scene.Night.Date.String())
+	}
+	p.Line()
+}
+
+// clockLine is the one line that changes each second.
+func clockLine(w *World, p *Pen) {
+	t := w.Shown
+	if !w.Live {
+		p.Put(Warn, "NOT NOW ")
+	}
+	p.Put(Title, t.Format("Mon 2 Jan 15:04:05")).Put(Text, " UTC")
+	if w.Zone != nil && w.Zone != time.UTC {
+		p.Put(Text, t.In(w.Zone).Format("  15:04 local"))
+	}
+	if w.Snap != nil {
+		sc := &w.Snap.Scene
+		past := t.Sub(sc.Instant.UTC()).Hours() * 1.00273790935
+		p.Put(Text, "  LST "+strings.Replace(astro.Hours(sc.Frame.LST.Hours() + past).Turn().HMS(0)[:5], " ", "h", 1))
+	}
+	switch {
+	case w.Live && w.Fixed:
+		p.Put(Warn, "  clock stopped by --at")
+	case w.Live:
+		p.Put(Good, "  live")
+	default:
+		p.Put(Dim, "  n: back to "+w.Wall.Format("2 Jan 15:04"))
+	}
+	p.Line()
+}
+
+// skyLine says what part of the night it is, until when it is dark, and where
+// Sun and Moon are.
+func skyLine(w *World, p *Pen) {
+	sc := &w.Snap.Scene
+	p.Put(Text, partWords(sc)+"  Sun "+fmt.Sprintf("%+.0f", sc.Sun.Place.Alt.Deg()))
+	m := &sc.Moon
+	p.Put(Text, fmt.Sprintf("  Moon %.0f %% lit, alt %+.0f", 100*sc.Phase.Illuminated, m.Place.Alt.Deg()))
+	n := sc.Night
+	if set := following(n.Moonset, sc.Instant); m.Place.Alt.Deg() > 0 && set != nil {
+		p.Put(Text, ", sets "+Clock(*set))
+	} else if rise := following(n.Moonrise, sc.Instant); m.Place.Alt.Deg() <= 0 && rise != nil {
+		p.Put(Text, ", rises "+Clock(*rise))
+	}
+}
+
+func following(list []astro.Instant, at astro.Instant) *astro.Instant {
+	for i := range list {
+		if at.Before(list[i]) {
+			return &list[i]
+		}
+	}
+	return nil
+}
+
+// partWords names the part of the night and its next change.
+func partWords(sc *moment.Scene) string {
+	n, at := sc.Night, sc.Instant
+	for _, s := range n.Ast.Below {
+		switch {
+		case s.Contains(at):
+			return "dark until " + Clock(s.Until) + " (" + Left(s.Until.Sub(at)) + ")"
+		case at.Before(s.From):
+			return sc.Part + ", dark from " + Clock(s.From)
+		}
+	}
+	if len(n.Ast.Below) == 0 {
+		return sc.Part + ", no full darkness tonight"
+	}
+	return sc.Part + ", sunrise " + clockOf(n.Sunrise)
+}
+
+func clockOf(t *astro.Instant) string {
+	if t == nil {
+		return "-"
+	}
+	return Clock(*t)
+}

@@ -1,0 +1,204 @@
+package kit
+
+import (
+	"slices"
+	"strings"
+)
+
+// Action is what a key does.
+type Action string
+
+// The actions.
+const (
+	Down        Action = "down"
+	Up          Action = "up"
+	HalfDown    Action = "half a page down"
+	HalfUp      Action = "half a page up"
+	First       Action = "first"
+	Last        Action = "last"
+	OpenStar    Action = "open"
+	FilterList  Action = "filter"
+	SortList    Action = "sort"
+	ReverseSort Action = "reverse"
+	MarkStar    Action = "mark"
+	AddStar     Action = "add"
+	CopyLines   Action = "copy"
+	RankAnew    Action = "rank"
+	NextStar    Action = "next star"
+	PriorStar   Action = "prior star"
+	MinuteLess  Action = "minute less"
+	MinuteMore  Action = "minute more"
+	TenLess     Action = "ten minutes less"
+	TenMore     Action = "ten minutes more"
+	HourLess    Action = "hour less"
+	HourMore    Action = "hour more"
+	NightLess   Action = "night before"
+	NightMore   Action = "night after"
+	BackToNow   Action = "now"
+	ChangeTheme Action = "theme"
+	ShowHelp    Action = "help"
+	Back        Action = "back"
+	Leave       Action = "leave"
+	NextField   Action = "next field"
+	PriorField  Action = "prior field"
+	EmptyField  Action = "empty field"
+	Finish      Action = "finish"
+)
+
+// Binding is one row of the table of keys: it makes the handler, the footer,
+// the help screen and the table in README.
+type Binding struct {
+	Do    Action
+	Press []string // as the terminal names them
+	Show  string   // as people write them
+	Short string   // for the footer; "" not there
+	Long  string   // for help and README
+	On    []string // screens; nil: everywhere but in fields
+}
+
+// The screens by name.
+const (
+	OnNext  = "next"
+	OnStar  = "star"
+	OnEntry = "new target"
+	OnCopy  = "copy"
+	OnHelp  = "help"
+	OnField = "filter" // a line being typed
+	OnSort  = "sort"
+)
+
+var lists = []string{OnNext, OnStar, OnHelp, OnCopy}
+
+// Bindings is the table of keys. Every movement has a letter; no key needs
+// ctrl, alt or a function key, and none that ends an arrow's code (A to D, H,
+// F, O) changes anything.
+var Bindings = []Binding{
+	{Down, []string{"j", "down"}, "j, down", "", "one line down", lists},
+	{Up, []string{"k", "up"}, "k, up", "", "one line up", lists},
+	{HalfDown, []string{"d", "pgdown", " ", "space"}, "d, space, page down", "", "half a page down", lists},
+	{HalfUp, []string{"u", "pgup"}, "u, page up", "", "half a page up", lists},
+	{First, []string{"g", "home"}, "g, home", "", "to the first line", lists},
+	{Last, []string{"G", "end"}, "G, end", "", "to the last line", lists},
+	{OpenStar, []string{"enter"}, "enter", "star", "look at the selected star closely", []string{OnNext}},
+	{FilterList, []string{"/"}, "/", "filter", "filter by words and conditions: lep kind=wd alt>35 V<16 stage=TPAGB", []string{OnNext}},
+	{SortList, []string{"s"}, "s", "sort", "order by a column, named by a letter", []string{OnNext}},
+	{ReverseSort, []string{"S"}, "S", "", "reverse the order", []string{OnNext}},
+	{RankAnew, []string{"r"}, "r", "", "put the list into the order that holds now; it waits while you type", []string{OnNext}},
+	{MarkStar, []string{"m"}, "m", "mark", "mark or unmark the star; / mark=yes lists the marked", []string{OnNext, OnStar}},
+	{AddStar, []string{"a"}, "a", "add", "type or paste a new target", []string{OnNext, OnStar}},
+	{CopyLines, []string{"c"}, "c", "copy", "send the hand-over lines to the clipboard and show them plainly", []string{OnNext, OnStar}},
+	{NextStar, []string{"."}, ".", ". , stars", "the next star of the list", []string{OnStar}},
+	{PriorStar, []string{","}, ",", "", "the star before", []string{OnStar}},
+	{TenLess, []string{"["}, "[", "[ ] time", "10 minutes earlier; the time shown is then one of your own", []string{OnNext, OnStar}},
+	{TenMore, []string{"]"}, "]", "", "10 minutes later", []string{OnNext, OnStar}},
+	{MinuteLess, []string{"-"}, "-", "", "1 minute earlier", []string{OnNext, OnStar}},
+	{MinuteMore, []string{"+", "="}, "+", "", "1 minute later", []string{OnNext, OnStar}},
+	{HourLess, []string{"{"}, "{", "", "1 hour earlier", []string{OnNext, OnStar}},
+	{HourMore, []string{"}"}, "}", "", "1 hour later", []string{OnNext, OnStar}},
+	{NightLess, []string{"<"}, "<", "", "the night before, same time", []string{OnNext, OnStar}},
+	{NightMore, []string{">"}, ">", "", "the night after, same time", []string{OnNext, OnStar}},
+	{BackToNow, []string{"n"}, "n", "", "back to now, and on with the clock", []string{OnNext, OnStar}},
+	{ChangeTheme, []string{"v"}, "v", "", "theme: dark, red for night vision, plain", []string{OnNext, OnStar, OnHelp, OnCopy}},
+	{ShowHelp, []string{"?"}, "?", "help", "the keys and signs of this screen", []string{OnNext, OnStar, OnCopy}},
+	{Back, []string{"esc", "backspace"}, "esc", "", "dismiss a message, else back; nothing typed is lost", lists},
+	{Leave, []string{"q"}, "q", "leave", "leave this screen, from the list the program; asks once (y) if something is half typed", lists},
+
+	{NextField, []string{"enter", "down", "tab"}, "enter, tab, down", "next field", "the next field", []string{OnEntry}},
+	{PriorField, []string{"up", "shift+tab"}, "up", "", "the field before", []string{OnEntry}},
+	{EmptyField, []string{"ctrl+u"}, "ctrl+u", "", "empty the field", []string{OnEntry, OnField}},
+	{Finish, []string{"enter"}, "enter", "", "in a filter: done; on the last field of a new target: add it", []string{OnField}},
+	{Back, []string{"esc"}, "esc", "back, kept", "back to the list; what is typed stays for when you return", []string{OnEntry, OnField, OnSort}},
+}
+
+// Lookup returns what a key does on a screen; "": nothing.
+func Lookup(screen, press string) Action {
+	for i := range Bindings {
+		b := &Bindings[i]
+		if slices.Contains(b.On, screen) && slices.Contains(b.Press, press) {
+			return b.Do
+		}
+	}
+	return ""
+}
+
+// KeysOn lists the bindings of a screen.
+func KeysOn(screen string) []Binding {
+	var out []Binding
+	for _, b := range Bindings {
+		if slices.Contains(b.On, screen) {
+			out = append(out, b)
+		}
+	}
+	return out
+}
+
+// Footer writes the keys of a screen that are worth a place on its last line.
+func Footer(screen string) string {
+	if s, ok := footers[screen]; ok {
+		return s
+	}
+	return ""
+}
+
+var footers = func() map[string]string {
+	out := map[string]string{}
+	for _, screen := range []string{OnNext, OnStar, OnEntry, OnCopy, OnHelp, OnField, OnSort} {
+		var parts []string
+		for _, b := range KeysOn(screen) {
+			switch {
+			case b.Short == "":
+			case strings.HasPrefix(b.Short, b.Show+" "):
+				parts = append(parts, b.Short)
+			default:
+				show, _, _ := strings.Cut(b.Show, ",")
+				parts = append(parts, show+" "+b.Short)
+			}
+		}
+		out[screen] = strings.Join(parts, "  ")
+	}
+	out[OnSort] = SortLetters(6)
+	return out
+}()
+
+// KeyTable writes the table of keys in Markdown, for README.
+func KeyTable() string {
+	var b strings.Builder
+	b.WriteString("| key | on | what it does |\n|---|---|---|\n")
+	for _, k := range Bindings {
+		keys := "`" + strings.ReplaceAll(k.Show, ", ", "` `") + "`"
+		b.WriteString("| " + keys + " | " + strings.Join(k.On, ", ") + " | " + k.Long + " |\n")
+	}
+	return b.String()
+}
+
+// sortLetters names the letter and the heading of each order.
+var sortLetters = []struct{ letter, key, word string }{
+	{"t", "next", "take next"}, {"n", "name", "name"}, {"k", "kind", "kind"}, {"e", "stage", "stage"}, {"m", "mag", "mag"},
+	{"a", "alt", "alt"}, {"x", "x", "X"}, {"b", "best", "best"}, {"y", "bestx", "X then"}, {"l", "left", "left"},
+	{"u", "ends", "ends by"}, {"o", "moon", "Moon"}, {"r", "ra", "RA"}, {"c", "dec", "dec"}, {"p", "period", "period"}, {"i", "mark", "marked"},
+}
+
+// SortKey returns the order that a letter means; "": none.
+func SortKey(letter string) string {
+	for _, s := range sortLetters {
+		if s.letter == letter {
+			return s.key
+		}
+	}
+	return ""
+}
+
+// SortLetters writes the letters of the orders, from the n-th to the one
+// before the next line's.
+func SortLetters(from int) string {
+	const aLine = 6
+	list := sortLetters[:aLine]
+	if from >= aLine {
+		list = sortLetters[aLine:]
+	}
+	var parts []string
+	for _, s := range list {
+		parts = append(parts, s.letter+" "+s.word)
+	}
+	return strings.Join(parts, "  ")
+}

@@ -1,0 +1,148 @@
+// Package kit is what the screens share: what a screen is, the world it is
+// shown, the table of keys, looks and themes, a pen for lines, a canvas, and
+// the words for figures. It knows no Bubble Tea, touches no terminal and reads
+// no clock.
+package kit
+
+import (
+	"context"
+	"time"
+
+	"evenfall/astro"
+	"evenfall/targets"
+	"evenfall/targets/moment"
+	"evenfall/targets/roster"
+)
+
+// World is what a screen is shown: values that do not change under it.
+type World struct {
+	Look     *Look
+	Site     astro.Site
+	Title    string // of the run
+	Demo     bool
+	Zone     *time.Location
+	Wall     time.Time // what the clock says, UTC
+	Shown    time.Time // the moment shown, UTC; the same as Wall when Live
+	Live     bool      // the moment shown goes on with the clock
+	Fixed    bool      // the clock itself was stopped by --at
+	Snap     *roster.Snapshot
+	Selected int          // place in the roster; -1: none
+	Place    int          // place of the selected target in the order shown; -1: not in it
+	Marks    map[int]bool // by place in the roster
+	Filter   string       // as typed
+	Sort     roster.Sort
+	OrderAt  time.Time // when the order shown was made
+	HandOver moment.HandOver
+	Band     targets.Band
+	Level    float64
+	Width    int
+	Height   int // of the whole screen
+	Busy     string
+}
+
+// Entry returns the selected target; nil: there is none.
+func (w *World) Entry() *roster.Entry {
+	if w.Snap == nil || w.Selected < 0 || w.Selected >= w.Snap.Roster.Len() {
+		return nil
+	}
+	return w.Snap.Roster.Entry(w.Selected)
+}
+
+// Moment returns the selected target's moment where it has been worked out.
+func (w *World) Moment() *moment.Moment {
+	if w.Entry() == nil {
+		return nil
+	}
+	return w.Snap.Peek(w.Selected)
+}
+
+// Body is how many lines a screen has for itself: all but the status line and
+// the footer.
+func (w *World) Body() int { return max(w.Height-StatusLines, 0) }
+
+// StatusLines is how many lines below a screen are not its own.
+const StatusLines = 2
+
+// Screen is one screen. It is a value: Key and Apply return what it becomes.
+type Screen interface {
+	// Title names it, as in the table of keys.
+	Title() string
+	// Typing tells whether keys are text now.
+	Typing() bool
+	// Key obeys a key; a Job is what is asked of the program, or nil.
+	Key(w *World, press string) (Screen, Job)
+	// Apply takes what a Work brought back.
+	Apply(w *World, r Result) Screen
+	// View draws it into width columns and height lines.
+	View(w *World, width, height int) string
+	// Prompt is what the status line says instead of its own text; "" nothing.
+	Prompt(w *World, p *Pen) bool
+}
+
+// Paster is a screen that takes pasted text.
+type Paster interface {
+	Paste(w *World, text string) (Screen, Job)
+}
+
+// Shows is a screen that names the rows it is showing, so that those of long
+// lists are worked out.
+type Shows interface {
+	Rows(w *World) []int32
+}
+
+// Draft is a screen that may hold something half typed.
+type Draft interface{ HalfTyped() bool }
+
+// Job is what a key asks of the program beyond its own screen.
+type Job any
+
+// The jobs.
+type (
+	// All is several jobs.
+	All []Job
+	// Work is done in the background; the screen's Apply gets the result.
+	Work struct {
+		Name string
+		Run  func(ctx context.Context) (Result, error)
+	}
+	// Select moves the selection to a target.
+	Select struct{ Row int }
+	// Find filters and orders the list.
+	Find struct {
+		Filter string
+		Sort   roster.Sort
+	}
+	// Rerank puts the list into the order that holds now.
+	Rerank struct{}
+	// Toggle marks or unmarks the selected target.
+	Toggle struct{}
+	// Step changes the moment shown.
+	Step struct {
+		By     time.Duration
+		Nights int
+	}
+	// Now goes back to the clock.
+	Now struct{}
+	// Open opens a screen by its title.
+	Open struct{ Screen string }
+	// Close goes back to the screen before.
+	Close struct{}
+	// Add takes a new target into the list.
+	Add struct{ Entry roster.Entry }
+	// Copy sends text to the clipboard.
+	Copy struct{ Text string }
+	// Say puts a message on the status line.
+	Say struct {
+		Text string
+		Bad  bool // stays until dismissed
+	}
+)
+
+// Result is what a Work brings back.
+type Result any
+
+// Failed is the result of a Work that failed or broke off.
+type Failed struct {
+	Name string
+	Err  error
+}

@@ -1,0 +1,251 @@
+package next
+
+import (
+	"fmt"
+	"strings"
+
+	"evenfall/targets"
+	"evenfall/targets/light"
+	"evenfall/targets/moment"
+	"evenfall/tui/kit"
+)
+
+// reasons draws what lies below the list: the selected star, why it stands
+// where it stands, what it is, and what could spoil it.
+func reasons(w *kit.World, p *kit.Pen, lines int) {
+	if lines <= 0 {
+		return
+	}
+	from := p.Lines()
+	e := w.Entry()
+	m := w.Moment()
+	switch {
+	case e == nil:
+		p.Put(kit.Dim, counts(w)).Line()
+		return
+	case m == nil:
+		p.Put(kit.Title, e.Target.Name).Put(kit.Dim, "  working it out ...").Line()
+		return
+	}
+	p.Put(kit.Dim, counts(w)).Put(kit.Title, e.Target.Name).
+		Put(kit.Text, "  "+string(e.Target.Kind)+"  ICRS "+m.RA.HMS(2)+" "+m.Dec.DMS(1)).Put(kit.Warn, flags(w, m)).Line()
+	for _, clauses := range [][]string{why(m), whatItIs(m), brightness(m)} {
+		room := lines - (p.Lines() - from)
+		if room <= 0 {
+			return
+		}
+		if lines <= 3 {
+			p.Put(kit.Text, fitting(clauses, p.Width())).Line()
+			continue
+		}
+		for _, line := range short(strings.Join(clauses, "; "), p.Width(), room) {
+			p.Put(kit.Text, line).Line()
+		}
+	}
+	if p.Lines()-from >= lines {
+		return
+	}
+	for _, text := range append(warnings(w, m), events(w)...) {
+		for _, line := range short(text, p.Width(), lines-(p.Lines()-from)) {
+			p.Put(kit.Text, line).Line()
+		}
+	}
+}
+
+// short wraps a text onto at most two lines.
+func short(text string, width, lines int) []string {
+	if lines <= 0 || text == "" {
+		return nil
+	}
+	out := kit.Wrap(text, width, 2)
+	return out[:min(len(out), lines, 2)]
+}
+
+// fitting joins as many clauses as fit on a line, whole ones; the first
+// always.
+func fitting(clauses []string, width int) string {
+	text := clauses[0]
+	for _, c := range clauses[1:] {
+		if len(text)+2+len(c) <= width {
+			text += "; " + c
+		}
+	}
+	return kit.Cut(text, width)
+}
+
+// counts says where in the list the selection stands.
+func counts(w *kit.World) string {
+	if w.Snap == nil {
+		return ""
+	}
+	if w.Place < 0 {
+		return fmt.Sprintf("%d of %d  ", len(w.Snap.Order), w.Snap.Total)
+	}
+	return fmt.Sprintf("%d/%d  ", w.Place+1, len(w.Snap.Order))
+}
+
+// flags are the short warnings beside the name.
+func flags(w *kit.World, m *moment.Moment) string {
+	var out []string
+	e := w.Entry()
+	if e.Session {
+		out = append(out, "typed in")
+	}
+	if e.Target.Physics.CompMag.Known {
+		out = append(out, "! companion")
+	}
+	if w.Snap.Roster.Prepared(w.Selected).Drift.PerYear.Rad() > 0 {
+		out = append(out, "! place uncertain")
+	}
+	if m.Stage.Best == string(targets.Undecided) {
+		out = append(out, "! undecided")
+	}
+	if len(out) == 0 {
+		return ""
+	}
+	return "  " + strings.Join(out, "  ")
+}
+
+// why says why the star stands where it stands, the main clause first.
+func why(m *moment.Moment) []string {
+	end := fmt.Sprintf("until %s (%s)", kit.Clock(m.Window.Until), limit(m))
+	switch {
+	case !m.InCan:
+		return blocked(m)
+	case !m.InShould:
+		return []string{"Possible, not wished for: " + unwished(m), end}
+	case m.Rank == 1:
+		end = fmt.Sprintf("First: its window closes first, at %s (%s)", kit.Clock(m.Window.Until), limit(m))
+	default:
+		end = "Can wait " + end
+	}
+	return append([]string{end}, bestClause(m)...)
+}
+
+func bestClause(m *moment.Moment) []string {
+	b := m.Course.Best
+	if b == nil {
+		return nil
+	}
+	switch gap := b.Sub(m.At); {
+	case gap.Minutes() > 1:
+		return []string{fmt.Sprintf("best in %s at X %.2f", kit.Left(gap), float64(m.Course.BestAirmass))}
+	case gap.Minutes() < -1:
+		return []string{fmt.Sprintf("past its best %s ago", kit.Left(-gap))}
+	}
+	return []string{"at its best now"}
+}
+
+// limit names what ends a window, as part of a sentence.
+func limit(m *moment.Moment) string {
+	l := &m.Course.Limits
+	switch m.EndsBy {
+	case "altitude":
+		if m.InShould {
+			if wish := l.WishAltitude; moment.AltitudeOfAirmass(l.WishAirmass).Less(wish) {
+				return fmt.Sprintf("altitude %.0f", wish.Deg())
+			}
+			return fmt.Sprintf("X %.1f", l.WishAirmass)
+		}
+		return fmt.Sprintf("altitude %.0f", l.MinAltitude.Deg())
+	case "daylight":
+		return "twilight"
+	case "moon":
+		return "the Moon"
+	case "hour_angle":
+		return "the hour angle"
+	case "zenith":
+		return "the zenith"
+	case "window":
+		return "the allotted time"
+	}
+	return kit.ShortReason(m.EndsBy)
+}
+
+// unwished names the wished-for limit that a star is outside of.
+func unwished(m *moment.Moment) string {
+	l := &m.Course.Limits
+	switch {
+	case m.AirOK && float64(m.Airmass) > l.WishAirmass:
+		return fmt.Sprintf("X %.2f, wished below %.1f", float64(m.Airmass), l.WishAirmass)
+	case m.Apparent.Less(l.WishAltitude):
+		return fmt.Sprintf("altitude %.0f, wished above %.0f", m.Apparent.Deg(), l.WishAltitude.Deg())
+	}
+	return "the sky is not fully dark"
+}
+
+// blocked says what forbids the star and when that ends.
+func blocked(m *moment.Moment) []string {
+	var out []string
+	if open := m.NextOpen(); open != nil {
+		out = append(out, "Not now, from "+kit.Clock(*open)+": "+m.BlockedBy[0].Words)
+	} else {
+		out = append(out, "Not now: "+m.BlockedBy[0].Words)
+	}
+	for _, b := range m.BlockedBy[1:] {
+		out = append(out, b.Words)
+	}
+	return out
+}
+
+// whatItIs gives the likeliest stage and what speaks for it.
+func whatItIs(m *moment.Moment) []string {
+	text := strings.Join(strings.Fields(kit.StageWord(&m.Stage)), " ")
+	if strings.ContainsAny(text, "0123456789") {
+		text += " %"
+	}
+	var out []string
+	for i, e := range m.Stage.Evidence {
+		if i == 0 {
+			out = append(out, text+": "+e.What)
+		} else if i < 4 {
+			out = append(out, e.What)
+		}
+	}
+	if len(out) == 0 {
+		return []string{text}
+	}
+	return out
+}
+
+// brightness says what the expected magnitude rests on.
+func brightness(m *moment.Moment) []string {
+	f := &m.Expect
+	out := []string{"Expected " + strings.TrimSpace(kit.ExpectWord(f)) + fmt.Sprintf(" (%.0f %%)", 100*f.Level)}
+	if f.Phase != nil && f.Phase.Status == light.PhaseUnknown {
+		out = append(out, "phase unknown")
+	} else if f.Phase != nil {
+		out = append(out, fmt.Sprintf("phase %.2f +- %.2f, %s", f.Phase.Value, f.Phase.Sigma, f.Phase.Status))
+	}
+	for _, st := range f.States {
+		out = append(out, fmt.Sprintf("%s %.0f %%: %.1f", st.Name, 100*st.P, st.Mag.Mags()))
+	}
+	if f.Basis != "" {
+		out = append(out, f.Basis)
+	}
+	return out
+}
+
+// warnings are the lines that begin with a sign of their own.
+func warnings(w *kit.World, m *moment.Moment) []string {
+	var out []string
+	p := w.Snap.Roster.Prepared(w.Selected)
+	for _, line := range w.HandOver.Lines(&w.Entry().Target, m, p.Drift) {
+		if strings.HasPrefix(line, "!") {
+			out = append(out, line)
+		}
+	}
+	if c := w.Entry().Target.Conflicts; c != "" {
+		out = append(out, "! sources disagree: "+c)
+	}
+	return out
+}
+
+// events dates the next eclipse or maximum.
+func events(w *kit.World) []string {
+	var out []string
+	for _, e := range w.Snap.Roster.Prepared(w.Selected).Light.Next(w.Snap.Scene.Instant) {
+		out = append(out, fmt.Sprintf("next %s %s UTC, +- %s (%s)", e.Kind, e.At.UTC().Format("2006-01-02 15:04"), kit.Duration(e.SigmaS), e.Status))
+	}
+	return out
+}

@@ -1,0 +1,218 @@
+package star
+
+import (
+	"cmp"
+	"fmt"
+	"math"
+	"slices"
+	"strings"
+	"time"
+
+	"evenfall/astro"
+	"evenfall/targets"
+	"evenfall/targets/moment"
+	"evenfall/targets/table"
+	"evenfall/tui/kit"
+)
+
+// Detail is all that the screen shows of one star at one moment. It does not
+// change once made.
+type Detail struct {
+	Row      int
+	Name     string
+	Scene    moment.Scene
+	Moment   moment.Moment
+	HandOver []string
+	Curve    []moment.Point
+	Known    []Line
+	asked    key
+	wrapped  wrapped
+}
+
+// Line is one statement of what is known; a heading where Head is set.
+type Line struct {
+	Role kit.Role
+	Text string
+	Head bool
+}
+
+// wrapped keeps the lines as broken for a width.
+type wrapped struct {
+	width int
+	lines []Line
+}
+
+// document breaks what is known into lines of a width. Called by one
+// goroutine only, the one that draws.
+func (d *Detail) document(width int) []Line {
+	if d.wrapped.width == width && d.wrapped.lines != nil {
+		return d.wrapped.lines
+	}
+	var out []Line
+	for _, l := range d.Known {
+		if l.Head {
+			out = append(out, Line{kit.Title, l.Text, true})
+			continue
+		}
+		for _, text := range kit.Wrap(l.Text, width-2, 2) {
+			out = append(out, Line{l.Role, "  " + text, false})
+		}
+	}
+	d.wrapped = wrapped{width, out}
+	return out
+}
+
+// writer collects lines.
+type writer struct{ lines []Line }
+
+func (w *writer) head(s string) { w.lines = append(w.lines, Line{kit.Title, s, true}) }
+func (w *writer) say(format string, a ...any) {
+	w.lines = append(w.lines, Line{kit.Text, fmt.Sprintf(format, a...), false})
+}
+func (w *writer) warn(format string, a ...any) {
+	w.lines = append(w.lines, Line{kit.Warn, fmt.Sprintf(format, a...), false})
+}
+func (w *writer) dim(format string, a ...any) {
+	w.lines = append(w.lines, Line{kit.Dim, fmt.Sprintf(format, a...), false})
+}
+
+// known writes down everything known of a star, what decides first.
+func known(sc *moment.Scene, p *moment.Prepared, m *moment.Moment) ([]Line, error) {
+	var w writer
+	w.missing(m)
+	w.stage(m)
+	w.light(p, m)
+	w.night(m)
+	w.sky(m)
+	err := w.listed(&p.Target)
+	w.head("workings")
+	for _, st := range moment.Steps(sc, p, m) {
+		w.say("%s: %s", st.What, st.Result)
+		w.dim("  %s; from %s; source: %s", st.Formula, st.Inputs, st.Source)
+	}
+	return w.lines, err
+}
+
+func (w *writer) missing(m *moment.Moment) {
+	if len(m.Why) == 0 {
+		return
+	}
+	w.head("missing, and what it costs")
+	for _, why := range m.Why {
+		w.warn("- %s", why)
+	}
+}
+
+func (w *writer) stage(m *moment.Moment) {
+	w.head("what it is; the evidence with log10 of its odds")
+	type one struct {
+		code targets.Stage
+		p    float64
+	}
+	var list []one
+	for c, p := range m.Stage.P {
+		if p >= 0.005 {
+			list = append(list, one{c, p})
+		}
+	}
+	slices.SortFunc(list, func(a, b one) int {
+		return cmp.Or(cmp.Compare(b.p, a.p), strings.Compare(string(a.code), string(b.code)))
+	})
+	var parts []string
+	for _, e := range list {
+		parts = append(parts, fmt.Sprintf("%s %.0f %%", e.code, math.Min(100*e.p, 99)))
+	}
+	w.say("%s", strings.Join(parts, "  "))
+	for _, e := range m.Stage.Evidence {
+		w.say("%+.1f %s [%s]", e.Log10Odds, e.What, e.Source)
+	}
+}
+
+func (w *writer) light(p *moment.Prepared, m *moment.Moment) {
+	f := &m.Expect
+	w.head("what you will see")
+	w.say("%s  (%.0f %% interval, brighter end first)", strings.TrimSpace(kit.ExpectWord(f)), 100*f.Level)
+	if f.SB != nil {
+		w.say("surface brightness %.2f  %.2f..%.2f mag per square arcsec, in the line", f.SB.Value.MagArcsec2(), f.SB.Lo.MagArcsec2(), f.SB.Hi.MagArcsec2())
+	}
+	if f.Phase != nil && f.Phase.Status == "unknown" {
+		w.warn("phase unknown: any brightness of the cycle")
+	} else if f.Phase != nil {
+		w.say("phase %.2f +- %.2f of a cycle after maximum, %s", f.Phase.Value, f.Phase.Sigma, f.Phase.Status)
+	}
+	for _, st := range f.States {
+		w.say("%s %.0f %%: %.1f  %.1f..%.1f", st.Name, 100*st.P, st.Mag.Mags(), st.Lo.Mags(), st.Hi.Mags())
+	}
+	if f.Basis != "" {
+		w.dim("basis: %s", f.Basis)
+	}
+	for _, e := range p.Light.Next(m.At) {
+		w.say("next %s %s UTC, +- %s (%s)", e.Kind, e.At.UTC().Round(time.Second).Format("2006-01-02 15:04:05"), kit.Duration(e.SigmaS), e.Status)
+	}
+}
+
+func (w *writer) night(m *moment.Moment) {
+	w.head("tonight, UTC")
+	spans := func(list []astro.Span) string {
+		var parts []string
+		for _, s := range list {
+			parts = append(parts, kit.Clock(s.From)+"-"+kit.Clock(s.Until))
+		}
+		if len(parts) == 0 {
+			return "not tonight"
+		}
+		return strings.Join(parts, ", ")
+	}
+	w.say("can %s   should %s", spans(m.Course.Can), spans(m.Course.Should))
+	if b := m.Course.Best; b != nil {
+		w.say("best %s at X %.3f, altitude %.1f deg", kit.Clock(*b), float64(m.Course.BestAirmass), m.Course.BestAltitude.Deg())
+	}
+	if m.Course.Transit != nil {
+		w.say("transit %s", kit.Clock(*m.Course.Transit))
+	}
+	for _, b := range m.BlockedBy {
+		w.warn("not now: %s", b.Words)
+	}
+	for _, l := range m.Course.HardLimits() {
+		w.dim("%s kept %s", kit.ShortReason(l.Code), spans(l.Kept))
+	}
+}
+
+func (w *writer) sky(m *moment.Moment) {
+	w.head("in the sky at that moment")
+	w.say("altitude %.1f deg (refracted), azimuth %.1f deg (north 0, east 90), hour angle %+.2f h, parallactic angle %+.0f deg",
+		m.Apparent.Deg(), m.Place.Az.Deg(), m.Place.HourAngle.Hours(), m.Place.Parallact.Deg())
+	w.say("%.1f deg from the Moon, %.1f deg from the Sun", m.MoonSep.Deg(), m.SunSep.Deg())
+	w.say("radial-velocity correction %+.3f km/s, to be added; BJD_TDB %.5f", m.Barycentric.RVCorrectionKms, m.Barycentric.BJDTDB)
+	w.dim("place of date (true equator and equinox, geocentric; not for the telescope): %s %s", m.Place.RA.HMS(2), m.Place.Dec.DMS(1))
+}
+
+func (w *writer) listed(t *targets.Target) error {
+	list, err := table.Listed(t)
+	w.head("as listed")
+	for _, l := range list {
+		unit, mark := "", ""
+		if l.Unit != "" {
+			unit = " " + l.Unit
+		}
+		if l.Unconfirmed {
+			mark = "   unconfirmed"
+		}
+		line := fmt.Sprintf("%-15s %s%s%s", l.Column, l.Value, unit, mark)
+		if l.Unconfirmed {
+			w.warn("%s", line)
+		} else {
+			w.say("%s", line)
+		}
+	}
+	if t.Conflicts != "" {
+		w.warn("sources disagree: %s", t.Conflicts)
+	}
+	if t.Notes != "" {
+		w.say("notes: %s", t.Notes)
+	}
+	if t.Source != "" {
+		w.dim("source: %s", t.Source)
+	}
+	return err
+}

@@ -1,0 +1,135 @@
+// Package star is the screen that answers "what is it, what will I see, how
+// do I take it?": hand-over lines first, the night's course in its own lane,
+// then everything known, with unit, source and what no source bore out.
+package star
+
+import (
+	"context"
+	"time"
+
+	"evenfall/targets/moment"
+	"evenfall/tui/kit"
+)
+
+// Screen is the look at one star.
+type Screen struct {
+	detail *Detail // nil: not worked out yet
+	asked  key
+	top    int // first line shown of what is known
+}
+
+// New returns the screen, empty.
+func New() Screen { return Screen{} }
+
+// key is what a detail was made for.
+type key struct {
+	row     int
+	minute  time.Time
+	roster  any
+	started bool
+}
+
+// Title names it.
+func (s Screen) Title() string { return kit.OnStar }
+
+// Typing is never the case here.
+func (s Screen) Typing() bool { return false }
+
+// Prompt has nothing to say.
+func (s Screen) Prompt(*kit.World, *kit.Pen) bool { return false }
+
+// Key obeys a key.
+func (s Screen) Key(w *kit.World, press string) (kit.Screen, kit.Job) {
+	page := max(layoutOf(w.Width, w.Body(), s.detail).doc/2, 1)
+	switch kit.Lookup(kit.OnStar, press) {
+	case kit.Down:
+		s.top++
+	case kit.Up:
+		s.top--
+	case kit.HalfDown:
+		s.top += page
+	case kit.HalfUp:
+		s.top -= page
+	case kit.First:
+		s.top = 0
+	case kit.Last:
+		s.top = 1 << 20
+	case kit.NextStar:
+		return s.other(w, 1)
+	case kit.PriorStar:
+		return s.other(w, -1)
+	}
+	s.top = s.clamp(w.Width, w.Body())
+	return s, nil
+}
+
+// other goes to the star before or after in the list.
+func (s Screen) other(w *kit.World, by int) (kit.Screen, kit.Job) {
+	if w.Snap == nil || len(w.Snap.Order) == 0 {
+		return s, nil
+	}
+	place := w.Place + by
+	if place < 0 || place >= len(w.Snap.Order) {
+		return s, kit.Say{Text: "no more stars that way"}
+	}
+	s.top = 0
+	return s, kit.Select{Row: int(w.Snap.Order[place])}
+}
+
+func (s Screen) clamp(width, height int) int {
+	if s.detail == nil {
+		return 0
+	}
+	l := layoutOf(width, height, s.detail)
+	return max(min(s.top, len(s.detail.document(width))-l.doc), 0)
+}
+
+// Rows names the star itself.
+func (s Screen) Rows(w *kit.World) []int32 {
+	if w.Entry() == nil {
+		return nil
+	}
+	return []int32{int32(w.Selected)}
+}
+
+// Refresh asks for the detail when the star, the night or the minute is
+// another one.
+func (s Screen) Refresh(w *kit.World) (kit.Screen, kit.Job) {
+	if w.Entry() == nil {
+		return s, nil
+	}
+	sc := w.Snap.Scene
+	want := key{w.Selected, sc.Instant.UTC().Truncate(time.Minute), w.Snap.Roster, true}
+	if want == s.asked {
+		return s, nil
+	}
+	if want.row != s.asked.row {
+		s.detail = nil
+	}
+	s.asked = want
+	r, row, handOver := w.Snap.Roster, w.Selected, w.HandOver
+	return s, kit.Work{Name: "looking at " + w.Entry().Target.Name, Run: func(ctx context.Context) (kit.Result, error) {
+		m := r.Moment(&sc, row)
+		p := r.Prepared(row)
+		d := &Detail{Row: row, Name: p.Target.Name, Scene: sc, Moment: m, asked: want}
+		d.HandOver = handOver.Lines(&p.Target, &m, p.Drift)
+		d.Curve = moment.Curve(sc.Night, p, kit.Stretch(sc.Night))
+		var err error
+		d.Known, err = known(&sc, p, &m)
+		return d, err
+	}}
+}
+
+// Apply takes the detail, unless another was asked for meanwhile.
+func (s Screen) Apply(w *kit.World, r kit.Result) kit.Screen {
+	switch r := r.(type) {
+	case *Detail:
+		if r.asked == s.asked {
+			s.detail = r
+			s.top = s.clamp(w.Width, w.Body())
+		}
+	case kit.Failed:
+		s.asked = key{}
+	}
+	return s
+}

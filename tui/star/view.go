@@ -1,0 +1,238 @@
+package star
+
+import (
+	"fmt"
+	"strings"
+
+	"evenfall/astro"
+	"evenfall/targets/moment"
+	"evenfall/tui/kit"
+)
+
+// layout is how the lines are shared out.
+type layout struct{ header, curve, doc int }
+
+const (
+	labels     = 6 // columns left of the lanes
+	lanesBelow = 4 // take, sun, moon, hours
+)
+
+// layoutOf gives the drawing a third of a high screen, and none of a low one.
+func layoutOf(width, height int, d *Detail) layout {
+	l := layout{header: 2}
+	if height < 12 {
+		l.header = 1
+	}
+	rest := height - l.header
+	if d != nil {
+		rest -= len(handOver(d, width)) + 1
+	}
+	switch {
+	case height >= 46:
+		l.curve = 16
+	case height >= 34:
+		l.curve = 10
+	case height >= 20:
+		l.curve = 5
+	}
+	if l.curve > 0 {
+		rest -= l.curve + lanesBelow
+	}
+	l.doc = max(rest, 0)
+	return l
+}
+
+// handOver is the lines for the operator, broken where they are too long.
+func handOver(d *Detail, width int) []string {
+	var out []string
+	for _, line := range d.HandOver {
+		out = append(out, kit.Break(line, width, 4)...)
+	}
+	return out
+}
+
+// View draws the screen.
+func (s Screen) View(w *kit.World, width, height int) string {
+	p := kit.NewPen(w.Look, width)
+	d := s.detail
+	if d != nil && d.Row != w.Selected {
+		d = nil
+	}
+	l := layoutOf(width, height, d)
+	kit.Header(w, p, l.header)
+	switch {
+	case w.Entry() == nil:
+		p.Put(kit.Dim, "no star is selected; esc goes back to the list").Line()
+	case d == nil:
+		p.Put(kit.Title, w.Entry().Target.Name).Put(kit.Dim, "  working it out ...").Line()
+	default:
+		s.draw(w, p, l, d, height)
+	}
+	p.Fill(height)
+	return p.String()
+}
+
+func (s Screen) draw(w *kit.World, p *kit.Pen, l layout, d *Detail, height int) {
+	for i, line := range handOver(d, p.Width()) {
+		role := kit.Text
+		if i == 0 {
+			role = kit.Selected
+		} else if strings.HasPrefix(line, "!") {
+			role = kit.Warn
+		}
+		if p.Lines() < height {
+			p.Put(role, line).Line()
+		}
+	}
+	if p.Lines() < height {
+		summary(w, p, d)
+	}
+	if l.curve > 0 {
+		lanes(p, d, l.curve)
+	}
+	doc := d.document(p.Width())
+	top := s.clamp(p.Width(), height)
+	for i := top; i < min(top+l.doc, len(doc)); i++ {
+		if i == top+l.doc-1 && top+l.doc < len(doc) {
+			more := fmt.Sprintf("  j for %d more lines", len(doc)-i)
+			p.Put(doc[i].Role, kit.Cut(doc[i].Text, p.Width()-len(more)-1)).Right(kit.Key, p.Width(), more).Line()
+			return
+		}
+		p.Put(doc[i].Role, doc[i].Text).Line()
+	}
+}
+
+// summary is the line that decides.
+func summary(w *kit.World, p *kit.Pen, d *Detail) {
+	m := &d.Moment
+	if w.Marks[d.Row] {
+		p.Put(kit.Mark, "* ")
+	}
+	p.Put(kit.Good, strings.Join(strings.Fields(kit.StageWord(&m.Stage)), " ")+" %")
+	p.Put(kit.Text, "  "+strings.TrimSpace(kit.ExpectWord(&m.Expect)))
+	if !m.InCan {
+		p.Put(kit.Warn, "  "+kit.BlockedWord(m)).Line()
+		return
+	}
+	p.Put(kit.Text, fmt.Sprintf("  alt %.1f%s", m.Apparent.Deg(), kit.Sense(m.Rising)))
+	if m.AirOK {
+		p.Put(kit.Text, fmt.Sprintf(" X %.2f", float64(m.Airmass)))
+	}
+	p.Put(kit.Text, fmt.Sprintf("  left %s  Moon %.0f", kit.Left(m.Left), m.MoonSep.Deg())).Line()
+}
+
+// lowestAirmass and highestAirmass are the ends of the lane: 1 at the top.
+const (
+	lowestAirmass  = 1.0
+	highestAirmass = 3.0
+)
+
+// lanes draws the night's course: what the star costs in airmass, when it may
+// be taken, how dark it is, when the Moon is up.
+func lanes(p *kit.Pen, d *Detail, rows int) {
+	n := d.Scene.Night
+	span := kit.Stretch(n)
+	columns := max(p.Width()-labels-1, 10)
+	canvas := kit.NewCanvas(columns, rows)
+	trace(canvas, d.Curve, span, columns, rows)
+	for r := range rows {
+		value := lowestAirmass + (highestAirmass-lowestAirmass)*float64(r)/float64(rows)
+		label := fmt.Sprintf("%5.1f|", value)
+		if r == 0 {
+			label = fmt.Sprintf("X %3.1f|", value)
+		}
+		p.Put(kit.Dim, label)
+		canvas.Row(p, r)
+		p.Line()
+	}
+	p.Put(kit.Dim, " take|")
+	takeLane(p, d, span, columns)
+	p.Line()
+	p.Put(kit.Dim, "  sun|")
+	cells := kit.Cells(n, span, columns)
+	for i := range cells {
+		p.Put(cells[i].Role, string(cells[i].Sign))
+	}
+	p.Line()
+	p.Put(kit.Dim, fmt.Sprintf("%4.0f%%|", 100*d.Scene.Phase.Illuminated))
+	from := p.Used()
+	for i := range cells {
+		if cells[i].MoonUp {
+			p.To(from+i).Put(kit.Moon, "m")
+		}
+	}
+	if p.Used() == from {
+		p.Put(kit.Dim, "Moon down all night")
+	}
+	p.Line()
+	p.Put(kit.Dim, "  UTC|")
+	kit.HourLine(p, span, columns, d.Scene.Instant)
+	p.Line()
+}
+
+// trace draws the curve of airmass.
+func trace(c *kit.Canvas, curve []moment.Point, span astro.Span, columns, rows int) {
+	length := span.Length().Seconds()
+	dot := func(pt *moment.Point) (x, y int, ok bool) {
+		if !pt.AirOK || float64(pt.Airmass) > highestAirmass || length <= 0 {
+			return 0, 0, false
+		}
+		x = int(pt.At.Sub(span.From).Seconds() / length * float64(2*columns))
+		y = int((float64(pt.Airmass) - lowestAirmass) / (highestAirmass - lowestAirmass) * float64(4*rows))
+		return min(x, 2*columns-1), min(max(y, 0), 4*rows-1), true
+	}
+	px, py, was := 0, 0, false
+	for i := range curve {
+		x, y, ok := dot(&curve[i])
+		if ok && was {
+			c.Line(px, py, x, y, kit.Curve)
+		}
+		px, py, was = x, y, ok
+	}
+}
+
+// takeLane draws = where the star should and - where it merely can be taken, b
+// where it is best.
+func takeLane(p *kit.Pen, d *Detail, span astro.Span, columns int) {
+	co := &d.Moment.Course
+	from := p.Used()
+	best := -1
+	if co.Best != nil {
+		if at, ok := kit.Column(span, columns, *co.Best); ok {
+			best = at
+		}
+	}
+	lane := make([]byte, columns)
+	fill := func(list []astro.Span, sign byte) {
+		for _, s := range list {
+			a, okA := kit.Column(span, columns, s.From)
+			if !okA && s.From.Before(span.From) && s.Until.After(span.From) {
+				a, okA = 0, true
+			}
+			b, okB := kit.Column(span, columns, s.Until)
+			if !okB && s.Until.After(span.From) {
+				b, okB = columns-1, true
+			}
+			for i := a; okA && okB && i <= b; i++ {
+				lane[i] = sign
+			}
+		}
+	}
+	fill(co.Can, '-')
+	fill(co.Should, '=')
+	for i, sign := range lane {
+		switch {
+		case i == best:
+			p.To(from+i).Put(kit.Selected, "b")
+		case sign == '=':
+			p.Put(kit.Good, "=")
+		case sign == '-':
+			p.Put(kit.Text, "-")
+		default:
+			p.To(from + i + 1)
+		}
+	}
+	if len(co.Can) == 0 {
+		p.Put(kit.Dim, " not tonight")
+	}
+}
