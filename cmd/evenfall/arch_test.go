@@ -57,6 +57,7 @@ var layers = map[string][]string{
 	"tui/entry":       {"tui/kit", "targets/...", "astro/..."},
 	"tui/plain":       {"tui/kit", "targets/...", "astro/..."},
 	"tui/help":        {"tui/kit", "targets/...", "astro/..."},
+	"tui/check":       {"tui/desk", "tui/kit", "targets/...", "astro/..."},
 	"tui/desk":        {"tui/kit", "tui/next", "tui/star", "tui/entry", "tui/plain", "tui/help", "targets/...", "astro/..."},
 	"cmd/evenfall":    {"tui/...", "targets/...", "astro/..."},
 }
@@ -72,7 +73,8 @@ var fences = []struct {
 	{regexp.MustCompile(`^github\.com/soniakeys/`), []string{"astro/meeusfence"}},
 	{regexp.MustCompile(`^github\.com/charmbracelet/bubbletea`), []string{"tui", "tui/early"}},
 	{regexp.MustCompile(`^github\.com/charmbracelet/lipgloss`), []string{"tui/early", "tui/kit"}},
-	{regexp.MustCompile(`^github\.com/(charmbracelet/x/ansi|muesli/termenv)`), []string{"tui/kit"}},
+	{regexp.MustCompile(`^github\.com/(charmbracelet/x/ansi|muesli/termenv)`), []string{"tui/kit", "tui/check"}},
+	{regexp.MustCompile(`^github\.com/charmbracelet/x/vt`), []string{"tui/check"}},
 	{regexp.MustCompile(`^github\.com/aymanbagabas/`), []string{"tui/term"}},
 	{regexp.MustCompile(`^github\.com/charmbracelet/x/term`), []string{"cmd/evenfall", "tui/term"}},
 	{regexp.MustCompile(`^github\.com/spf13/`), []string{"cmd/evenfall"}},

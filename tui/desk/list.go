@@ -218,7 +218,7 @@ func (d *Desk) clip(text string) Task {
 		if err != nil {
 			return kit.Say{Text: "not sent to the clipboard (" + err.Error() + "): copy the lines by hand"}
 		}
-		return kit.Say{Text: "sent to " + where + "; no answer comes back, so look before you rely on it"}
+		return kit.Say{Text: "sent to " + where + "; nothing answers, so check before you rely on it"}
 	}}
 }
 

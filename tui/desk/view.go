@@ -29,7 +29,7 @@ func (d *Desk) View() string {
 	p := kit.NewPen(w.Look, w.Width)
 	d.status(s, p)
 	p.Line()
-	p.Put(kit.Dim, kit.Footer(s.Title())).Line()
+	p.Put(kit.Dim, kit.Footer(s.Title(), w.Width)).Line()
 	var b strings.Builder
 	b.Grow(len(body) + 256)
 	b.WriteString(body)

@@ -22,12 +22,14 @@ func (f Field) String() string { return string(f.text) }
 // Insert puts text in, as typed or pasted: control and direction characters
 // are removed, line ends become blanks.
 func (f Field) Insert(s string) Field {
-	s = table.Clean(strings.Map(func(r rune) rune {
+	s = strings.Map(func(r rune) rune {
 		if r == '\n' || r == '\r' || r == '\t' {
 			return ' '
 		}
 		return r
-	}, s))
+	}, s)
+	// cleaning trims blanks, which a field keeps
+	s = strings.Trim(table.Clean("|"+s+"|"), "|")
 	in := []rune(s)
 	text := make([]rune, 0, len(f.text)+len(in))
 	text = append(append(append(text, f.text[:f.at]...), in...), f.text[f.at:]...)

@@ -19,7 +19,7 @@ func Header(w *World, p *Pen, lines int) {
 	if lines >= 2 {
 		titleLine(w, p)
 	}
-	clockLine(w, p)
+	clockLine(w, p, lines < 4)
 	if lines >= 3 {
 		if w.Snap != nil {
 			Strip(p, w.Snap.Scene.Night, w.Snap.Scene.Instant)
@@ -46,44 +46,53 @@ func titleLine(w *World, p *Pen) {
 	p.Line()
 }
 
-// clockLine is the one line that changes each second.
-func clockLine(w *World, p *Pen) {
-	t := w.Shown
+// clockLine is the one line that changes each second: a short one where the
+// rest has a place elsewhere.
+func clockLine(w *World, p *Pen, alone bool) {
 	if !w.Live {
 		p.Put(Warn, "NOT NOW ")
 	}
-	p.Put(Title, t.Format("Mon 2 Jan 15:04:05")).Put(Text, " UTC")
-	if w.Zone != nil && w.Zone != time.UTC {
-		p.Put(Text, t.In(w.Zone).Format("  15:04 local"))
-	}
-	if w.Snap != nil {
-		sc := &w.Snap.Scene
-		past := t.Sub(sc.Instant.UTC()).Hours() * 1.00273790935
-		p.Put(Text, "  LST "+strings.Replace(astro.Hours(sc.Frame.LST.Hours() + past).Turn().HMS(0)[:5], " ", "h", 1))
-	}
+	p.Put(Title, w.Shown.Format("Mon 2 Jan 15:04:05")).Put(Text, " UTC")
 	switch {
 	case w.Live && w.Fixed:
 		p.Put(Warn, "  clock stopped by --at")
 	case w.Live:
-		p.Put(Good, "  live")
+		p.Put(Text, "  live")
 	default:
 		p.Put(Dim, "  n: back to "+w.Wall.Format("2 Jan 15:04"))
 	}
+	if alone {
+		p.Put(Text, "  "+otherClocks(w))
+	}
 	p.Line()
+}
+
+// otherClocks writes local and sidereal time, to the minute.
+func otherClocks(w *World) string {
+	text := ""
+	if w.Zone != nil && w.Zone != time.UTC {
+		text = w.Shown.In(w.Zone).Format("15:04 local  ")
+	}
+	if w.Snap == nil {
+		return text
+	}
+	sc := &w.Snap.Scene
+	past := w.Shown.Sub(sc.Instant.UTC()).Hours() * 1.00273790935
+	return text + "LST " + strings.Replace(astro.Hours(sc.Frame.LST.Hours() + past).Turn().HMS(0)[:5], " ", "h", 1)
 }
 
 // skyLine says what part of the night it is, until when it is dark, and where
 // Sun and Moon are.
 func skyLine(w *World, p *Pen) {
 	sc := &w.Snap.Scene
-	p.Put(Text, partWords(sc)+"  Sun "+fmt.Sprintf("%+.0f", sc.Sun.Place.Alt.Deg()))
+	p.Put(Text, otherClocks(w)+"  "+partWords(sc)+fmt.Sprintf("  Sun %+.0f", sc.Sun.Place.Alt.Deg()))
 	m := &sc.Moon
-	p.Put(Text, fmt.Sprintf("  Moon %.0f %% lit, alt %+.0f", 100*sc.Phase.Illuminated, m.Place.Alt.Deg()))
+	p.Put(Text, fmt.Sprintf("  Moon %.0f%% %+.0f", 100*sc.Phase.Illuminated, m.Place.Alt.Deg()))
 	n := sc.Night
 	if set := following(n.Moonset, sc.Instant); m.Place.Alt.Deg() > 0 && set != nil {
-		p.Put(Text, ", sets "+Clock(*set))
+		p.Put(Text, " sets "+Clock(*set))
 	} else if rise := following(n.Moonrise, sc.Instant); m.Place.Alt.Deg() <= 0 && rise != nil {
-		p.Put(Text, ", rises "+Clock(*rise))
+		p.Put(Text, " rises "+Clock(*rise))
 	}
 }
 
@@ -102,15 +111,20 @@ func partWords(sc *moment.Scene) string {
 	for _, s := range n.Ast.Below {
 		switch {
 		case s.Contains(at):
-			return "dark until " + Clock(s.Until) + " (" + Left(s.Until.Sub(at)) + ")"
+			return "dark till " + Clock(s.Until)
 		case at.Before(s.From):
-			return sc.Part + ", dark from " + Clock(s.From)
+			return short(sc.Part) + ", dark " + Clock(s.From)
 		}
 	}
 	if len(n.Ast.Below) == 0 {
-		return sc.Part + ", no full darkness tonight"
+		return short(sc.Part) + ", never dark tonight"
 	}
-	return sc.Part + ", sunrise " + clockOf(n.Sunrise)
+	return short(sc.Part) + ", sunrise " + clockOf(n.Sunrise)
+}
+
+// short leaves the word twilight to the reader's wits where it is long.
+func short(part string) string {
+	return strings.NewReplacer("astronomical twilight", "astro. twilight", "nautical twilight", "naut. twilight").Replace(part)
 }
 
 func clockOf(t *astro.Instant) string {

@@ -132,31 +132,36 @@ func KeysOn(screen string) []Binding {
 	return out
 }
 
-// Footer writes the keys of a screen that are worth a place on its last line.
-func Footer(screen string) string {
-	if s, ok := footers[screen]; ok {
-		return s
+// Footer writes the keys of a screen that are worth a place on its last line,
+// as many as fit; help and leaving always.
+func Footer(screen string, width int) string {
+	parts := footers[screen]
+	for n := len(parts); n > 0; n-- {
+		// the last two are help and leave where a screen has both
+		keep := min(2, n)
+		text := strings.Join(append(slices.Clone(parts[:n-keep]), parts[len(parts)-keep:]...), "  ")
+		if len(text) <= width {
+			return text
+		}
 	}
 	return ""
 }
 
-var footers = func() map[string]string {
-	out := map[string]string{}
-	for _, screen := range []string{OnNext, OnStar, OnEntry, OnCopy, OnHelp, OnField, OnSort} {
-		var parts []string
+var footers = func() map[string][]string {
+	out := map[string][]string{}
+	for _, screen := range []string{OnNext, OnStar, OnEntry, OnCopy, OnHelp, OnField} {
 		for _, b := range KeysOn(screen) {
 			switch {
 			case b.Short == "":
 			case strings.HasPrefix(b.Short, b.Show+" "):
-				parts = append(parts, b.Short)
+				out[screen] = append(out[screen], b.Short)
 			default:
 				show, _, _ := strings.Cut(b.Show, ",")
-				parts = append(parts, show+" "+b.Short)
+				out[screen] = append(out[screen], show+" "+b.Short)
 			}
 		}
-		out[screen] = strings.Join(parts, "  ")
 	}
-	out[OnSort] = SortLetters(6)
+	out[OnSort] = []string{SortLetters(1)}
 	return out
 }()
 
@@ -174,7 +179,7 @@ func KeyTable() string {
 // sortLetters names the letter and the heading of each order.
 var sortLetters = []struct{ letter, key, word string }{
 	{"t", "next", "take next"}, {"n", "name", "name"}, {"k", "kind", "kind"}, {"e", "stage", "stage"}, {"m", "mag", "mag"},
-	{"a", "alt", "alt"}, {"x", "x", "X"}, {"b", "best", "best"}, {"y", "bestx", "X then"}, {"l", "left", "left"},
+	{"a", "alt", "alt"}, {"x", "x", "X"}, {"b", "best", "best"}, {"y", "bestx", "best X"}, {"l", "left", "left"},
 	{"u", "ends", "ends by"}, {"o", "moon", "Moon"}, {"r", "ra", "RA"}, {"c", "dec", "dec"}, {"p", "period", "period"}, {"i", "mark", "marked"},
 }
 
@@ -188,13 +193,12 @@ func SortKey(letter string) string {
 	return ""
 }
 
-// SortLetters writes the letters of the orders, from the n-th to the one
-// before the next line's.
-func SortLetters(from int) string {
-	const aLine = 6
-	list := sortLetters[:aLine]
-	if from >= aLine {
-		list = sortLetters[aLine:]
+// SortLetters writes the letters of the orders, on two lines: 0 and 1.
+func SortLetters(line int) string {
+	const first = 8
+	list := sortLetters[:first]
+	if line > 0 {
+		list = sortLetters[first:]
 	}
 	var parts []string
 	for _, s := range list {

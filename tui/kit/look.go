@@ -226,3 +226,24 @@ func (s Settings) autoGlyphs() Glyphs {
 	}
 	return ASCII
 }
+
+// Numbered returns a look that colours each role with its own number of the
+// 256, so that a test can read the roles off a terminal.
+func Numbered(g Glyphs) *Look {
+	k := &Look{Theme: DarkTheme, Level: Colours256, Glyphs: g}
+	for r := range roles {
+		if r != Text {
+			k.start[r] = fmt.Sprintf("\x1b[38;5;%dm", 100+int(r))
+		}
+	}
+	return k
+}
+
+// RoleNames names the roles, for tests that read them off a terminal.
+var RoleNames = [roles]string{"text", "dim", "title", "selected", "key", "good", "warn", "bad", "civil", "nautical", "astro", "dark", "moon", "curve", "mark"}
+
+// NumberedRole returns the role that a colour of Numbered stands for.
+func NumberedRole(colour int) (Role, bool) {
+	r := Role(colour - 100)
+	return r, colour > 100 && r < roles
+}

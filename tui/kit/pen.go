@@ -99,18 +99,29 @@ func (p *Pen) String() string { return strings.TrimSuffix(p.b.String(), "\n") }
 // width counts the columns that a text takes, as Lip Gloss does: characters
 // of ambiguous width count as one.
 func width(s string) int {
+	if simple(s) {
+		return len(s)
+	}
+	return ansi.StringWidth(s)
+}
+
+// simple tells whether each byte is a character of one column.
+func simple(s string) bool {
 	for i := 0; i < len(s); i++ {
 		if s[i] >= 0x80 || s[i] < ' ' {
-			return ansi.StringWidth(s)
+			return false
 		}
 	}
-	return len(s)
+	return true
 }
 
 // Cut shortens a text to a number of columns.
 func Cut(s string, columns int) string {
 	if columns <= 0 {
 		return ""
+	}
+	if simple(s) {
+		return s[:min(len(s), columns)]
 	}
 	if width(s) <= columns {
 		return s

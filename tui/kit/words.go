@@ -121,6 +121,17 @@ func BlockedShort(m *moment.Moment) string {
 	return reason + " all night"
 }
 
+// BlockedEnd is when a block ends in ten columns.
+func BlockedEnd(m *moment.Moment) string {
+	switch open := m.NextOpen(); {
+	case open != nil:
+		return "till " + Clock(*open)
+	case len(m.Course.Can) > 0:
+		return "no more"
+	}
+	return "all night"
+}
+
 // Left writes a duration as hours and minutes.
 func Left(d time.Duration) string {
 	minutes := int(d.Round(time.Minute).Minutes())

@@ -108,9 +108,9 @@ func scroll(top, place, count, room int) int {
 	switch {
 	case place < 0:
 	case place < top:
-		top = place - room + 1 + room/4
+		top = place - room + 1 + room/6
 	case place >= top+room:
-		top = place - room/4
+		top = place - room/6
 	}
 	return max(min(top, count-room), 0)
 }

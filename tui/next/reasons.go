@@ -27,7 +27,7 @@ func reasons(w *kit.World, p *kit.Pen, lines int) {
 		p.Put(kit.Title, e.Target.Name).Put(kit.Dim, "  working it out ...").Line()
 		return
 	}
-	p.Put(kit.Dim, counts(w)).Put(kit.Title, e.Target.Name).
+	p.Put(kit.Text, counts(w)).Put(kit.Title, e.Target.Name).
 		Put(kit.Text, "  "+string(e.Target.Kind)+"  ICRS "+m.RA.HMS(2)+" "+m.Dec.DMS(1)).Put(kit.Warn, flags(w, m)).Line()
 	for _, clauses := range [][]string{why(m), whatItIs(m), brightness(m)} {
 		room := lines - (p.Lines() - from)
@@ -35,7 +35,7 @@ func reasons(w *kit.World, p *kit.Pen, lines int) {
 			return
 		}
 		if lines <= 3 {
-			p.Put(kit.Text, fitting(clauses, p.Width())).Line()
+			p.Put(kit.Text, fitting(clauses[:min(2, len(clauses))], p.Width())).Line()
 			continue
 		}
 		for _, line := range short(strings.Join(clauses, "; "), p.Width(), room) {
@@ -113,7 +113,7 @@ func why(m *moment.Moment) []string {
 	case !m.InCan:
 		return blocked(m)
 	case !m.InShould:
-		return []string{"Possible, not wished for: " + unwished(m), end}
+		return []string{"Outside the wishes (" + unwished(m) + "), possible " + end}
 	case m.Rank == 1:
 		end = fmt.Sprintf("First: its window closes first, at %s (%s)", kit.Clock(m.Window.Until), limit(m))
 	default:
@@ -167,18 +167,18 @@ func unwished(m *moment.Moment) string {
 	l := &m.Course.Limits
 	switch {
 	case m.AirOK && float64(m.Airmass) > l.WishAirmass:
-		return fmt.Sprintf("X %.2f, wished below %.1f", float64(m.Airmass), l.WishAirmass)
+		return fmt.Sprintf("X %.2f, wished %.1f", float64(m.Airmass), l.WishAirmass)
 	case m.Apparent.Less(l.WishAltitude):
-		return fmt.Sprintf("altitude %.0f, wished above %.0f", m.Apparent.Deg(), l.WishAltitude.Deg())
+		return fmt.Sprintf("altitude %.0f, wished %.0f", m.Apparent.Deg(), l.WishAltitude.Deg())
 	}
-	return "the sky is not fully dark"
+	return "not fully dark"
 }
 
 // blocked says what forbids the star and when that ends.
 func blocked(m *moment.Moment) []string {
 	var out []string
 	if open := m.NextOpen(); open != nil {
-		out = append(out, "Not now, from "+kit.Clock(*open)+": "+m.BlockedBy[0].Words)
+		out = append(out, "Not before "+kit.Clock(*open)+": "+m.BlockedBy[0].Words)
 	} else {
 		out = append(out, "Not now: "+m.BlockedBy[0].Words)
 	}

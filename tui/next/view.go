@@ -27,9 +27,9 @@ func share(w *kit.World, width, height int) layout {
 	}
 	switch {
 	case height >= 46:
-		l.header, l.heading, l.pane = 4, 1, 10
-	case height >= 34:
 		l.header, l.heading, l.pane = 4, 1, 8
+	case height >= 34:
+		l.header, l.heading, l.pane = 4, 1, 7
 	case height >= 20:
 		l.header, l.heading, l.pane = 4, 1, 3
 	case height >= 13:
@@ -52,11 +52,10 @@ const (
 
 // columns of a list, from the left.
 const (
-	nameWidth     = 13
+	nameWidth     = 12
 	stageWidth    = 8
 	expectWidth   = 18
 	narrowName    = 11
-	narrowFrom    = 40
 	withStage     = 50
 	withExpect    = 70
 	extraKind     = 11
@@ -105,11 +104,11 @@ func empty(w *kit.World, p *kit.Pen) {
 func (l layout) headings(p *kit.Pen) {
 	at := l.columns()
 	p.Put(kit.Dim, "  ").Right(kit.Dim, 2+l.rank, "#").To(at.name).Put(kit.Dim, "name")
-	l.heading1(p, at)
+	l.wideHeadings(p, at)
 	p.Line()
 }
 
-func (l layout) heading1(p *kit.Pen, at columns) {
+func (l layout) wideHeadings(p *kit.Pen, at columns) {
 	if at.stage > 0 {
 		p.To(at.stage).Put(kit.Dim, "what  %")
 	}
@@ -127,13 +126,10 @@ func (l layout) heading1(p *kit.Pen, at columns) {
 	for _, c := range []struct {
 		at   int
 		word string
-	}{{at.kind, "kind"}, {at.ends, "ends by"}, {at.place, "ICRS at the moment"}, {at.spectrum, "spectrum"}, {at.notes, "why, and notes"}} {
+	}{{at.kind, "kind"}, {at.ends, "ends by"}, {at.place, "ICRS at the moment"}, {at.spectrum, "spectrum"}, {at.period, "period d"}, {at.notes, "why, and notes"}} {
 		if c.at > 0 {
 			p.To(c.at).Put(kit.Dim, c.word)
 		}
-	}
-	if at.period > 0 {
-		p.To(at.period).Put(kit.Dim, "period d")
 	}
 }
 
@@ -148,7 +144,7 @@ type columns struct {
 func (l layout) columns() columns {
 	c := columns{name: 4 + l.rank}
 	at := c.name + nameWidth + 1
-	if l.width < withExpect {
+	if l.width < withStage {
 		at = c.name + narrowName + 1
 	}
 	c.nameTo = at - 1
@@ -158,7 +154,7 @@ func (l layout) columns() columns {
 	if l.width >= withExpect {
 		c.expect, at = at, at+expectWidth+1
 	}
-	c.alt, c.x, at = at, at+6, at+11
+	c.alt, c.x, at = at+1, at+7, at+12
 	if l.width >= withBest {
 		c.best, c.bestX, at = at, at+6, at+11
 	}
@@ -241,6 +237,9 @@ func (l layout) reason(p *kit.Pen, at columns, m *moment.Moment, role kit.Role) 
 	if len(text) > until-from {
 		text = kit.BlockedShort(m)
 	}
+	if len(text) > until-from {
+		text = kit.BlockedEnd(m)
+	}
 	p.To(from).Put(role, kit.Cut(text, until-from))
 }
 
@@ -272,7 +271,7 @@ func (l layout) extras(p *kit.Pen, at columns, e *roster.Entry, m *moment.Moment
 		p.To(at.kind).Put(role, kit.Cut(string(t.Kind), extraKind))
 	}
 	if at.ends > 0 && m.InCan {
-		p.To(at.ends).Put(role, kit.Cut(endsWord(m), extraEnds))
+		p.To(at.ends).Put(role, kit.Cut(limit(m), extraEnds))
 	}
 	if at.place > 0 {
 		p.To(at.place).Put(role, m.RA.HMS(1)+" "+m.Dec.DMS(0))
@@ -290,20 +289,6 @@ func (l layout) extras(p *kit.Pen, at columns, e *roster.Entry, m *moment.Moment
 		}
 		p.To(at.notes).Put(kit.Dim, note)
 	}
-}
-
-// endsWord names the limit that ends a window in a word.
-func endsWord(m *moment.Moment) string {
-	switch m.EndsBy {
-	case "daylight":
-		return "twilight"
-	case "altitude":
-		if m.InShould {
-			return "X or altitude"
-		}
-		return "altitude"
-	}
-	return kit.ShortReason(m.EndsBy)
 }
 
 // quick draws a row of a long list that has not been worked out in full.

@@ -151,6 +151,14 @@ func (w *writer) light(p *moment.Prepared, m *moment.Moment) {
 	}
 }
 
+// kept says of each limit that it is kept.
+var kept = map[targets.Code]string{
+	targets.CodeDaylight: "Sun low enough", targets.CodeSun: "far enough from the Sun", targets.CodeBelow: "above the horizon",
+	targets.CodeAltitude: "high enough", targets.CodeHorizon: "above the site's horizon", targets.CodeZenith: "clear of the zenith",
+	targets.CodeHourAngle: "hour angle allowed", targets.CodeDeclination: "declination allowed", targets.CodeMoon: "far enough from the Moon",
+	targets.CodeWind: "out of the wind", targets.CodeWindow: "in our hours", targets.CodeClosed: "open", targets.CodeInstrument: "instrument mounted",
+}
+
 func (w *writer) night(m *moment.Moment) {
 	w.head("tonight, UTC")
 	spans := func(list []astro.Span) string {
@@ -174,7 +182,9 @@ func (w *writer) night(m *moment.Moment) {
 		w.warn("not now: %s", b.Words)
 	}
 	for _, l := range m.Course.HardLimits() {
-		w.dim("%s kept %s", kit.ShortReason(l.Code), spans(l.Kept))
+		if astro.Total(l.Kept) < 24*time.Hour {
+			w.dim("%s %s", kept[l.Code], spans(l.Kept))
+		}
 	}
 }
 
