@@ -6,6 +6,7 @@ package tui
 import (
 	"fmt"
 	"os"
+	"regexp"
 	"runtime/debug"
 	"time"
 
@@ -38,26 +39,18 @@ func Open(o Options) error {
 	out := output{o.Out, p}
 	o.Source.Copy = term.Copier{Getenv: o.Getenv, Out: o.Out}.Copy
 	m := newModel(o, p)
-	var guard *term.Guard
-	program := tea.NewProgram(m, tea.WithAltScreen(), tea.WithInput(o.In), tea.WithOutput(out),
-		tea.WithoutSignalHandler(), tea.WithFilter(func(_ tea.Model, msg tea.Msg) tea.Msg {
-			switch msg.(type) {
-			case tea.SuspendMsg:
-				guard.Suspending()
-			case tea.ResumeMsg:
-				guard.Resumed()
-			}
-			return acknowledged(msg)
-		}))
-	guard = term.Watch(term.Guarded{
+	program := tea.NewProgram(m, tea.WithAltScreen(), tea.WithInput(o.In), tea.WithOutput(out), tea.WithoutSignalHandler(),
+		tea.WithFilter(func(_ tea.Model, msg tea.Msg) tea.Msg { return acknowledged(msg) }))
+	guard := term.Watch(term.Guarded{
 		Terminal: o.In, Save: o.Save, Kill: program.Kill, Exit: o.Exit,
-		Suspend: func() { program.Send(tea.SuspendMsg{}) },
+		Release: func() { program.ReleaseTerminal() },
 		Retake: func() {
-			program.ReleaseTerminal()
 			program.RestoreTerminal()
-			program.Send(tea.ClearScreen())
+			program.Send(retaken{})
 		},
+		Say: func(text string) { program.Send(finished{kit.Say{Text: text}}) },
 	})
+	m.suspend = guard.Suspend
 	_, err := program.Run()
 	if ended := guard.Stop(); ended != nil {
 		return ended
@@ -69,17 +62,24 @@ func Open(o Options) error {
 type (
 	tick     struct{}
 	ack      struct{}
+	retaken  struct{}         // the terminal is ours again
 	settle   struct{}         // the size has settled
 	escape   struct{ of int } // a held Escape was one
 	lookover struct{}         // at a frame in flight
 	finished struct{ of any } // what a task brought back
 )
 
+// statusReport is how Bubble Tea prints a report that ends in n: CSI 0 n, as
+// ECMA-48 has it, or with the ? that some emulators put in.
+var statusReport = regexp.MustCompile(`^\?CSI\[(63 )?(48|51) 110\]\?$`)
+
 // acknowledged turns the terminal's answer into a message of our own. Bubble
 // Tea has no exported type for it.
 func acknowledged(msg tea.Msg) tea.Msg {
-	if s, ok := msg.(fmt.Stringer); ok {
-		if _, key := msg.(tea.KeyMsg); !key && s.String() == "?CSI[48 110]?" {
+	switch m := msg.(type) {
+	case tea.KeyMsg:
+	case fmt.Stringer:
+		if statusReport.MatchString(m.String()) {
 			return ack{}
 		}
 	}
@@ -96,6 +96,7 @@ type model struct {
 	size     tea.WindowSizeMsg
 	settling bool
 	looking  bool
+	suspend  func()
 	broken   string // why the screen could not be drawn
 }
 
@@ -179,7 +180,8 @@ func (m *model) Update(msg tea.Msg) (_ tea.Model, cmd tea.Cmd) {
 		if msg.of == m.join.timer {
 			return m, m.obey(m.join.release())
 		}
-	case tea.ResumeMsg:
+	case retaken:
+		m.pace.arrived() // what was in flight went to the shell
 		return m, tea.ClearScreen
 	case tea.KeyMsg:
 		return m, m.key(msg)
@@ -191,8 +193,8 @@ func (m *model) key(msg tea.KeyMsg) tea.Cmd {
 	switch {
 	case msg.Paste:
 		return m.commands(m.desk.Paste(string(msg.Runes)))
-	case msg.Type == tea.KeyCtrlZ:
-		return tea.Suspend
+	case msg.Type == tea.KeyCtrlZ && m.suspend != nil:
+		return func() tea.Msg { m.suspend(); return nil }
 	}
 	keys, wait := m.join.keys(msg)
 	cmd := m.obey(keys)

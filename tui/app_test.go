@@ -283,6 +283,12 @@ func TestAcknowledged(t *testing.T) {
 	if _, ok := acknowledged(fakeCSI("?CSI[48 110]?")).(ack); !ok {
 		t.Error("the answer is not recognised")
 	}
+	if _, ok := acknowledged(fakeCSI("?CSI[63 48 110]?")).(ack); !ok {
+		t.Error("the answer with a ? is not recognised")
+	}
+	if _, ok := acknowledged(fakeCSI("?CSI[49 110]?")).(ack); ok {
+		t.Error("something else is taken for the answer")
+	}
 	if _, ok := acknowledged(tea.KeyMsg{Type: tea.KeyRunes, Runes: []rune("?CSI[48 110]?")}).(ack); ok {
 		t.Error("typed text is taken for the answer")
 	}
@@ -374,6 +380,22 @@ func TestStall(t *testing.T) {
 	}
 }
 
+// delayed delivers bytes in order, each piece after a while.
+func delayed(by time.Duration, deliver func([]byte)) func([]byte) {
+	type piece struct {
+		due   time.Time
+		bytes []byte
+	}
+	queue := make(chan piece, 1<<16)
+	go func() {
+		for p := range queue {
+			time.Sleep(time.Until(p.due))
+			deliver(p.bytes)
+		}
+	}()
+	return func(b []byte) { queue <- piece{time.Now().Add(by), b} }
+}
+
 // Over a link of 1,200 bytes a second and 600 ms there and back, with room for
 // any number of bytes on the way as sshd has it, j is held for 3 s at 30 a
 // second: the screen is right within 4 s of its release.
@@ -390,26 +412,33 @@ func TestSlowLink(t *testing.T) {
 	pty.Setsize(tty, &pty.Winsize{Rows: 24, Cols: 80})
 	s := &session{t: t, master: master, emu: vt.NewSafeEmulator(80, 24), ended: make(chan error, 1), w: 80, h: 24}
 	const perSecond, oneWay = 1200, 300 * time.Millisecond
-	way := make(chan []byte, 1<<20)
+	down, up := delayed(oneWay, func(b []byte) { s.emu.Write(b) }), delayed(oneWay, func(b []byte) { master.Write(b) })
+	way := make(chan byte, 1<<22)
 	go func() {
+		buf := make([]byte, 4096)
 		for {
-			buf := make([]byte, 4096)
 			n, err := master.Read(buf)
 			if err != nil {
 				close(way)
 				return
 			}
-			way <- buf[:n]
+			for _, c := range buf[:n] {
+				way <- c
+			}
 		}
 	}()
 	go func() {
-		for b := range way {
+		const piece = 60
+		for c := range way {
+			b := []byte{c}
+			for len(b) < piece && len(way) > 0 {
+				b = append(b, <-way)
+			}
 			s.bytes.Add(int64(len(b)))
 			time.Sleep(time.Duration(len(b)) * time.Second / perSecond)
-			time.AfterFunc(oneWay, func() { s.emu.Write(b) })
+			down(b)
 		}
 	}()
-	up := func(b []byte) { time.AfterFunc(oneWay, func() { master.Write(b) }) }
 	go func() {
 		for {
 			buf := make([]byte, 64)

@@ -22,7 +22,7 @@ const answer = "status"
 var codes = map[string]string{
 	"[A": "up", "[B": "down", "[C": "right", "[D": "left", "[H": "home", "[F": "end",
 	"OA": "up", "OB": "down", "OC": "right", "OD": "left", "OH": "home", "OF": "end",
-	"[1~": "home", "[3~": "delete", "[4~": "end", "[5~": "pgup", "[6~": "pgdown", "[Z": "shift+tab", "[0n": answer,
+	"[1~": "home", "[3~": "delete", "[4~": "end", "[5~": "pgup", "[6~": "pgdown", "[Z": "shift+tab", "[0n": answer, "[3n": answer, "[?0n": answer,
 }
 
 // keys returns the keys of a message; wait: an Escape is held for a moment.

@@ -75,6 +75,7 @@ var fences = []struct {
 	{regexp.MustCompile(`^github\.com/charmbracelet/lipgloss`), []string{"tui/early", "tui/kit"}},
 	{regexp.MustCompile(`^github\.com/(charmbracelet/x/ansi|muesli/termenv)`), []string{"tui/kit", "tui/check"}},
 	{regexp.MustCompile(`^github\.com/charmbracelet/x/vt`), []string{"tui/check"}},
+	{regexp.MustCompile(`^golang\.org/x/sys/`), []string{"tui/term"}},
 	{regexp.MustCompile(`^github\.com/aymanbagabas/`), []string{"tui/term"}},
 	{regexp.MustCompile(`^github\.com/charmbracelet/x/term`), []string{"cmd/evenfall", "tui/term"}},
 	{regexp.MustCompile(`^github\.com/spf13/`), []string{"cmd/evenfall"}},

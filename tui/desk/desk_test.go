@@ -105,7 +105,7 @@ func TestSizes(t *testing.T) {
 	for _, s := range scenes {
 		d := check.New(t, src, 80, 24)
 		d.Press(s.keys...)
-		for _, w := range []int{0, 1, 39, 40, 50, 70, 79, 80, 104, 128, 150, 175, 300} {
+		for _, w := range []int{0, 1, 39, 40, 50, 70, 79, 80, 108, 132, 156, 182, 300} {
 			for _, h := range []int{0, 1, 9, 10, 13, 15, 22, 24, 36, 50, 90} {
 				d.Resize(w, h)
 				view := d.Desk.View()

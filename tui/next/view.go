@@ -1,6 +1,7 @@
 package next
 
 import (
+	"math"
 	"strconv"
 	"time"
 
@@ -44,15 +45,15 @@ func share(w *kit.World, width, height int) layout {
 // From which width on a list has which columns.
 const (
 	withBest  = 80
-	withKind  = 104
-	withPlace = 128
-	withMore  = 150
-	withNotes = 175
+	withKind  = 108
+	withPlace = 132
+	withMore  = 156
+	withNotes = 182
 )
 
 // columns of a list, from the left.
 const (
-	nameWidth     = 12
+	nameWidth     = 14
 	stageWidth    = 8
 	expectWidth   = 18
 	narrowName    = 11
@@ -115,7 +116,7 @@ func (l layout) wideHeadings(p *kit.Pen, at columns) {
 	if at.expect > 0 {
 		p.To(at.expect).Put(kit.Dim, "expected")
 	}
-	p.Right(kit.Dim, at.alt+4, "alt").Right(kit.Dim, at.x+4, "X")
+	p.Right(kit.Dim, at.x-2, "alt").Right(kit.Dim, at.x+4, "X")
 	if at.best > 0 {
 		p.Right(kit.Dim, at.best+5, "best").Right(kit.Dim, at.bestX+4, "X")
 	}
@@ -154,7 +155,7 @@ func (l layout) columns() columns {
 	if l.width >= withExpect {
 		c.expect, at = at, at+expectWidth+1
 	}
-	c.alt, c.x, at = at+1, at+7, at+12
+	c.alt, c.x, at = at, at+altWidth(l.width)+2, at+altWidth(l.width)+7
 	if l.width >= withBest {
 		c.best, c.bestX, at = at, at+6, at+11
 	}
@@ -174,6 +175,22 @@ func (l layout) columns() columns {
 	c.spectrum, c.period = more(withMore, extraSpectrum+1), more(withMore, extraPeriod+1)
 	c.notes = more(withNotes, 1)
 	return c
+}
+
+// altWidth is how wide altitudes are: whole degrees where columns and bytes
+// are dear, as every digit that changes sends its row anew.
+func altWidth(width int) int {
+	if width < withKind {
+		return 3
+	}
+	return 5
+}
+
+func altText(deg float64, width int) string {
+	if width < withKind {
+		return strconv.Itoa(int(math.Round(deg)))
+	}
+	return strconv.FormatFloat(deg, 'f', 1, 64)
 }
 
 // row draws one target.
@@ -245,7 +262,7 @@ func (l layout) reason(p *kit.Pen, at columns, m *moment.Moment, role kit.Role) 
 
 // place writes where a target stands.
 func place(p *kit.Pen, at columns, m *moment.Moment, role kit.Role) {
-	p.Right(role, at.alt+4, strconv.FormatFloat(m.Apparent.Deg(), 'f', 1, 64)).Put(role, kit.Sense(m.Rising))
+	p.Right(role, at.x-2, altText(m.Apparent.Deg(), p.Width())).Put(role, kit.Sense(m.Rising))
 	if m.AirOK && m.Airmass < 10 {
 		p.Right(role, at.x+4, strconv.FormatFloat(float64(m.Airmass), 'f', 2, 64))
 	}
@@ -303,7 +320,7 @@ func (l layout) quick(w *kit.World, p *kit.Pen, i int, role kit.Role) {
 		p.Right(role, 2+l.rank, "-")
 	}
 	p.To(at.name).Put(role, kit.Cut(w.Snap.Roster.Entry(i).Target.Name, at.nameTo-at.name))
-	p.Right(role, at.alt+4, strconv.FormatFloat(q.Altitude.Deg(), 'f', 1, 64))
+	p.Right(role, at.x-2, altText(q.Altitude.Deg(), p.Width()))
 	if q.AirOK {
 		p.Right(role, at.x+4, strconv.FormatFloat(float64(q.Airmass), 'f', 2, 64))
 	}

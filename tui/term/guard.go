@@ -4,15 +4,18 @@
 package term
 
 import (
+	"bytes"
 	"fmt"
 	"os"
 	"os/signal"
+	"strings"
 	"sync"
 	"sync/atomic"
 	"syscall"
 	"time"
 
 	xterm "github.com/charmbracelet/x/term"
+	"golang.org/x/sys/unix"
 )
 
 // Signalled is how a session ended that a signal, or the loss of its
@@ -35,16 +38,19 @@ type Guarded struct {
 	Save func()
 	// Kill asks the program to end; it may never return.
 	Kill func()
-	// Suspend and Retake hand the terminal to the shell and take it back.
-	Suspend, Retake func()
+	// Release and Retake hand the terminal to the shell and take it back.
+	Release, Retake func()
+	// Say puts a message on the screen; it may wait for whoever draws it.
+	Say func(text string)
 	// Exit ends the process.
 	Exit func(status int)
 }
 
 // Times of the guard.
 const (
-	forceAfter  = 2 * time.Second // from the wish to end to the end by force
-	orphanEvery = 5 * time.Second // between looks at whether there is a terminal
+	forceAfter  = 2 * time.Second        // from the wish to end to the end by force
+	orphanEvery = 5 * time.Second        // between looks at whether there is a terminal
+	stopsWithin = 100 * time.Millisecond // a signal that stops the process has done so
 )
 
 // Guard sees to it that the process ends when it is told to or its terminal
@@ -85,10 +91,10 @@ func (w *Guard) listen() {
 		case s := <-w.signals:
 			switch s {
 			case syscall.SIGTSTP:
-				go w.g.Suspend()
+				go w.Suspend()
 			case syscall.SIGCONT:
 				if !w.suspended.Load() {
-					go w.g.Retake()
+					go func() { w.g.Release(); w.g.Retake() }()
 				}
 			default:
 				w.end(s.(syscall.Signal))
@@ -123,17 +129,66 @@ func (w *Guard) restore() {
 	}
 }
 
-// Suspending is to be called right before the process stops itself, so that
-// the signal stops it.
-func (w *Guard) Suspending() {
-	w.suspended.Store(true)
-	signal.Reset(syscall.SIGTSTP)
+// Suspend hands the terminal to the shell, stops the process and its job, and
+// takes the terminal back once the shell lets them go on. Where there is no
+// shell to go back to it says so: nothing would ever wake the process.
+//
+// Notes:
+//  1. The job is stopped by SIGSTOP: once SIGTSTP has been caught, Go's runtime
+//     keeps its handler, which ignores it.
+func (w *Guard) Suspend() {
+	if orphaned() {
+		w.g.Say("not suspended: no shell is waiting for the terminal")
+		return
+	}
+	if !w.suspended.CompareAndSwap(false, true) {
+		return
+	}
+	defer w.suspended.Store(false)
+	w.g.Release()
+	syscall.Kill(0, syscall.SIGSTOP)
+	time.Sleep(stopsWithin) // it stops in here
+	w.g.Retake()
 }
 
-// Resumed is to be called once it runs again.
-func (w *Guard) Resumed() {
-	w.suspended.Store(false)
-	signal.Notify(w.signals, syscall.SIGTSTP)
+// orphaned tells whether the process's job has no shell above it: no ancestor
+// of the same session outside the job.
+//
+// Source: POSIX.1-2017, 3.264 Orphaned Process Group.
+func orphaned() bool {
+	job := syscall.Getpgrp()
+	session, err := unix.Getsid(0)
+	if err != nil {
+		return false
+	}
+	for pid := syscall.Getppid(); pid > 1; {
+		if s, err := unix.Getsid(pid); err != nil || s != session {
+			return true
+		}
+		if g, err := syscall.Getpgid(pid); err != nil || g != job {
+			return err != nil
+		}
+		if pid = parent(pid); pid == 0 {
+			return false
+		}
+	}
+	return true
+}
+
+// parent returns the parent of a process; 0: the system does not say.
+func parent(pid int) int {
+	text, err := os.ReadFile(fmt.Sprintf("/proc/%d/stat", pid))
+	if err != nil {
+		return 0
+	}
+	// pid (name) state parent ...; a name may hold anything
+	_, rest, _ := strings.Cut(string(text[bytes.LastIndexByte(text, ')')+1:]), " ")
+	var state string
+	var up int
+	if _, err := fmt.Sscan(rest, &state, &up); err != nil {
+		return 0
+	}
+	return up
 }
 
 // Stop ends the guard; it returns how the session was ended, nil where the
