@@ -31,11 +31,25 @@ func (q quick) Now() time.Time {
 	return check.Start.Add(time.Duration(q.times) * time.Since(q.began))
 }
 
+// emulator is a terminal that one goroutine writes to and another reads off.
+type emulator struct {
+	*vt.Emulator
+	mu sync.Mutex
+}
+
+func newEmulator(w, h int) *emulator { return &emulator{Emulator: vt.NewEmulator(w, h)} }
+
+func (e *emulator) Write(b []byte) (int, error) {
+	e.mu.Lock()
+	defer e.mu.Unlock()
+	return e.Emulator.Write(b)
+}
+
 // session is the program with its real loop and renderer on a terminal.
 type session struct {
 	t      *testing.T
 	master *os.File
-	emu    *vt.SafeEmulator
+	emu    *emulator
 	bytes  atomic.Int64
 	frames atomic.Int64 // requests for the terminal's status
 	mute   atomic.Bool  // the terminal answers nothing
@@ -51,7 +65,7 @@ func start(t *testing.T, src desk.Source, w, h, times int, mute bool) *session {
 		t.Fatal(err)
 	}
 	pty.Setsize(tty, &pty.Winsize{Rows: uint16(h), Cols: uint16(w)})
-	s := &session{t: t, master: master, emu: vt.NewSafeEmulator(w, h), ended: make(chan error, 1), w: w, h: h}
+	s := &session{t: t, master: master, emu: newEmulator(w, h), ended: make(chan error, 1), w: w, h: h}
 	s.mute.Store(mute)
 	var answers sync.WaitGroup
 	answers.Add(1)
@@ -96,14 +110,8 @@ func start(t *testing.T, src desk.Source, w, h, times int, mute bool) *session {
 		}
 		master.Close()
 		tty.Close()
-		s.emu.Close()
 	})
 	return s
-}
-
-func (s *session) text() string {
-	g := check.Grid{Emulator: s.emu.Emulator, W: s.w, H: s.h}
-	return g.Text()
 }
 
 // see waits until the terminal shows a text.
@@ -119,20 +127,12 @@ func (s *session) see(what string) {
 	s.t.Fatalf("no %q on the terminal:\n%s", what, all)
 }
 
-// locked reads the grid cell by cell under the emulator's own lock.
+// locked reads the grid cell by cell.
 func (s *session) locked() string {
-	var b strings.Builder
-	for y := range s.h {
-		for x := range s.w {
-			if c := s.emu.CellAt(x, y); c != nil && c.Content != "" {
-				b.WriteString(c.Content)
-			} else {
-				b.WriteByte(' ')
-			}
-		}
-		b.WriteByte('\n')
-	}
-	return b.String()
+	s.emu.mu.Lock()
+	defer s.emu.mu.Unlock()
+	g := check.Grid{Emulator: s.emu.Emulator, W: s.w, H: s.h}
+	return g.Text()
 }
 
 func (s *session) press(keys string) { s.master.WriteString(keys) }
@@ -278,25 +278,35 @@ func TestJoiner(t *testing.T) {
 	}
 }
 
-// The answer's message has no exported type: this pins how it prints.
+// Other messages are no answers; that the answer is one is seen in
+// TestPacing.
 func TestAcknowledged(t *testing.T) {
-	if _, ok := acknowledged(fakeCSI("?CSI[48 110]?")).(ack); !ok {
-		t.Error("the answer is not recognised")
-	}
-	if _, ok := acknowledged(fakeCSI("?CSI[63 48 110]?")).(ack); !ok {
-		t.Error("the answer with a ? is not recognised")
-	}
-	if _, ok := acknowledged(fakeCSI("?CSI[49 110]?")).(ack); ok {
-		t.Error("something else is taken for the answer")
-	}
-	if _, ok := acknowledged(tea.KeyMsg{Type: tea.KeyRunes, Runes: []rune("?CSI[48 110]?")}).(ack); ok {
-		t.Error("typed text is taken for the answer")
+	for _, msg := range []tea.Msg{tick{}, finished{1}, tea.WindowSizeMsg{}, tea.KeyMsg{Type: tea.KeyRunes, Runes: []rune("[0n")}, "text", tea.Quit()} {
+		if _, ok := acknowledged(msg).(ack); ok {
+			t.Errorf("%T is taken for the answer", msg)
+		}
 	}
 }
 
-type fakeCSI string
-
-func (f fakeCSI) String() string { return string(f) }
+// The terminal's answer is recognised as Bubble Tea reports it: frame after
+// frame asks, and none waits for its patience to end.
+func TestPacing(t *testing.T) {
+	src := source(t, 8)
+	src.Fixed = true
+	s := start(t, src, 80, 24, 1, false)
+	s.see("1/32")
+	began := time.Now()
+	for i := 2; i <= 20; i++ {
+		s.press("j")
+		s.see(fmt.Sprintf("%d/32", i))
+	}
+	if n := s.frames.Load(); n < 15 {
+		t.Errorf("%d frames asked: the answers are not recognised", n)
+	}
+	if took := time.Since(began); took > patience {
+		t.Errorf("19 keys took %v: answers are missed", took)
+	}
+}
 
 // One frame is in flight: while the terminal is silent no other is drawn, the
 // state goes on, and the last state is drawn when the answer comes. Without
@@ -410,7 +420,7 @@ func TestSlowLink(t *testing.T) {
 		t.Fatal(err)
 	}
 	pty.Setsize(tty, &pty.Winsize{Rows: 24, Cols: 80})
-	s := &session{t: t, master: master, emu: vt.NewSafeEmulator(80, 24), ended: make(chan error, 1), w: 80, h: 24}
+	s := &session{t: t, master: master, emu: newEmulator(80, 24), ended: make(chan error, 1), w: 80, h: 24}
 	const perSecond, oneWay = 1200, 300 * time.Millisecond
 	down, up := delayed(oneWay, func(b []byte) { s.emu.Write(b) }), delayed(oneWay, func(b []byte) { master.Write(b) })
 	way := make(chan byte, 1<<22)
@@ -471,7 +481,6 @@ func TestSlowLink(t *testing.T) {
 	<-s.ended
 	master.Close()
 	tty.Close()
-	s.emu.Close()
 }
 
 // A resize of the terminal is followed, many of them at once are gathered.

@@ -11,7 +11,6 @@ import (
 	"testing"
 	"time"
 
-	"github.com/charmbracelet/x/vt"
 	"github.com/creack/pty"
 
 	"evenfall/astro"
@@ -49,7 +48,7 @@ func BenchmarkKeyToFrame(b *testing.B) {
 		b.Fatal(err)
 	}
 	pty.Setsize(tty, &pty.Winsize{Rows: 24, Cols: 80})
-	emu := vt.NewSafeEmulator(80, 24)
+	emu := newEmulator(80, 24)
 	wrote := make(chan time.Time, 1024)
 	go func() {
 		buf := make([]byte, 64)
@@ -110,5 +109,4 @@ func BenchmarkKeyToFrame(b *testing.B) {
 	<-ended
 	master.Close()
 	tty.Close()
-	emu.Close()
 }

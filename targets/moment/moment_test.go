@@ -180,3 +180,24 @@ func TestBest(t *testing.T) {
 		}
 	}
 }
+
+// The curve's points are where Of has the star.
+func TestCurve(t *testing.T) {
+	n, stars := testNight(t, targets.DefaultLimits()), testStars(t)
+	for i := 0; i < len(stars); i += 51 {
+		span := astro.Span{From: n.Midnight.Add(-3 * time.Hour), Until: n.Midnight.Add(173 * time.Minute)}
+		points := Curve(n, &stars[i], span)
+		if last := points[len(points)-1].At; last.Sub(span.Until) != 0 {
+			t.Errorf("%s: ends at %v", stars[i].Target.Name, last.UTC())
+		}
+		course := Tonight(n, &stars[i], Want{})
+		for _, p := range points {
+			s := NewScene(n, p.At)
+			m := Of(&s, &stars[i], &course, Want{})
+			check.Near(t, p.Altitude.Deg(), m.Apparent.Deg(), 1e-9, "altitude of %s", stars[i].Target.Name)
+			if p.AirOK != m.AirOK || p.Airmass != m.Airmass {
+				t.Errorf("airmass of %s: %v, %v", stars[i].Target.Name, p.Airmass, m.Airmass)
+			}
+		}
+	}
+}

@@ -69,7 +69,7 @@ func (f Field) Press(k string) (Field, bool) {
 		}
 		f = cut(from, f.at)
 	case "ctrl+u":
-		f = cut(0, f.at)
+		f = Field{}
 	case " ", "space":
 		f = f.Insert(" ")
 	default:
