@@ -30,7 +30,7 @@ func BlockedWord(m *moment.Moment) string {
 func Clock(t astro.Instant) string { return t.UTC().Round(time.Minute).Format("15:04") }
 
 var shortReasons = map[targets.Code]string{
-	targets.CodeDaylight: "daylight", targets.CodeSun: "near the Sun", targets.CodeBelow: "below horizon",
+	targets.CodeDaylight: "too bright", targets.CodeSun: "near the Sun", targets.CodeBelow: "below horizon",
 	targets.CodeAltitude: "too low", targets.CodeHorizon: "behind the horizon", targets.CodeZenith: "near the zenith",
 	targets.CodeHourAngle: "hour angle", targets.CodeDeclination: "declination", targets.CodeMoon: "near the Moon",
 	targets.CodeWind: "wind", targets.CodeWindow: "not our hours", targets.CodeClosed: "closed",

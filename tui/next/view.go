@@ -98,7 +98,9 @@ func empty(w *kit.World, p *kit.Pen) {
 	case w.Filter != "":
 		text = "nothing passes the filter " + strconv.Quote(w.Filter) + "; / changes it"
 	}
-	p.Put(kit.Dim, text).Line()
+	for _, line := range kit.Wrap(text, p.Width(), 2) {
+		p.Put(kit.Dim, line).Line()
+	}
 }
 
 // headings names the columns.
