@@ -27,6 +27,9 @@ type TypedProblem struct {
 	Warning bool
 }
 
+// longestTyped is how long a field or a pasted line may be, bytes.
+const longestTyped = 1000
+
 // minutes and seconds of a sexagesimal figure, each with its sign or blank.
 const tail = `[\s:hdm°]+\d{1,2}(?:\.\d+)?(?:[\s:m'′]+\d{1,2}(?:\.\d+)?[s"″]?)?`
 
@@ -64,6 +67,9 @@ func SplitPosition(s string) (ra, dec string, ok bool) {
 // the position is the name, magnitude and motion are found by their signs
 // (V=12.3, mag 12.3, pm +12 -30). False: there is no position in it.
 func FromPaste(line string) (Typed, bool) {
+	if len(line) > longestTyped {
+		return Typed{}, false
+	}
 	line = Clean(strings.Join(strings.Fields(line), " "))
 	var at []int
 	for _, re := range []*regexp.Regexp{sexagesimalPair, packed, decimalPair} {
@@ -100,9 +106,19 @@ func (y Typed) Target() (targets.Target, []TypedProblem) {
 	wrong := func(field, format string, a ...any) {
 		problems = append(problems, TypedProblem{Field: field, Text: fmt.Sprintf(format, a...)})
 	}
+	for _, f := range []string{y.Name, y.Position, y.Kind, y.Mag, y.Motion, y.Epoch} {
+		if len(f) > longestTyped {
+			wrong("name", "a field of %d bytes; nobody types that, write one target", len(f))
+			return targets.Target{}, problems
+		}
+	}
 	cells := [][2]string{{"name", strings.TrimSpace(y.Name)}, {"kind", strings.TrimSpace(y.Kind)}, {"epoch_jyr", strings.TrimSpace(y.Epoch)}}
 	if strings.TrimSpace(y.Name) == "" {
 		wrong("name", "a target needs a name")
+	}
+	if strings.HasPrefix(strings.TrimSpace(y.Name), "#") {
+		wrong("name", "a name does not begin with #, which begins a comment in lists")
+		return targets.Target{}, problems
 	}
 	ra, dec, ok := SplitPosition(y.Position)
 	switch {
@@ -139,6 +155,8 @@ func (y Typed) Target() (targets.Target, []TypedProblem) {
 			field = "motion"
 		case "epoch_jyr":
 			field = "epoch"
+		case "":
+			field = "name"
 		}
 		text := strings.TrimSuffix(p.Problem, "; the row is left out")
 		if p.Fix != "" {

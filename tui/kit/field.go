@@ -13,6 +13,9 @@ type Field struct {
 	at   int // where the next character goes
 }
 
+// longestField is how many characters a field takes.
+const longestField = 2000
+
 // NewField starts a field with a text.
 func NewField(s string) Field { return Field{[]rune(s), len([]rune(s))} }
 
@@ -31,6 +34,7 @@ func (f Field) Insert(s string) Field {
 	// cleaning trims blanks, which a field keeps
 	s = strings.Trim(table.Clean("|"+s+"|"), "|")
 	in := []rune(s)
+	in = in[:min(len(in), max(longestField-len(f.text), 0))]
 	text := make([]rune, 0, len(f.text)+len(in))
 	text = append(append(append(text, f.text[:f.at]...), in...), f.text[f.at:]...)
 	return Field{text, f.at + len(in)}
