@@ -154,26 +154,25 @@ func Wrap(s string, columns, indent int) []string {
 	var out []string
 	line := ""
 	for _, word := range strings.Fields(s) {
-		room := columns
-		if len(out) > 0 {
-			room -= indent
-		}
-		for width(word) > room {
-			if line != "" {
-				out, line = append(out, line), ""
-				room = columns - indent
+		for word != "" {
+			room := columns
+			if len(out) > 0 {
+				room -= indent
 			}
-			head := Cut(word, room)
-			out, word = append(out, head), word[len(head):]
-			room = columns - indent
-		}
-		switch {
-		case line == "":
-			line = word
-		case width(line)+1+width(word) <= room:
-			line += " " + word
-		default:
-			out, line = append(out, line), word
+			switch {
+			case line != "" && width(line)+1+width(word) <= room:
+				line, word = line+" "+word, ""
+			case line != "":
+				out, line = append(out, line), ""
+			case width(word) <= room:
+				line, word = word, ""
+			default:
+				head := Cut(word, room)
+				if head == "" { // a character wider than the line
+					head = word
+				}
+				out, word = append(out, head), word[len(head):]
+			}
 		}
 	}
 	if line != "" || len(out) == 0 {
