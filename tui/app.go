@@ -208,6 +208,7 @@ func (m *model) key(msg tea.KeyMsg) tea.Cmd {
 
 func (m *model) obey(keys []string) tea.Cmd {
 	var tasks []desk.Task
+	m.desk.Clock(m.o.Clock.Now())
 	for _, k := range keys {
 		if k == answer {
 			m.pace.arrived()

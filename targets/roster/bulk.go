@@ -32,8 +32,7 @@ type bounds struct {
 	moonUp                   bool
 	hourFrom, hourUntil      float64 // rad
 	decFrom, decUntil        float64 // sines
-	dark, darker             bool    // now
-	canLeft, shouldLeft      float64 // hours of darkness left
+	can, should              darkness
 	sinLat, cosLat           float64
 	horizon                  []targets.HorizonPoint
 }
@@ -103,20 +102,28 @@ func boundsOf(s *moment.Scene) bounds {
 	if l.MaxAltitude.Deg() < 90 {
 		b.sinTop = sin(l.MaxAltitude)
 	}
-	b.dark, b.canLeft = leftOf(s.Night.CanDark(), s.Instant)
-	b.darker, b.shouldLeft = leftOf(s.Night.SunBelow(moment.ShouldSunAltitude), s.Instant)
+	can, should := s.Night.CanDark(), s.Night.SunBelow(moment.ShouldSunAltitude)
+	if ours := s.Night.Allocated; ours != nil {
+		can, should = astro.Intersect(can, ours), astro.Intersect(should, ours)
+	}
+	b.can, b.should = darknessAt(can, s.Instant), darknessAt(should, s.Instant)
 	return b
 }
 
-// leftOf tells whether an instant lies in one of the spans, and the hours
-// until that ends.
-func leftOf(spans []astro.Span, t astro.Instant) (bool, float64) {
+// darkness is the span of darkness that holds an instant, or the next one,
+// hours from it; none is left where until is 0.
+type darkness struct{ from, until float64 }
+
+// now tells whether it is dark.
+func (d darkness) now() bool { return d.from <= 0 && d.until > 0 }
+
+func darknessAt(spans []astro.Span, t astro.Instant) darkness {
 	for _, s := range spans {
-		if s.Contains(t) {
-			return true, s.Until.Sub(t).Hours()
+		if t.Before(s.Until) {
+			return darkness{s.From.Sub(t).Hours(), s.Until.Sub(t).Hours()}
 		}
 	}
-	return false, 0
+	return darkness{}
 }
 
 // solarHours turns a hour angle in radians into hours of the clock.
@@ -143,18 +150,54 @@ func (b *bounds) judge(f *frame.Frame, sun, u astro.Vec, c *sweep.Columns, i int
 	hard := b.reach(b.sinHard, sinDec, cosDec)
 	inside := sa >= b.sinHard && sa <= b.sinTop && h >= b.hourFrom && h <= b.hourUntil
 	switch {
-	case inside && b.darker && sa >= b.sinWish:
+	case inside && b.should.now() && sa >= b.sinWish:
 		q.class = 0
-		end := math.Min(b.reach(b.sinWish, sinDec, cosDec), b.hourUntil)
-		q.hours = float32(math.Min((end-h)*solarHours, b.shouldLeft))
-	case inside && b.dark:
+		q.hours = float32(math.Min(b.ends(h, b.reach(b.sinWish, sinDec, cosDec), sinDec, cosDec), b.should.until))
+	case inside && b.can.now():
 		q.class = 1
-		q.hours = float32(math.Min((math.Min(hard, b.hourUntil)-h)*solarHours, b.canLeft))
+		q.hours = float32(math.Min(b.ends(h, hard, sinDec, cosDec), b.can.until))
 	case hard > 0:
-		opens := math.Max(-hard, b.hourFrom)
-		q.hours = float32(math.Mod(opens-h+4*math.Pi, 2*math.Pi) * solarHours)
+		q.hours = float32(b.opens(h, hard, sinDec, cosDec))
 	}
 	return q
+}
+
+// ends returns the hours until a star at hour angle h leaves the limits: by
+// sinking below the altitude it reaches up to, by its hour angle, or by rising
+// above the highest one.
+func (b *bounds) ends(h, reach, sinDec, cosDec float64) float64 {
+	end := math.Min(reach, b.hourUntil)
+	if top := b.reach(b.sinTop, sinDec, cosDec); b.sinTop < 1 && top > 0 && h < -top {
+		end = math.Min(end, -top)
+	}
+	return (end - h) * solarHours
+}
+
+// opens returns the hours until a star can be taken in the darkness that is
+// or comes; infinite where it cannot in it.
+func (b *bounds) opens(h, hard, sinDec, cosDec float64) float64 {
+	if b.can.until <= 0 {
+		return math.Inf(1)
+	}
+	from, until := math.Max(-hard, b.hourFrom), math.Min(hard, b.hourUntil)
+	top := 0.0 // hour angle within which it is too high
+	if b.sinTop < 1 {
+		top = b.reach(b.sinTop, sinDec, cosDec)
+	}
+	for _, turn := range []float64{0, 2 * math.Pi} {
+		parts := [][2]float64{{from, until}}
+		if top > 0 {
+			parts = [][2]float64{{from, -top}, {top, until}}
+		}
+		for _, p := range parts {
+			a, z := (p[0]-h+turn)*solarHours, (p[1]-h+turn)*solarHours
+			a = math.Max(math.Max(a, b.can.from), 0)
+			if a < math.Min(z, b.can.until) {
+				return a
+			}
+		}
+	}
+	return math.Inf(1)
 }
 
 // reach returns the hour angle, rad, up to which a star stands above an
@@ -223,13 +266,17 @@ func (r *Roster) order(ctx context.Context, s *Snapshot, ask Ask, list []place) 
 	}
 	key := r.quickKey(s, ask)
 	if key == nil {
-		return fmt.Errorf("%d targets cannot be sorted by %s at once; filter the list down to %d first", len(list), ask.Sort.Key, Bulk)
+		return fmt.Errorf("%d targets cannot be sorted by %s: filter to %d or fewer first", len(list), ask.Sort.Key, Bulk)
 	}
 	for k := range list {
-		list[k].key = key(int(list[k].row))
-		if ask.Sort.Reverse {
-			list[k].key = ^list[k].key
+		v, known := key(int(list[k].row))
+		switch {
+		case !known: // last, reversed too
+			v = math.MaxUint64
+		case ask.Sort.Reverse:
+			v = ^v
 		}
+		list[k].key = v
 	}
 	if ctx.Err() != nil {
 		return fmt.Errorf("sorting %d targets: %w", len(list), ctx.Err())
@@ -238,42 +285,47 @@ func (r *Roster) order(ctx context.Context, s *Snapshot, ask Ask, list []place) 
 	return nil
 }
 
-// quickKey returns the number that a long list is ordered by; nil: a key that
-// would need every target's night.
-func (r *Roster) quickKey(s *Snapshot, ask Ask) func(i int) uint64 {
+// quickKey returns the number that a long list is ordered by, and whether a
+// target has one; nil: a key that would need every target's night.
+func (r *Roster) quickKey(s *Snapshot, ask Ask) func(i int) (uint64, bool) {
 	q, place := s.quick, func(i int) *targets.Place { return &r.entries[i].Target.Place }
 	switch ask.Sort.Key {
 	case "", "next":
-		return func(i int) uint64 { return q[i].nextKey(r.entries[i].Want.Weight) }
+		return func(i int) (uint64, bool) { return q[i].nextKey(r.entries[i].Want.Weight), q[i].class < 2 }
 	case "name":
-		return func(i int) uint64 { return uint64(r.byName[i]) }
-	case "alt", "x":
-		return func(i int) uint64 { return bits(-q[i].sinAlt) }
+		return func(i int) (uint64, bool) { return uint64(r.byName[i]), true }
+	case "alt":
+		return func(i int) (uint64, bool) { return bits(-q[i].sinAlt), true }
+	case "x":
+		return func(i int) (uint64, bool) { return bits(-q[i].sinAlt), q[i].sinAlt > 0 }
 	case "left":
-		return func(i int) uint64 { return bits(float64(q[i].class/2)*1e6 + math.Min(float64(q[i].hours), 1e5)) }
+		return func(i int) (uint64, bool) { return bits(float64(q[i].hours)), q[i].class < 2 }
 	case "moon":
-		return func(i int) uint64 { return bits(float64(q[i].cosMoon)) }
+		return func(i int) (uint64, bool) { return bits(float64(q[i].cosMoon)), true }
 	case "ra":
-		return func(i int) uint64 { return bits(place(i).RA.Rad()) }
+		return func(i int) (uint64, bool) { return bits(place(i).RA.Rad()), true }
 	case "dec":
-		return func(i int) uint64 { return bits(place(i).Dec.Rad()) }
+		return func(i int) (uint64, bool) { return bits(place(i).Dec.Rad()), true }
 	case "kind":
-		return func(i int) uint64 { return uint64(slices.Index(targets.Kinds, r.entries[i].Target.Kind)) }
+		return func(i int) (uint64, bool) {
+			return uint64(slices.Index(targets.Kinds, r.entries[i].Target.Kind)), true
+		}
 	case "mag":
-		return func(i int) uint64 { return bits(r.listed(int32(i))) }
+		return func(i int) (uint64, bool) {
+			v := r.listed(int32(i))
+			return bits(v), !math.IsInf(v, 1)
+		}
 	case "period":
-		return func(i int) uint64 {
-			if p := r.entries[i].Target.Var.PeriodD; p.Known {
-				return bits(p.Value)
-			}
-			return math.MaxUint64
+		return func(i int) (uint64, bool) {
+			p := r.entries[i].Target.Var.PeriodD
+			return bits(p.Value), p.Known
 		}
 	case "mark":
-		return func(i int) uint64 {
+		return func(i int) (uint64, bool) {
 			if ask.Marks[i] {
-				return 0
+				return 0, true
 			}
-			return 1
+			return 1, true
 		}
 	}
 	return nil

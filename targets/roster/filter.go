@@ -52,6 +52,9 @@ func ParseFilter(line string) (Filter, error) {
 			f.words = append(f.words, strings.ToLower(word))
 			continue
 		}
+		if text == "" {
+			return Filter{}, fmt.Errorf("%s: write what to compare with after %s", word, op)
+		}
 		c := condition{column: column, op: op, text: text}
 		low := strings.ToLower(column)
 		switch {
@@ -85,6 +88,22 @@ func split(word string) (column, op, text string) {
 		}
 	}
 	return word, "", ""
+}
+
+// Settled returns the part of a filter being typed that can be applied: a last
+// word that may yet become the name of a column is left out.
+func Settled(line string) string {
+	if line == "" || strings.HasSuffix(line, " ") {
+		return line
+	}
+	at := strings.LastIndex(line, " ") + 1
+	last := strings.ToLower(line[at:])
+	for _, c := range slices.Concat(textColumns, numberColumns) {
+		if strings.HasPrefix(c, last) && len(last) > 1 || c == last {
+			return line[:at]
+		}
+	}
+	return line
 }
 
 func isBand(s string) bool { return slices.Contains(targets.Bands, targets.Band(s)) }

@@ -7,6 +7,7 @@ import (
 	"strings"
 
 	"evenfall/astro"
+	"evenfall/targets"
 	"evenfall/targets/moment"
 )
 
@@ -32,23 +33,28 @@ func (s *Snapshot) sort(ask Ask) {
 		return
 	}
 	slices.SortStableFunc(s.Fresh, func(a, b int32) int {
-		c := s.compare(ask.Sort.Key, ask.Marks, int(a), int(b))
-		if ask.Sort.Reverse {
+		absent, c := s.compare(ask.Sort.Key, ask.Marks, int(a), int(b))
+		switch {
+		case absent != 0: // what is not known stands last, reversed too
+			return absent
+		case ask.Sort.Reverse:
 			return -c
 		}
 		return c
 	})
 }
 
-func (s *Snapshot) compare(key string, marks map[int]bool, a, b int) int {
+// compare says which of two has a figure at all, and which comes first.
+func (s *Snapshot) compare(key string, marks map[int]bool, a, b int) (absent, order int) {
 	r := s.Roster
 	switch key {
 	case "name":
-		return int(r.byName[a]) - int(r.byName[b])
+		return 0, int(r.byName[a]) - int(r.byName[b])
 	case "kind":
-		return strings.Compare(string(r.entries[a].Target.Kind), string(r.entries[b].Target.Kind))
+		return 0, slices.Index(targets.Kinds, r.entries[a].Target.Kind) - slices.Index(targets.Kinds, r.entries[b].Target.Kind)
 	case "mark":
-		return presentFirst(marks[a], marks[b], 0)
+		absent, _ = presentFirst(marks[a], marks[b], 0)
+		return 0, absent
 	case "period":
 		x, y := r.entries[a].Target.Var.PeriodD, r.entries[b].Target.Var.PeriodD
 		return presentFirst(x.Known, y.Known, x.Value-y.Value)
@@ -56,22 +62,22 @@ func (s *Snapshot) compare(key string, marks map[int]bool, a, b int) int {
 	return compareMoments(key, s.Row(a), s.Row(b))
 }
 
-func compareMoments(key string, x, y *moment.Moment) int {
+func compareMoments(key string, x, y *moment.Moment) (absent, order int) {
 	switch key {
 	case "alt":
-		return number(y.Apparent.Deg() - x.Apparent.Deg())
+		return 0, number(y.Apparent.Deg() - x.Apparent.Deg())
 	case "x":
 		return presentFirst(x.AirOK, y.AirOK, float64(x.Airmass-y.Airmass))
 	case "moon":
-		return number(y.MoonSep.Deg() - x.MoonSep.Deg())
+		return 0, number(y.MoonSep.Deg() - x.MoonSep.Deg())
 	case "ra":
-		return number(x.RA.Deg() - y.RA.Deg())
+		return 0, number(x.RA.Deg() - y.RA.Deg())
 	case "dec":
-		return number(x.Dec.Deg() - y.Dec.Deg())
+		return 0, number(x.Dec.Deg() - y.Dec.Deg())
 	case "stage":
-		return strings.Compare(x.Stage.Best, y.Stage.Best)
+		return 0, strings.Compare(x.Stage.Best, y.Stage.Best)
 	case "ends":
-		return strings.Compare(string(x.EndsBy), string(y.EndsBy))
+		return presentFirstWord(string(x.EndsBy), string(y.EndsBy))
 	case "best":
 		return presentFirst(x.Course.Best != nil, y.Course.Best != nil, seconds(x.Course.Best, y.Course.Best))
 	case "bestx":
@@ -95,16 +101,21 @@ func seconds(a, b *astro.Instant) float64 {
 func number(d float64) int { return cmp.Compare(d, 0) }
 
 // presentFirst puts what is known before what is not.
-func presentFirst(a, b bool, d float64) int {
+func presentFirst(a, b bool, d float64) (absent, order int) {
 	switch {
 	case a && !b:
-		return -1
+		return -1, 0
 	case b && !a:
-		return 1
+		return 1, 0
 	case !a:
-		return 0
+		return 0, 0
 	}
-	return number(d)
+	return 0, number(d)
+}
+
+func presentFirstWord(a, b string) (absent, order int) {
+	absent, _ = presentFirst(a != "", b != "", 0)
+	return absent, strings.Compare(a, b)
 }
 
 // place is a row of a long list with the number it is ordered by.

@@ -93,6 +93,12 @@ func (r *Roster) Len() int { return len(r.entries) }
 // Entry returns one target with what is wanted of it.
 func (r *Roster) Entry(i int) *Entry { return &r.entries[i] }
 
+// Named tells whether a target bears a name; it looks at all of them.
+func (r *Roster) Named(name string) bool {
+	key := targets.Key(name)
+	return slices.ContainsFunc(r.entries, func(e Entry) bool { return targets.Key(e.Target.Name) == key })
+}
+
 // With returns a roster with one target more, at its end; what was prepared is
 // kept.
 func (r *Roster) With(e Entry) *Roster {

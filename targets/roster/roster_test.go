@@ -84,15 +84,20 @@ func TestSnapshotRanks(t *testing.T) {
 // The sweep's classes and ends of windows are those of the exact moments: the
 // ends to a minute and a half, the classes but at their very edges.
 func TestSweepRanksLikeMoments(t *testing.T) {
+	for _, at := range []string{"2026-12-02T04:00:00Z", "2026-12-01T20:00:00Z", "2026-12-02T00:10:00Z"} {
+		t.Run(at, func(t *testing.T) { sweepRanksLikeMoments(t, scene(t, at)) })
+	}
+}
+
+func sweepRanksLikeMoments(t *testing.T, sc moment.Scene) {
 	r := many(Bulk + 1)
-	sc := scene(t, "2026-12-02T04:00:00Z")
 	s, err := r.Snapshot(context.Background(), Ask{Scene: sc})
 	if err != nil || !s.Bulk {
 		t.Fatal(err, s.Bulk)
 	}
 	b := boundsOf(&sc)
 	k := r.night(sc.Night)
-	wrong, worst := 0, 0.0
+	wrong, worst, opened, late := 0, 0.0, 0, 0
 	for i := 0; i < r.Len(); i += 9 {
 		cols := sweepColumns(k, &sc, r.Len())
 		q := b.judge(&sc.Frame, sc.Sun.Dir, k.sky.Direction(i), cols, i)
@@ -107,6 +112,15 @@ func TestSweepRanksLikeMoments(t *testing.T) {
 			wrong++
 			continue
 		}
+		if class == 2 {
+			// the sweep leaves Moon, Sun and the profile of the horizon out
+			if open := m.NextOpen(); open != nil && !math.IsInf(float64(q.hours), 1) && len(m.BlockedBy) > 0 && m.BlockedBy[0].Code != "moon" {
+				opened++
+				if d := math.Abs(open.Sub(sc.Instant).Minutes() - float64(q.hours)*60); d > 1.5 {
+					late++
+				}
+			}
+		}
 		if class < 2 {
 			d := math.Abs(m.Left.Minutes() - float64(q.hours)*60)
 			worst = math.Max(worst, d)
@@ -115,6 +129,9 @@ func TestSweepRanksLikeMoments(t *testing.T) {
 	}
 	if wrong > 2 {
 		t.Errorf("%d of %d in another class", wrong, r.Len()/9)
+	}
+	if late > opened/50 || opened < 30 {
+		t.Errorf("%d of %d open at another time", late, opened)
 	}
 	t.Logf("windows end within %.2f min", worst)
 }
@@ -161,8 +178,17 @@ func TestSort(t *testing.T) {
 			t.Fatal(err)
 		}
 		for k := 1; k < len(up.Order); k++ {
-			if key != "next" && up.compare(key, nil, int(up.Order[k-1]), int(up.Order[k])) > 0 {
+			if absent, c := up.compare(key, nil, int(up.Order[k-1]), int(up.Order[k])); key != "next" && (absent > 0 || absent == 0 && c > 0) {
 				t.Fatalf("%s: place %d stands after %d", key, k-1, k)
+			}
+		}
+		down, err := r.Snapshot(context.Background(), Ask{Scene: sc, Sort: Sort{Key: key, Reverse: true}})
+		if err != nil {
+			t.Fatal(err)
+		}
+		for k := 1; k < len(down.Order); k++ {
+			if absent, c := down.compare(key, nil, int(down.Order[k-1]), int(down.Order[k])); absent > 0 || absent == 0 && c < 0 {
+				t.Fatalf("%s reversed: place %d stands after %d", key, k-1, k)
 			}
 		}
 	}
@@ -180,7 +206,7 @@ func TestSortBulk(t *testing.T) {
 		for _, reverse := range []bool{false, true} {
 			s, err := r.Snapshot(context.Background(), Ask{Scene: sc, Sort: Sort{key, reverse}})
 			if err != nil {
-				if !strings.Contains(err.Error(), "filter the list") {
+				if !strings.Contains(err.Error(), "filter to") {
 					t.Fatal(err)
 				}
 				continue

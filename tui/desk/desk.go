@@ -71,6 +71,25 @@ type Desk struct {
 	keyAt      time.Time          // clock's time of the last key
 	anchor     int                // the star that the user selected, also while it is filtered out
 	works      int                // in flight
+	before     asked              // what held before the user's last question
+}
+
+// asked is what a list is asked by, to be gone back to where it fails.
+type asked struct {
+	filter roster.Filter
+	text   string
+	sort   roster.Sort
+	shown  time.Time
+	live   bool
+}
+
+func (d *Desk) now() asked { return asked{d.filter, d.w.Filter, d.w.Sort, d.w.Shown, d.w.Live} }
+
+// anchors are the actions after which the star that is selected is the user's
+// own choice, though it was never moved to.
+var anchors = map[kit.Action]bool{
+	kit.OpenStar: true, kit.MarkStar: true, kit.CopyLines: true, kit.SortList: true, kit.ReverseSort: true, kit.RankAnew: true, kit.BackToNow: true,
+	kit.MinuteLess: true, kit.MinuteMore: true, kit.TenLess: true, kit.TenMore: true, kit.HourLess: true, kit.HourMore: true, kit.NightLess: true, kit.NightMore: true,
 }
 
 // idleAfter is how long no key must have come before the list puts itself
@@ -82,7 +101,7 @@ func New(src Source, now time.Time) (*Desk, []Task) {
 	d := &Desk{src: src, anchor: -1, entry: entry.New(), screens: []kit.Screen{next.New()}}
 	d.w = kit.World{Look: src.Look, Site: src.Site, Title: src.Title, Demo: src.Demo, Zone: src.Zone, HandOver: src.HandOver,
 		Band: src.Band, Level: src.Level, Fixed: src.Fixed, Selected: -1, Place: -1, Wall: now, Shown: now, Live: true,
-		Marks: map[int]bool{}, Width: 80, Height: 24}
+		Marks: map[int]bool{}, Width: 80, Height: 24, Ticks: src.Every > 0}
 	if !src.Start.IsZero() {
 		d.w.Shown, d.w.Live = src.Start, false
 	}
@@ -124,7 +143,7 @@ func (d *Desk) Key(press string) []Task {
 	d.keyAt = d.w.Wall
 	if d.asking {
 		d.asking = false
-		d.done = press == "y"
+		d.done = press == "y" || press == "ctrl+c"
 		return nil
 	}
 	if press == "ctrl+c" {
@@ -136,8 +155,11 @@ func (d *Desk) Key(press string) []Task {
 	}
 	s := d.up()
 	if !s.Typing() {
+		if anchors[kit.Lookup(s.Title(), press)] && d.w.Selected >= 0 {
+			d.anchor = d.w.Selected
+		}
 		if tasks, obeyed := d.common(kit.Lookup(s.Title(), press)); obeyed {
-			return append(tasks, d.follow()...)
+			return append(append(tasks, d.follow()...), d.catchUp()...)
 		}
 	} else if d.bad {
 		d.message, d.bad = "", false // typing on reads it
@@ -145,7 +167,7 @@ func (d *Desk) Key(press string) []Task {
 	s, job := s.Key(&d.w, press)
 	d.put(s)
 	tasks := d.do(job)
-	return append(tasks, d.follow()...)
+	return append(append(tasks, d.follow()...), d.catchUp()...)
 }
 
 // Paste takes pasted text: it goes to a field or is dropped, never to keys.
@@ -153,7 +175,7 @@ func (d *Desk) Paste(text string) []Task {
 	d.keyAt = d.w.Wall
 	p, ok := d.up().(kit.Paster)
 	if !ok {
-		d.say("pasted text is for fields: a adds a target, / filters", false)
+		d.say(kit.PasteWhere, false)
 		return nil
 	}
 	s, job := p.Paste(&d.w, text)
@@ -276,6 +298,7 @@ func (d *Desk) do(job kit.Job) []Task {
 		return d.find(j)
 	case kit.Rerank:
 		d.say("order of "+d.w.Shown.Format("15:04:05"), false)
+		d.before = d.now()
 		return d.ask(nil)
 	case kit.Step:
 		return d.step(j)
@@ -283,6 +306,7 @@ func (d *Desk) do(job kit.Job) []Task {
 		if !d.w.Live {
 			d.say("back to now", false)
 		}
+		d.before = d.now()
 		d.w.Live, d.w.Shown = true, d.w.Wall
 		return d.ask(nil)
 	case kit.Add:

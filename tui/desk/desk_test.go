@@ -14,6 +14,7 @@ import (
 	"evenfall/astro"
 	corecheck "evenfall/astro/check"
 	"evenfall/targets/moment"
+	"evenfall/targets/roster"
 	"evenfall/tui/check"
 	"evenfall/tui/kit"
 )
@@ -285,7 +286,7 @@ func TestFilterAndSort(t *testing.T) {
 		}
 	}
 	d.Press("/", "ctrl+u").Type("alt>high").See("write a number after >").Press("enter").See("filter not used").Press("esc").Not("filter not used")
-	d.Press("/", "ctrl+u").Type("nosuchstar").Press("enter").See("nothing passes the filter", "0 of 256", "/ changes it")
+	d.Press("/", "ctrl+u").Type("nosuchstar").Press("enter").See("/ changes the filter: nothing passes", "0 of 256")
 	d.Press("j", "k", "G", "d", "enter", "m", "c", "S", "r").See("nothing passes")
 	d.Press("/", "ctrl+u", "esc", "s", "n").See("order name").Press("s", "n").See("order name reversed")
 	for _, letter := range []string{"k", "e", "m", "a", "x", "b", "y", "l", "u", "o", "r", "c", "p", "i", "t"} {
@@ -349,6 +350,14 @@ func TestNewTarget(t *testing.T) {
 	if !strings.Contains(d.Selected(), "Nova X") {
 		t.Errorf("the new target is not selected: %q", d.Selected())
 	}
+	// where it would stand follows the time
+	d.Press("a").Type("Y").Press("tab").Type("5.5 -20.5").See("now at altitude")
+	before := d.Grid().Text()
+	d.Press("esc", "}", "}", "}", "}", "a")
+	if after := d.Grid().Text(); after == before || !strings.Contains(after, "5.50000 -20.50000") {
+		t.Errorf("four hours later:\n%s", after)
+	}
+	d.Press("ctrl+u", "up", "ctrl+u", "esc", "n")
 	d.See("typed in")
 	d.Press("a").Not("Nova X")
 	d.Paste("SN 1\x1b[31m 05 34 31.9 +22 00 52 V=12.5 pm +1 -2\n")
@@ -395,6 +404,68 @@ func TestCopy(t *testing.T) {
 	}
 	src.Copy = func(string) (string, error) { return "", errors.New("no terminal") }
 	check.New(t, src, 100, 24).Press("c").See("not sent", "by hand")
+}
+
+// A star that is opened, marked or looked at through time is the user's own
+// choice, though the cursor was never moved to it.
+func TestOpenedStarStays(t *testing.T) {
+	for _, keys := range [][]string{{"enter", "}", "}", "}"}, {"m", "}", "}", "}", "enter"}, {"}", "}", "}", "n", "enter"}, {"s", "n", "enter"}} {
+		d := check.New(t, check.Source(t, 5), 100, 30)
+		name := strings.Fields(d.Selected())[2]
+		d.Press(keys...)
+		if line := d.Grid().Line(2); !strings.HasPrefix(line, name) {
+			t.Errorf("after %v the screen shows %q, not %s", keys, line, name)
+		}
+		d.Wait(3 * time.Minute)
+		if line := d.Grid().Line(2); !strings.HasPrefix(line, name) {
+			t.Errorf("three minutes after %v the screen shows %q, not %s", keys, line, name)
+		}
+	}
+}
+
+// What fails leaves what is shown with what was asked: order, filter, time.
+func TestGoesBack(t *testing.T) {
+	src := check.Source(t, 64)
+	made := src.Night
+	src.Night = func(d astro.Date) (*moment.Night, error) {
+		if d.Day == 2 {
+			return nil, errors.New("no such night")
+		}
+		return made(d)
+	}
+	check.New(t, src, 80, 24).Press(">").See("no such night", "Wed 2 Dec 04:00:00", "live")
+
+	d := check.New(t, check.Source(t, 4), 80, 24)
+	d.Press("/").Type("kind=wd").Press("enter", "/", "ctrl+u").Type("foo=1").Press("enter").See("filter not used", "! ").Press("esc").See("filter kind=wd")
+	// what may yet become the name of a column is not applied as a word
+	d.Press("/", "ctrl+u")
+	for _, r := range "alt>3" {
+		d.Press(string(r)).Not("0 of").Not("nothing passes")
+	}
+}
+
+// An order that a long list cannot be put into is refused once, and the list
+// goes on following the clock.
+func TestLongList(t *testing.T) {
+	src := check.Source(t, 1)
+	stars := src.Roster
+	var list []roster.Entry
+	for i := range roster.Bulk + 200 {
+		e := *stars.Entry(i % stars.Len())
+		e.Target.Name = fmt.Sprint(e.Target.Name, " ", i)
+		list = append(list, e)
+	}
+	src.Roster = roster.New(list, moment.NewModels(), nil)
+	src.Every = 20 * time.Second
+	d := check.New(t, src, 80, 24)
+	d.See("1/3200").Press("s", "b").See("filter to 3000 or fewer first").Press("esc").Not("filter to").Not("order best")
+	d.Wait(time.Minute).Not("filter to").See("04:01:00")
+	for y := 5; y < 19; y++ {
+		if line := d.Grid().Line(y); len(line) > 80 || !strings.HasPrefix(line[76:], " ") && !strings.Contains(line, "till") {
+			t.Errorf("a row is cut: %q", line)
+		}
+	}
+	d.Press("G").See("3200/3200").Press("g").See("1/3200").Press("/").Type("kind=wd alt>60").Press("enter").See("of 3200").Press("s", "b").See("order best")
 }
 
 // An answer that comes after a later question is dropped, whatever the order.

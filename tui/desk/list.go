@@ -11,6 +11,7 @@ import (
 	"evenfall/astro/timescale"
 	"evenfall/targets/moment"
 	"evenfall/targets/roster"
+	"evenfall/tui/entry"
 	"evenfall/tui/kit"
 )
 
@@ -31,9 +32,13 @@ type brought struct {
 
 // added is a roster with a new target.
 type added struct {
-	roster *roster.Roster
-	row    int
+	base, roster *roster.Roster
+	entry        roster.Entry
+	row          int
 }
+
+// twice says that a new target's name is taken.
+type twice struct{ name string }
 
 // ask makes the task of a new snapshot. A kept order is gone on with; nil is
 // the user's word for a new one.
@@ -95,14 +100,27 @@ func (d *Desk) Apply(result any) []Task {
 				d.screens[i] = s.Apply(&d.w, r.result)
 			}
 		}
+		if r.screen == kit.OnEntry {
+			d.entry = d.entry.Apply(&d.w, r.result)
+		}
 		if f, ok := r.result.(kit.Failed); ok && !errors.Is(f.Err, context.Canceled) {
 			d.say(f.Name+": "+f.Err.Error(), true)
 		}
 	case added:
 		d.works--
+		if r.base != d.src.Roster { // another was added meanwhile
+			return []Task{d.add(r.entry)}
+		}
+		if d.up().Title() == kit.OnEntry {
+			d.close()
+		}
+		d.entry = entry.New()
 		d.src.Roster, d.anchor = r.roster, r.row
 		d.say(r.roster.Entry(r.row).Target.Name+" is in the list, kept for this session", false)
 		return d.ask(nil)
+	case twice:
+		d.works--
+		d.say("name: "+r.name+" is in the list already; give the new one another name", true)
 	case kit.Say:
 		d.say(r.Text, r.Bad)
 	}
@@ -117,8 +135,12 @@ func (d *Desk) arrived(r listed) []Task {
 	d.cancel()
 	d.cancel = nil
 	if r.err != nil {
-		if !errors.Is(r.err, context.Canceled) {
-			d.say(r.err.Error(), true)
+		if errors.Is(r.err, context.Canceled) {
+			return nil
+		}
+		d.say(r.err.Error(), true)
+		if r.user && d.w.Snap != nil { // what is shown belongs to what held before
+			d.filter, d.w.Filter, d.w.Sort, d.w.Shown, d.w.Live = d.before.filter, d.before.text, d.before.sort, d.before.shown, d.before.live
 		}
 		return nil
 	}
@@ -196,6 +218,7 @@ func (d *Desk) find(j kit.Find) []Task {
 		d.say(err.Error(), true)
 		return nil
 	}
+	d.before = d.now()
 	d.filter, d.w.Filter, d.w.Sort = f, j.Filter, j.Sort
 	return d.ask(nil)
 }
@@ -204,7 +227,12 @@ func (d *Desk) find(j kit.Find) []Task {
 func (d *Desk) add(e roster.Entry) Task {
 	d.works++
 	r := d.src.Roster
-	return Task{"adding " + e.Target.Name, func() any { return added{r.With(e), r.Len()} }}
+	return Task{"adding " + e.Target.Name, func() any {
+		if r.Named(e.Target.Name) {
+			return twice{e.Target.Name}
+		}
+		return added{r, r.With(e), e, r.Len()}
+	}}
 }
 
 // clip sends text to the clipboard.
@@ -235,8 +263,26 @@ func (d *Desk) step(j kit.Step) []Task {
 		d.say(err.Error(), true)
 		return nil
 	}
+	d.before = d.now()
 	d.w.Shown, d.w.Live = t, false
 	return d.ask(nil)
+}
+
+// Clock tells the desk the time without asking for anything: before a key, so
+// that it is obeyed at the time it was pressed.
+func (d *Desk) Clock(now time.Time) {
+	d.w.Wall = now
+	if d.w.Live {
+		d.w.Shown = now
+	}
+}
+
+// catchUp has the list follow the clock with keys, where it does not tick.
+func (d *Desk) catchUp() []Task {
+	if d.src.Every > 0 || !d.w.Live || d.src.Fixed || d.cancel != nil || d.w.Snap == nil || d.w.Wall.Sub(d.askedAt) < time.Minute {
+		return nil
+	}
+	return d.ask(d.w.Snap.Order)
 }
 
 // Tick tells the desk the time of the clock, about once a second.

@@ -43,12 +43,15 @@ func (d *Desk) View() string {
 func (d *Desk) status(s kit.Screen, p *kit.Pen) {
 	switch {
 	case d.asking:
-		p.Put(kit.Warn, "something is half typed: leave all the same? y leaves, any other key stays")
+		p.Put(kit.Warn, "y leaves, other keys stay: something is half typed")
 	case s.Prompt(&d.w, p):
 	case d.message != "" && d.bad:
-		const dismiss = "  esc"
-		text := "! " + d.message
-		p.Put(kit.Bad, kit.Cut(text, p.Width()-len(dismiss))).Put(kit.Dim, dismiss)
+		text, rest := "! "+d.message, "  esc"
+		if len(text)+len(rest) > p.Width() {
+			rest = " ...  ? all, esc"
+			text = kit.Wrap(text, p.Width()-len(rest), 0)[0]
+		}
+		p.Put(kit.Bad, text).Put(kit.Dim, rest)
 	case d.message != "":
 		p.Put(kit.Good, d.message)
 	default:

@@ -7,8 +7,8 @@ import (
 	"context"
 	"fmt"
 	"strings"
+	"time"
 
-	"evenfall/targets"
 	"evenfall/targets/moment"
 	"evenfall/targets/roster"
 	"evenfall/targets/table"
@@ -41,6 +41,7 @@ type Screen struct {
 	at     int
 	look   *Look // where it would stand; of what was typed when asked
 	asked  table.Typed
+	minute time.Time // of what was asked
 }
 
 // Look is where a target as typed would stand.
@@ -113,16 +114,8 @@ func (s Screen) finish(w *kit.World) (kit.Screen, kit.Job) {
 			return s, kit.Say{Text: p.Field + ": " + p.Text, Bad: true}
 		}
 	}
-	if w.Snap != nil {
-		for i := range w.Snap.Roster.Len() {
-			if targets.Key(w.Snap.Roster.Entry(i).Target.Name) == targets.Key(t.Name) {
-				s.at = name
-				return s, kit.Say{Text: "name: " + t.Name + " is in the list already; give this one another name", Bad: true}
-			}
-		}
-	}
 	e := roster.Entry{Target: t, Want: moment.Want{Band: w.Band, Level: w.Level, Weight: 1}, Session: true}
-	return New(), kit.All{kit.Add{Entry: e}, kit.Close{}}
+	return s, kit.Add{Entry: e} // emptied once it is in the list
 }
 
 // fieldOf returns the field that a problem is about.
@@ -145,10 +138,14 @@ func fieldOf(column string) int {
 // Refresh asks where the target would stand as soon as it can be used.
 func (s Screen) Refresh(w *kit.World) (kit.Screen, kit.Job) {
 	y := s.typed()
-	if w.Snap == nil || y == s.asked {
+	if w.Snap == nil {
 		return s, nil
 	}
-	s.asked = y
+	minute := w.Snap.Scene.Instant.UTC().Truncate(time.Minute)
+	if y == s.asked && minute.Equal(s.minute) {
+		return s, nil
+	}
+	s.asked, s.minute = y, minute
 	t, problems := y.Target()
 	for _, p := range problems {
 		if !p.Warning {

@@ -3,6 +3,8 @@
 package help
 
 import (
+	"fmt"
+
 	"evenfall/tui/kit"
 )
 
@@ -92,6 +94,13 @@ func (s Screen) text(width int) []line {
 	}
 	if s.of == kit.OnNext {
 		out = append(out, line{key: "in the filter", text: "enter, esc: done   ctrl+u: empty it"})
+		for i, text := range kit.Wrap(kit.SortLetters(0)+"  "+kit.SortLetters(1), width-24, 0) {
+			l := line{text: text}
+			if i == 0 {
+				l.key = "orders after s"
+			}
+			out = append(out, l)
+		}
 	}
 	out = append(out, line{text: "signs", head: true})
 	for _, sign := range signs {
@@ -107,7 +116,11 @@ func (s Screen) View(w *kit.World, width, height int) string {
 	p := kit.NewPen(w.Look, width)
 	text := s.text(width)
 	top := max(min(s.top, len(text)-height), 0)
-	for _, l := range text[top:min(top+height, len(text))] {
+	for i, l := range text[top:min(top+height, len(text))] {
+		if rest := len(text) - top - height; i == height-1 && rest > 0 {
+			p.Put(kit.Key, fmt.Sprintf("  j for %d more lines", rest+1)).Line()
+			break
+		}
 		switch {
 		case l.head:
 			p.Put(kit.Title, l.text)

@@ -93,8 +93,8 @@ func (f Field) Show(p *Pen, active bool) {
 		return
 	}
 	from := 0
-	if room := p.Width() - p.Used() - 2; f.at > room { // keep the sign on the line
-		from = f.at - room
+	for room := p.Width() - p.Used() - 2; from < f.at && width(string(f.text[from:f.at])) > room; { // keep the sign on the line
+		from++
 	}
 	p.Put(Selected, string(f.text[from:f.at])).Put(Key, "_").Put(Selected, string(f.text[f.at:]))
 }

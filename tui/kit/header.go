@@ -56,6 +56,8 @@ func clockLine(w *World, p *Pen, alone bool) {
 	switch {
 	case w.Live && w.Fixed:
 		p.Put(Warn, "  clock stopped by --at")
+	case w.Live && !w.Ticks:
+		p.Put(Text, "  at the last key")
 	case w.Live:
 		p.Put(Text, "  live")
 	default:

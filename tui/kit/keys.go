@@ -144,7 +144,7 @@ func Footer(screen string, width int) string {
 			return text
 		}
 	}
-	return ""
+	return Cut(strings.Join(parts, "  "), width)
 }
 
 var footers = func() map[string][]string {
@@ -205,4 +205,14 @@ func SortLetters(line int) string {
 		parts = append(parts, s.letter+" "+s.word)
 	}
 	return strings.Join(parts, "  ")
+}
+
+// SortLettersAlone writes the letters without their words, for narrow
+// screens.
+func SortLettersAlone() string {
+	var parts []string
+	for _, s := range sortLetters {
+		parts = append(parts, s.letter)
+	}
+	return strings.Join(parts, " ")
 }

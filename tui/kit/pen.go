@@ -129,15 +129,6 @@ func Cut(s string, columns int) string {
 	return ansi.Truncate(s, columns, "")
 }
 
-// Fit cuts or pads a text to exactly a number of columns.
-func Fit(s string, columns int) string {
-	s = Cut(s, columns)
-	if n := columns - width(s); n > 0 {
-		return s + blanks(n)
-	}
-	return s
-}
-
 const someBlanks = "                                                                                "
 
 func blanks(n int) string {

@@ -36,8 +36,8 @@ type World struct {
 	Band     targets.Band
 	Level    float64
 	Width    int
-	Height   int // of the whole screen
-	Busy     string
+	Height   int  // of the whole screen
+	Ticks    bool // the clock goes on by itself, not only with keys
 }
 
 // Entry returns the selected target; nil: there is none.
@@ -75,7 +75,8 @@ type Screen interface {
 	Apply(w *World, r Result) Screen
 	// View draws it into width columns and height lines.
 	View(w *World, width, height int) string
-	// Prompt is what the status line says instead of its own text; "" nothing.
+	// Prompt writes what the status line says instead of its own text; false:
+	// nothing.
 	Prompt(w *World, p *Pen) bool
 }
 
@@ -92,6 +93,9 @@ type Shows interface {
 
 // Draft is a screen that may hold something half typed.
 type Draft interface{ HalfTyped() bool }
+
+// PasteWhere says what pasted text is for.
+const PasteWhere = "pasted text is for fields: a adds a target, / filters"
 
 // Job is what a key asks of the program beyond its own screen.
 type Job any

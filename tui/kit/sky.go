@@ -123,10 +123,14 @@ func hourMarks(s astro.Span, columns int) []rune {
 
 // unlabel takes away an hour that the mark of the moment shown would cover.
 func unlabel(hours []rune, now int) {
-	for i := max(now-1, 0); i < len(hours) && i <= now+1; i++ {
-		if hours[i] != 0 && (i == now || i == now-1 && (i == 0 || hours[i-1] == 0) || i == now+1 && hours[now] != 0) {
-			hours[i] = 0
+	for i := 0; i+1 < len(hours); i++ {
+		if hours[i] == 0 {
+			continue
 		}
+		if now == i || now == i+1 {
+			hours[i], hours[i+1] = 0, 0
+		}
+		i++ // an hour has two figures
 	}
 }
 
@@ -135,7 +139,11 @@ func unlabel(hours []rune, now int) {
 func HourLine(p *Pen, s astro.Span, columns int, at astro.Instant) {
 	from := p.Used()
 	now, shown := Column(s, columns, at)
-	for i, r := range hourMarks(s, columns) {
+	hours := hourMarks(s, columns)
+	if shown {
+		unlabel(hours, now)
+	}
+	for i, r := range hours {
 		switch {
 		case shown && i == now:
 			p.Put(Selected, "^")

@@ -22,6 +22,7 @@ type Screen struct {
 	top   int // place in the order of the first row shown
 	mode  mode
 	field kit.Field
+	was   string // the filter as it was before typing
 	wrong string // what is wrong with the filter as typed
 }
 
@@ -69,7 +70,7 @@ func (s Screen) Key(w *kit.World, press string) (kit.Screen, kit.Job) {
 		}
 		return s, kit.Open{Screen: kit.OnStar}
 	case kit.FilterList:
-		s.mode, s.field = filtering, kit.NewField(w.Filter)
+		s.mode, s.field, s.was = filtering, kit.NewField(w.Filter), w.Filter
 	case kit.SortList:
 		s.mode = sorting
 	case kit.ReverseSort:
@@ -123,7 +124,10 @@ func (s Screen) filterKey(w *kit.World, press string) (kit.Screen, kit.Job) {
 		if s.wrong != "" {
 			wrong := s.wrong
 			s.wrong = ""
-			return s, kit.Say{Text: "filter not used: " + wrong, Bad: true}
+			return s, kit.All{kit.Find{Filter: s.was, Sort: w.Sort}, kit.Say{Text: "filter not used: " + wrong, Bad: true}}
+		}
+		if w.Filter != s.field.String() {
+			return s, kit.Find{Filter: s.field.String(), Sort: w.Sort}
 		}
 		return s, nil
 	}
@@ -145,14 +149,18 @@ func (s Screen) typed(w *kit.World, field kit.Field) (kit.Screen, kit.Job) {
 		s.wrong = err.Error()
 		return s, nil
 	}
+	line := roster.Settled(field.String())
+	if line == w.Filter {
+		return s, nil
+	}
 	s.top = 0
-	return s, kit.Find{Filter: field.String(), Sort: w.Sort}
+	return s, kit.Find{Filter: line, Sort: w.Sort}
 }
 
 // Paste puts text into the filter; elsewhere in the list it is dropped.
 func (s Screen) Paste(w *kit.World, text string) (kit.Screen, kit.Job) {
 	if s.mode != filtering {
-		return s, kit.Say{Text: "pasted text is for fields: a adds a target, / filters"}
+		return s, kit.Say{Text: kit.PasteWhere}
 	}
 	return s.typed(w, s.field.Insert(text))
 }
@@ -203,6 +211,10 @@ func (s Screen) Prompt(w *kit.World, p *kit.Pen) bool {
 		}
 		return true
 	case sorting:
+		if p.Width() < withBest {
+			p.Put(kit.Key, "by ").Put(kit.Text, kit.SortLettersAlone()) // help has the words
+			return true
+		}
 		p.Put(kit.Key, "order by  ").Put(kit.Text, kit.SortLetters(0))
 		return true
 	}

@@ -27,9 +27,12 @@ func reasons(w *kit.World, p *kit.Pen, lines int) {
 		p.Put(kit.Title, e.Target.Name).Put(kit.Dim, "  working it out ...").Line()
 		return
 	}
-	p.Put(kit.Text, counts(w)).Put(kit.Title, e.Target.Name).
-		Put(kit.Text, "  "+string(e.Target.Kind)+"  ICRS "+m.RA.HMS(2)+" "+m.Dec.DMS(1)).Put(kit.Warn, flags(w, m)).Line()
-	for _, clauses := range [][]string{why(m), whatItIs(m), brightness(m)} {
+	p.Put(kit.Text, counts(w)).Put(kit.Title, e.Target.Name).Put(kit.Text, "  "+string(e.Target.Kind))
+	if place := "  ICRS " + m.RA.HMS(2) + " " + m.Dec.DMS(1); p.Used()+len(place) <= p.Width() {
+		p.Put(kit.Text, place) // never half a coordinate
+	}
+	p.Put(kit.Warn, flags(w, m)).Line()
+	for _, clauses := range [][]string{why(w, m), whatItIs(m), brightness(m)} {
 		room := lines - (p.Lines() - from)
 		if room <= 0 {
 			return
@@ -107,15 +110,17 @@ func flags(w *kit.World, m *moment.Moment) string {
 }
 
 // why says why the star stands where it stands, the main clause first.
-func why(m *moment.Moment) []string {
+func why(w *kit.World, m *moment.Moment) []string {
 	end := fmt.Sprintf("until %s (%s)", kit.Clock(m.Window.Until), limit(m))
 	switch {
 	case !m.InCan:
 		return blocked(m)
 	case !m.InShould:
 		return []string{"Outside the wishes (" + unwished(m) + "), possible " + end}
+	case m.Rank == 1 && w.Snap.Take == 1:
+		end = "The only one now, " + end
 	case m.Rank == 1:
-		end = fmt.Sprintf("First: its window closes first, at %s (%s)", kit.Clock(m.Window.Until), limit(m))
+		end = fmt.Sprintf("First: no window closes sooner, %s (%s)", kit.Clock(m.Window.Until), limit(m))
 	default:
 		end = "Can wait " + end
 	}

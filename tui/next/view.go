@@ -94,9 +94,9 @@ func empty(w *kit.World, p *kit.Pen) {
 	switch {
 	case w.Snap == nil:
 	case w.Snap.Total == 0:
-		text = "the list is empty: put a table of targets into the run's folder targets, or type one: a"
+		text = "the list is empty: a types a target; lists go into the run's folder targets, or come with --targets"
 	case w.Filter != "":
-		text = "nothing passes the filter " + strconv.Quote(w.Filter) + "; / changes it"
+		text = "/ changes the filter: nothing passes " + strconv.Quote(w.Filter)
 	}
 	for _, line := range kit.Wrap(text, p.Width(), 2) {
 		p.Put(kit.Dim, line).Line()
@@ -146,7 +146,7 @@ type columns struct {
 
 func (l layout) columns() columns {
 	c := columns{name: 4 + l.rank}
-	at := c.name + nameWidth + 1
+	at := c.name + nameWidth - (l.rank - 3) + 1
 	if l.width < withStage {
 		at = c.name + narrowName + 1
 	}

@@ -189,7 +189,7 @@ func (w *writer) night(m *moment.Moment) {
 }
 
 func (w *writer) sky(m *moment.Moment) {
-	w.head("in the sky at that moment")
+	w.head("in the sky at " + m.At.UTC().Format("15:04:05"))
 	w.say("altitude %.1f deg (refracted), azimuth %.1f deg (north 0, east 90), hour angle %+.2f h, parallactic angle %+.0f deg",
 		m.Apparent.Deg(), m.Place.Az.Deg(), m.Place.HourAngle.Hours(), m.Place.Parallact.Deg())
 	w.say("%.1f deg from the Moon, %.1f deg from the Sun", m.MoonSep.Deg(), m.SunSep.Deg())

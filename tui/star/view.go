@@ -109,16 +109,22 @@ func summary(w *kit.World, p *kit.Pen, d *Detail) {
 		p.Put(kit.Mark, "* ")
 	}
 	p.Put(kit.Good, strings.Join(strings.Fields(kit.StageWord(&m.Stage)), " ")+" %")
-	p.Put(kit.Text, "  "+strings.TrimSpace(kit.ExpectWord(&m.Expect)))
+	items := []string{"left " + kit.Left(m.Left), fmt.Sprintf("alt %.0f%s", m.Apparent.Deg(), kit.Sense(m.Rising)),
+		strings.TrimSpace(kit.ExpectWord(&m.Expect)), fmt.Sprintf("X %.2f", float64(m.Airmass)), fmt.Sprintf("Moon %.0f", m.MoonSep.Deg())}
 	if !m.InCan {
-		p.Put(kit.Warn, "  "+kit.BlockedWord(m)).Line()
-		return
+		items = []string{kit.BlockedWord(m), strings.TrimSpace(kit.ExpectWord(&m.Expect))}
 	}
-	p.Put(kit.Text, fmt.Sprintf("  alt %.1f%s", m.Apparent.Deg(), kit.Sense(m.Rising)))
-	if m.AirOK {
-		p.Put(kit.Text, fmt.Sprintf(" X %.2f", float64(m.Airmass)))
+	for i, item := range items { // whole ones, what decides first
+		if p.Used()+2+len(item) > p.Width() {
+			continue
+		}
+		role := kit.Text
+		if i == 0 && !m.InCan {
+			role = kit.Warn
+		}
+		p.Put(role, "  "+item)
 	}
-	p.Put(kit.Text, fmt.Sprintf("  left %s  Moon %.0f", kit.Left(m.Left), m.MoonSep.Deg())).Line()
+	p.Line()
 }
 
 // lowestAirmass and highestAirmass are the ends of the lane: 1 at the top.

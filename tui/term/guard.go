@@ -60,7 +60,8 @@ type Guard struct {
 	mode      *xterm.State
 	signals   chan os.Signal
 	stop      chan struct{}
-	ended     atomic.Int32 // the signal; 0 none
+	stopped   chan struct{} // closed when nobody listens any more
+	ended     atomic.Int32  // the signal; 0 none
 	suspended atomic.Bool
 	once      sync.Once
 }
@@ -68,7 +69,7 @@ type Guard struct {
 // Watch starts a guard. The terminal's mode as it is now is what it will put
 // back.
 func Watch(g Guarded) *Guard {
-	w := &Guard{g: g, signals: make(chan os.Signal, 8), stop: make(chan struct{})}
+	w := &Guard{g: g, signals: make(chan os.Signal, 8), stop: make(chan struct{}), stopped: make(chan struct{})}
 	if mode, err := xterm.GetState(g.Terminal.Fd()); err == nil {
 		w.mode = mode
 	}
@@ -78,6 +79,7 @@ func Watch(g Guarded) *Guard {
 }
 
 func (w *Guard) listen() {
+	defer close(w.stopped)
 	orphan := time.NewTicker(orphanEvery)
 	defer orphan.Stop()
 	for {
@@ -196,6 +198,7 @@ func parent(pid int) int {
 func (w *Guard) Stop() error {
 	signal.Stop(w.signals)
 	close(w.stop)
+	<-w.stopped
 	if n := w.ended.Load(); n != 0 {
 		w.restore()
 		return Signalled{int(n)}
