@@ -172,14 +172,17 @@ func (s *session) listCSV(w io.Writer) error {
 	return c.Error()
 }
 
-func csvRow(e *jsonTarget, m *moment.Moment) []string {
-	num := func(v float64) string { return strconv.FormatFloat(v, 'f', -1, 64) }
-	opt := func(v *float64) string {
-		if v == nil {
-			return ""
-		}
-		return num(*v)
+func num(v float64) string { return strconv.FormatFloat(v, 'f', -1, 64) }
+
+// opt writes a number, nothing where there is none.
+func opt(v *float64) string {
+	if v == nil {
+		return ""
 	}
+	return num(*v)
+}
+
+func csvRow(e *jsonTarget, m *moment.Moment) []string {
 	rank, window, codes, open := "", "", []string{}, ""
 	if e.Rank != nil {
 		rank = strconv.Itoa(*e.Rank)

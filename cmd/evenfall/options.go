@@ -27,6 +27,7 @@ type options struct {
 	sort               string
 	theme, glyphs      string
 	tick               string
+	observer           string
 	handover           bool
 	latSet, lonSet     bool
 	elevSet, formatSet bool

@@ -7,6 +7,7 @@ import (
 	"io/fs"
 	"os"
 	"path/filepath"
+	"slices"
 	"strings"
 	"time"
 
@@ -153,6 +154,13 @@ func openSession(w world, o *options) (*session, error) {
 	if site.run != nil {
 		s.limits = site.run.Config.Limits
 		s.targets, s.requests, s.magnitudes = site.run.Targets, site.run.Requests, site.run.Magnitudes
+	}
+	if s.dir != "" {
+		list, mags, err := bookTargets(s.dir)
+		if err != nil {
+			return nil, err
+		}
+		s.targets, s.magnitudes = slices.Concat(s.targets, list), slices.Concat(s.magnitudes, mags)
 	}
 	if err := s.readLists(w, o); err != nil {
 		return nil, err

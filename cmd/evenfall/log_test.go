@@ -1,0 +1,345 @@
+package main
+
+import (
+	"bytes"
+	"context"
+	"encoding/json"
+	"fmt"
+	"os"
+	"os/exec"
+	"path/filepath"
+	"reflect"
+	"strconv"
+	"strings"
+	"sync"
+	"testing"
+	"time"
+
+	"evenfall/astro/clock"
+	"evenfall/targets/store"
+)
+
+// runFolder makes a run folder.
+func runFolder(t *testing.T) string {
+	t.Helper()
+	dir := filepath.Join(t.TempDir(), "run")
+	if status, out, err := called(t, "new", dir); status != exitDone {
+		t.Fatal(out, err)
+	}
+	return dir
+}
+
+// called runs one call and returns its exit status, output and errors.
+func called(t *testing.T, args ...string) (int, string, string) {
+	t.Helper()
+	var out, errs bytes.Buffer
+	w := world{in: strings.NewReader(""), out: &out, err: &errs, clock: clock.Fixed{At: time.Date(2026, 12, 2, 7, 0, 0, 0, time.UTC)}}
+	status := execute(w, args)
+	return status, out.String(), errs.String()
+}
+
+func entries(t *testing.T, dir string, more ...string) []jsonEntry {
+	t.Helper()
+	status, out, errs := called(t, append([]string{"log", "--run", dir, "--format", "json"}, more...)...)
+	var got jsonLog
+	if err := json.Unmarshal([]byte(out), &got); status != exitDone || err != nil {
+		t.Fatal(status, err, out, errs)
+	}
+	return got.Entries
+}
+
+// What log add is given comes back from log --format json, exactly.
+func TestLogRoundTrip(t *testing.T) {
+	dir := runFolder(t)
+	for i, c := range []struct {
+		args string
+		want jsonEntry
+	}{
+		{"--target|R Lep|--start|2026-12-02T04:10:00.25Z|--end|2026-12-02T04:16:00Z|--frames|3|--each|90.5|--files|obs0042..obs0044|--band|V|--snr|55.5|--seeing|1.25|--grade|good|--note|a \"note\", with ü",
+			jsonEntry{Type: "science", Target: "R Lep", Start: "2026-12-02T04:10:00.25Z", End: "2026-12-02T04:16:00Z", Mid: "2026-12-02T04:13:00.125Z", Frames: 3, EachS: ref(90.5), FileFirst: "obs0042", FileLast: "obs0044",
+				Band: "V", SNR: ref(55.5), Seeing: ref(1.25), Grade: "good", Note: "a \"note\", with ü"}},
+		{"--request|r-lep-v|--start|2026-12-02T05:00:00Z|--end|2026-12-02T05:10:00Z|--measured|8.1|--clock-offset|-0.4|--observer|observer 2",
+			jsonEntry{Type: "science", Request: "r-lep-v", Target: "R Lep", Start: "2026-12-02T05:00:00Z", End: "2026-12-02T05:10:00Z", Mid: "2026-12-02T05:05:00Z", Measured: ref(8.1), ClockOffset: ref(-0.4), Observer: "observer 2"}},
+		{"--type|flat|--start|2026-12-01T23:40:00Z|--frames|11|--slit|1.2|--pa|90|--extinction|0.3|--reason|other",
+			jsonEntry{Type: "flat", Start: "2026-12-01T23:40:00Z", Mid: "2026-12-01T23:40:00Z", Frames: 11, Slit: ref(1.2), PA: ref(90), Extinction: ref(0.3), Reason: "other"}},
+	} {
+		status, out, errs := called(t, append([]string{"log", "add", "--run", dir}, strings.Split(c.args, "|")...)...)
+		id, err := strconv.ParseInt(strings.TrimSuffix(out, "\n"), 10, 64)
+		if status != exitDone || err != nil || id != int64(i+1) {
+			t.Fatalf("%s: status %d, %q, %s", c.args, status, out, errs)
+		}
+		var got *jsonEntry
+		for _, e := range entries(t, dir) {
+			if e.ID == id {
+				got = &e
+			}
+		}
+		if got == nil {
+			t.Fatalf("entry %d is not in the log", id)
+		}
+		if got.Target != "" && (got.AirmassMid == nil || got.MidBJD == nil || got.MoonSep == nil) {
+			t.Errorf("what follows from time and target is not filled: %+v", got)
+		}
+		want := c.want
+		want.ID, want.Entered = id, "2026-12-02T07:00:00Z"
+		got.AirmassStart, got.AirmassMid, got.AirmassEnd, got.MidBJD, got.MoonAlt, got.MoonSep, got.MoonLit, got.Expect = nil, nil, nil, nil, nil, nil, nil, nil
+		if c.want.Request != "" { // filled from requests.csv
+			want.Programme, want.Instrument, want.Mode, want.Band = got.Programme, got.Instrument, got.Mode, got.Band
+		}
+		if !reflect.DeepEqual(*got, want) {
+			t.Errorf("%s\ngot  %+v\nwant %+v", c.args, *got, want)
+		}
+	}
+	if _, out, _ := called(t, "log", "--run", dir); !strings.Contains(out, "2 of 1 visits") || !strings.Contains(out, "obs0042..obs0044") {
+		t.Errorf("as text:\n%s", out)
+	}
+	if _, out, _ := called(t, "log", "--run", dir, "--format", "csv"); strings.Count(out, "\n") != 4 {
+		t.Errorf("as CSV:\n%s", out)
+	}
+	if n := len(entries(t, dir, "--night", "2026-12-01")); n != 3 {
+		t.Errorf("%d entries in the night", n)
+	}
+	if n := len(entries(t, dir, "--night", "2026-12-03")); n != 0 {
+		t.Errorf("%d entries in another night", n)
+	}
+}
+
+func ref(v float64) *float64 { return &v }
+
+// Amended and void entries stay in the history; closures, notes, conditions
+// and magnitudes are written and have their effect.
+func TestLogCommands(t *testing.T) {
+	dir := runFolder(t)
+	must := func(args ...string) string {
+		t.Helper()
+		status, out, errs := called(t, append(args, "--run", dir)...)
+		if status != exitDone {
+			t.Fatalf("%v: %d %s", args, status, errs)
+		}
+		return strings.TrimSpace(out)
+	}
+	one := must("log", "add", "--target", "R Lep", "--start", "2026-12-02T04:10:00Z", "--observer", "observer 1")
+	two := must("log", "amend", one, "--frames", "4")
+	must("log", "void", two, "--note", "wrong star")
+	must("log", "note", "fog from the west")
+	must("log", "closed", "--start", "2026-12-02T05:00:00Z", "--reason", "weather")
+	must("log", "open", "--start", "2026-12-02T06:10:00Z")
+	status, _, errs := called(t, "log", "conditions", "--run", dir, "--humidity", "0.9", "--seeing", "1.4")
+	if status != exitDone || !strings.Contains(errs, "humidity 90 %") {
+		t.Errorf("status %d, %q", status, errs)
+	}
+	must("log", "magnitude", "--target", "R Lep", "--band", "V", "--mag", "8.4", "--utc", "2026-12-01T05:00:00Z")
+	now := entries(t, dir)
+	if len(now) != 5 || len(entries(t, dir, "--history")) != 8 {
+		t.Errorf("%d entries, %d in all", len(now), len(entries(t, dir, "--history")))
+	}
+	for _, e := range now {
+		if e.Type == "closed" && e.End != "2026-12-02T06:10:00Z" {
+			t.Errorf("closed until %q", e.End)
+		}
+		if e.Type == "science" && (!e.Void || e.Frames != 4 || e.Observer != "observer 1") {
+			t.Errorf("%+v", e)
+		}
+	}
+	if out := must("show", "R Lep", "--at", "2026-12-02T04:00:00Z"); !strings.Contains(out, "8.4") {
+		t.Error("the magnitude entered is not heeded")
+	}
+	for args, want := range map[string]string{
+		"log add --target Nonesuch --start 2026-12-02T04:10:00Z":                   "give --ra and --dec",
+		"log add --target R_Lep":                                                   "needs the time",
+		"log add --target R_Lep --start noon":                                      "not a time",
+		"log add --start 2026-12-02T04:10:00Z":                                     "needs a target",
+		"log add --request nonesuch --start 2026-12-02T04:10:00Z":                  "no such request",
+		"log add --target R_Lep --start 2026-12-02T04:10:00Z --grade lovely":       "use one of",
+		"log add --target R_Lep --start 2026-12-02T04:10:00Z --files a..":          "FIRST..LAST",
+		"log add --target R_Lep --start 2026-12-02T04:10:00Z --instrument nothing": "run.toml",
+		"log add --target x --ra 99 --dec high --start 2026-12-02T04:10:00Z":       "--ra",
+		"log amend 999 --frames 2":                                                 "no such entry",
+		"log void one":                                                             "not the number",
+		"log conditions":                                                           "say nothing",
+		"log magnitude --target R_Lep":                                             "--band and --mag",
+		"export nonesuch":                                                          "no table",
+		"export --format csv":                                                      "one table",
+		"import nonesuch.json":                                                     "no such file",
+	} {
+		status, _, errs := called(t, append(strings.Fields(args), "--run", dir)...)
+		if status != exitUsage || !strings.Contains(errs, want) {
+			t.Errorf("%s: status %d, %q", args, status, errs)
+		}
+	}
+	if status, _, errs := called(t, "log", "add", "--lat", "1", "--lon", "1"); status != exitUsage || !strings.Contains(errs, "run folder") {
+		t.Errorf("%d, %q", status, errs)
+	}
+	must("log", "add", "--target", "Nova X", "--ra", "10 23 45", "--dec=-47 12 33", "--start", "2026-12-02T04:10:00Z")
+}
+
+// An export comes into a new run folder and exports the same.
+func TestExportImport(t *testing.T) {
+	dir, other := runFolder(t), filepath.Join(t.TempDir(), "other")
+	called(t, "new", other)
+	called(t, "log", "add", "--run", dir, "--target", "R Lep", "--start", "2026-12-02T04:10:00Z")
+	called(t, "log", "conditions", "--run", dir, "--seeing", "1.4")
+	_, out, _ := called(t, "export", "--run", dir)
+	file := filepath.Join(t.TempDir(), "run.json")
+	if err := os.WriteFile(file, []byte(out), 0o644); err != nil {
+		t.Fatal(err)
+	}
+	if status, _, errs := called(t, "import", file, "--run", other); status != exitDone || !strings.Contains(errs, "3 rows") {
+		t.Errorf("%d, %s", status, errs)
+	}
+	if _, again, _ := called(t, "export", "--run", other); again != out {
+		t.Errorf("%s\n%s", out, again)
+	}
+	os.WriteFile(file, []byte(strings.Replace(out, "R Lep", "R Leo", 1)), 0o644)
+	if status, _, errs := called(t, "import", file, "--run", other); status != exitRefused || !strings.Contains(errs, "nothing was taken in") {
+		t.Errorf("%d, %s", status, errs)
+	}
+}
+
+// writer runs the built program's log add again and again until it is killed,
+// and gathers the numbers that were acknowledged.
+type writer struct {
+	mu    sync.Mutex
+	acked map[int64]string
+}
+
+func (x *writer) run(ctx context.Context, bin, dir, name string, n int) {
+	for i := range n {
+		note := fmt.Sprintf("%s %d", name, i)
+		cmd := exec.CommandContext(ctx, bin, "log", "note", note, "--run", dir)
+		out, err := cmd.Output()
+		// what was printed before the kill counts: the number is only printed
+		// once the entry is on the disk
+		if id, bad := strconv.ParseInt(strings.TrimSpace(string(out)), 10, 64); bad == nil {
+			x.mu.Lock()
+			x.acked[id] = note
+			x.mu.Unlock()
+		}
+		if err != nil && ctx.Err() != nil {
+			return
+		}
+	}
+}
+
+func (x *writer) verify(t *testing.T, dir string) {
+	t.Helper()
+	db, err := store.Open(filepath.Join(dir, "run.db"))
+	if err != nil {
+		t.Fatalf("unreadable: %v", err)
+	}
+	defer db.Close()
+	if err := db.Check(context.Background()); err != nil {
+		t.Fatalf("unsound: %v", err)
+	}
+	rows, err := db.Select(context.Background(), store.Entries, "")
+	if err != nil {
+		t.Fatal(err)
+	}
+	there := map[int64]string{}
+	for _, r := range rows {
+		there[r.Int("id")] = r.Text("note")
+	}
+	lost := 0
+	for id, note := range x.acked {
+		if there[id] != note {
+			lost++
+		}
+	}
+	if lost > 0 {
+		t.Errorf("%d of %d acknowledged entries are lost", lost, len(x.acked))
+	}
+	t.Logf("%d acknowledged, %d there", len(x.acked), len(rows))
+}
+
+// Killed at random moments while it writes, the program loses no entry that
+// it acknowledged, and the database stays sound. EVENFALL_KILLS sets how often
+// (50).
+func TestKill(t *testing.T) {
+	bin, dir := built(t), runFolder(t)
+	kills := 50
+	if n, err := strconv.Atoi(os.Getenv("EVENFALL_KILLS")); err == nil {
+		kills = n
+	}
+	x := &writer{acked: map[int64]string{}}
+	for k := range kills {
+		ctx, cancel := context.WithTimeout(context.Background(), time.Duration(20+(k*37)%180)*time.Millisecond)
+		x.run(ctx, bin, dir, fmt.Sprint("kill ", k), 1000)
+		cancel()
+		if k%10 == 9 {
+			x.verify(t, dir)
+		}
+	}
+	x.verify(t, dir)
+	if len(x.acked) == 0 {
+		t.Error("nothing was ever acknowledged")
+	}
+}
+
+// Two writers at once, processes of their own: all there, none twice.
+func TestTwoProcesses(t *testing.T) {
+	bin, dir := built(t), runFolder(t)
+	x := &writer{acked: map[int64]string{}}
+	var wg sync.WaitGroup
+	const each = 40
+	for _, name := range []string{"observer 1", "observer 2"} {
+		wg.Add(1)
+		go func() {
+			defer wg.Done()
+			x.run(context.Background(), bin, dir, name, each)
+		}()
+	}
+	wg.Wait()
+	if len(x.acked) != 2*each {
+		t.Errorf("%d acknowledged of %d", len(x.acked), 2*each)
+	}
+	x.verify(t, dir)
+}
+
+// A full disk, a limit on the size of files and a read-only folder are said
+// in words, with exit status 3, and what was there is still there.
+func TestDiskTrouble(t *testing.T) {
+	bin := built(t)
+	dir := runFolder(t)
+	called(t, "log", "note", "before", "--run", dir)
+	// no file may grow beyond what it is: as on a full disk
+	cmd := exec.Command("sh", "-c", "ulimit -f 1; trap '' XFSZ; "+bin+" log note after --run '"+dir+"'")
+	out, err := cmd.CombinedOutput()
+	if code := cmd.ProcessState.ExitCode(); err == nil || code != exitFailure || !strings.Contains(string(out), "disk") {
+		t.Errorf("a full disk: status %d, %.300s", code, out)
+	}
+	if n := len(entries(t, dir)); n != 1 {
+		t.Errorf("%d entries after a full disk", n)
+	}
+	if os.Getuid() == 0 {
+		if exec.Command("mount", "-t", "tmpfs", "-o", "size=1m", "tmpfs", dir+"/targets").Run() == nil {
+			defer exec.Command("umount", dir+"/targets").Run()
+			small := filepath.Join(dir, "targets", "small")
+			called(t, "new", small)
+			failed := false
+			for i := 0; i < 400 && !failed; i++ {
+				status, _, errs := called(t, "log", "note", strings.Repeat("y", 5000), "--run", small)
+				if status != exitDone {
+					failed = true
+					if status != exitFailure || !strings.Contains(errs, "the disk is full") {
+						t.Errorf("a full disk: status %d, %s", status, errs)
+					}
+				}
+			}
+			if !failed {
+				t.Error("a disk of 1 MB took 2 MB")
+			}
+			called(t, "log", "--run", small)
+			if exec.Command("mount", "-o", "remount,ro", dir+"/targets").Run() == nil {
+				if status, _, errs := called(t, "log", "note", "z", "--run", small); status != exitFailure || !strings.Contains(errs, "cannot be written") {
+					t.Errorf("read-only: status %d, %s", status, errs)
+				}
+				if status, out, errs := called(t, "log", "--run", small); status != exitDone || !strings.Contains(out, "yyyy") {
+					t.Errorf("reading a read-only log: status %d, %s", status, errs)
+				}
+				exec.Command("mount", "-o", "remount,rw", dir+"/targets").Run()
+			}
+		} else {
+			t.Log("no small disk could be mounted here")
+		}
+	}
+}
