@@ -5,6 +5,7 @@ package tui
 
 import (
 	"fmt"
+	"io"
 	"os"
 	"runtime/debug"
 	"time"
@@ -134,6 +135,18 @@ func (m *model) commands(tasks []desk.Task) tea.Cmd {
 	return tea.Batch(list...)
 }
 
+// ring rings the terminal's bell where there is something to ring for.
+func (m *model) ring() tea.Cmd {
+	if !m.desk.Rings() {
+		return nil
+	}
+	out := m.o.Out
+	return func() tea.Msg {
+		io.WriteString(out, "\a")
+		return nil
+	}
+}
+
 // settleAfter is how long sizes are gathered before the screen is laid out
 // anew: each resize repaints everything.
 const settleAfter = 50 * time.Millisecond
@@ -170,7 +183,7 @@ func (m *model) Update(msg tea.Msg) (_ tea.Model, cmd tea.Cmd) {
 		m.settling = false
 		return m, m.commands(m.desk.Resize(m.size.Width, m.size.Height))
 	case tick:
-		return m, tea.Batch(m.commands(m.desk.Tick(m.o.Clock.Now())), m.nextTick())
+		return m, tea.Batch(m.commands(m.desk.Tick(m.o.Clock.Now())), m.nextTick(), m.ring())
 	case ack:
 		m.pace.arrived()
 	case lookover:

@@ -3,7 +3,10 @@
 // night can be played ahead of time.
 package clock
 
-import "time"
+import (
+	"fmt"
+	"time"
+)
 
 // Clock tells the time.
 type Clock interface{ Now() time.Time }
@@ -28,3 +31,14 @@ type Shifted struct {
 
 // Now returns the shifted time.
 func (s Shifted) Now() time.Time { return s.Of.Now().Add(s.By) }
+
+// DisciplineWords says in words whether the clock is kept right.
+func DisciplineWords(ok bool, withinS float64) string {
+	switch {
+	case !ok:
+		return "clock not checked"
+	case withinS < 0.1:
+		return fmt.Sprintf("clock disciplined, within %.0f ms", 1000*withinS)
+	}
+	return fmt.Sprintf("clock disciplined, within %.1f s", withinS)
+}

@@ -58,8 +58,10 @@ var layers = map[string][]string{
 	"tui/entry":       {"tui/kit", "targets/...", "astro/..."},
 	"tui/plain":       {"tui/kit", "targets/...", "astro/..."},
 	"tui/help":        {"tui/kit", "targets/...", "astro/..."},
+	"tui/log":         {"tui/kit", "targets/...", "astro/..."},
+	"tui/weather":     {"tui/kit", "targets/...", "astro/..."},
 	"tui/check":       {"tui/desk", "tui/kit", "targets/...", "astro/..."},
-	"tui/desk":        {"tui/kit", "tui/next", "tui/star", "tui/entry", "tui/plain", "tui/help", "targets/...", "astro/..."},
+	"tui/desk":        {"tui/kit", "tui/next", "tui/star", "tui/entry", "tui/plain", "tui/help", "tui/log", "tui/weather", "targets/...", "astro/..."},
 	"cmd/evenfall":    {"tui/...", "targets/...", "astro/..."},
 }
 
@@ -76,7 +78,7 @@ var fences = []struct {
 	{regexp.MustCompile(`^github\.com/charmbracelet/lipgloss`), []string{"tui/early", "tui/kit"}},
 	{regexp.MustCompile(`^github\.com/(charmbracelet/x/ansi|muesli/termenv)`), []string{"tui/kit", "tui/check"}},
 	{regexp.MustCompile(`^github\.com/charmbracelet/x/vt`), []string{"tui/check"}},
-	{regexp.MustCompile(`^golang\.org/x/sys/`), []string{"tui/term", "targets/store"}},
+	{regexp.MustCompile(`^golang\.org/x/sys/`), []string{"tui/term", "targets/store", "astro/clock"}},
 	{regexp.MustCompile(`^(modernc\.org/|database/sql)`), []string{"targets/store"}},
 	{regexp.MustCompile(`^github\.com/aymanbagabas/`), []string{"tui/term"}},
 	{regexp.MustCompile(`^github\.com/charmbracelet/x/term`), []string{"cmd/evenfall", "tui/term"}},

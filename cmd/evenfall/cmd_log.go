@@ -238,24 +238,26 @@ func asUsage(err error) error {
 	return usagef("%w", err)
 }
 
-// bookTargets are the targets typed in, and the magnitudes entered, that
-// run.db of a run folder holds.
-func bookTargets(dir string) ([]targets.Target, []targets.Magnitude, error) {
+// bookOf is what run.db of a run folder holds for every command: targets typed
+// in, magnitudes entered, the conditions of a time.
+func bookOf(dir string, at time.Time) (list []targets.Target, mags []targets.Magnitude, c targets.Conditions, err error) {
 	path := filepath.Join(dir, "run.db")
 	if _, err := os.Stat(path); err != nil {
-		return nil, nil, nil
+		return nil, nil, c, nil
 	}
 	db, err := store.Open(path)
 	if err != nil {
-		return nil, nil, err
+		return nil, nil, c, err
 	}
 	defer db.Close()
 	b := logbook.Open(db, nil, "")
 	ctx := context.Background()
-	list, err := b.Added(ctx)
-	if err != nil {
-		return nil, nil, err
+	if list, err = b.Added(ctx); err != nil {
+		return nil, nil, c, err
 	}
-	mags, err := b.Magnitudes(ctx)
-	return list, mags, err
+	if mags, err = b.Magnitudes(ctx); err != nil {
+		return nil, nil, c, err
+	}
+	now, err := b.At(ctx, at)
+	return list, mags, now.Of(), err
 }

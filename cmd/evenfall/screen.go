@@ -2,6 +2,8 @@ package main
 
 import (
 	"bytes"
+	"context"
+	"errors"
 	"fmt"
 	"os"
 	"path/filepath"
@@ -9,6 +11,7 @@ import (
 	"strconv"
 	"strings"
 	"sync"
+	"syscall"
 	"time"
 
 	"github.com/charmbracelet/x/term"
@@ -16,8 +19,10 @@ import (
 	"evenfall/astro"
 	"evenfall/astro/clock"
 	"evenfall/targets"
+	"evenfall/targets/logbook"
 	"evenfall/targets/moment"
 	"evenfall/targets/roster"
+	"evenfall/targets/store"
 	"evenfall/tui"
 	"evenfall/tui/desk"
 	"evenfall/tui/kit"
@@ -69,12 +74,25 @@ func openScreen(w world, o *options) error {
 	}
 	src := s.source(o)
 	src.Look, src.Every, src.Notices = look, every, notices(said.String())
+	db, err := s.openLog(&src)
+	if err != nil {
+		return err
+	}
+	defer db.Close()
+	s.log(&src, o, w, logbook.Open(db, w.clock.Now, ""))
 	opts := tui.Options{Source: src, Clock: w.clock, In: os.Stdin, Out: os.Stdout, Tick: every, Crash: terminal.CrashLog{Path: s.crashPath()},
 		Getenv: os.Getenv, Save: func() {}, Exit: os.Exit}
 	if o.at != "" {
 		opts.Clock = clock.Fixed{At: s.at.UTC()}
 	}
 	err = tui.Open(opts)
+	if err == nil { // left by the user: the next session begins anew
+		book := logbook.Open(db, w.clock.Now, src.Observer)
+		if last, ok, failed := book.LastSession(context.Background(), src.Session); failed == nil && ok {
+			last.Ended, last.State = w.clock.Now(), ""
+			book.SaveSession(context.Background(), last)
+		}
+	}
 	w.err.Write(said.Bytes())
 	return err
 }
@@ -126,16 +144,85 @@ func (s *session) source(o *options) desk.Source {
 	src := desk.Source{Site: s.site, Title: s.title, Demo: s.demo, Zone: s.location(), HandOver: s.handOverFormat(),
 		Band: targets.Band(o.band), Level: o.level, Roster: roster.New(entries, moment.NewModels(), wants),
 		Night: s.nights(), Fixed: o.at != ""}
+	src.Changed = s.renew
 	if o.night != "" && o.at == "" {
 		src.Start = s.at.UTC()
 	}
 	return src
 }
 
+// openLog opens run.db of the run folder; the demonstration and places without
+// a run folder keep theirs in memory. What is wrong with it is said on the
+// screen, and all else works.
+func (s *session) openLog(src *desk.Source) (*store.DB, error) {
+	if s.dir == "" {
+		return store.Memory()
+	}
+	path := filepath.Join(s.dir, "run.db")
+	db, err := store.Open(path)
+	switch {
+	case err == nil && db.ReadOnly():
+		src.Notices = append(src.Notices, "READ-ONLY: "+path+" cannot be written; nothing will be saved")
+		return db, nil
+	case err == nil:
+		if kind := store.NetworkKind(s.dir); kind != "" {
+			src.Notices = append(src.Notices, "the run folder lies on "+kind+": "+store.Advice)
+		}
+		return db, nil
+	case errors.Is(err, store.ErrReadOnly) || errors.Is(err, store.ErrFull):
+		src.Notices = append(src.Notices, "NOTHING WILL BE SAVED: "+err.Error())
+		return store.Memory()
+	}
+	return nil, err
+}
+
+// log gives the screens the run's log, and what an earlier session left.
+func (s *session) log(src *desk.Source, o *options, w world, book *logbook.Book) {
+	src.Book, src.Observer = book, first(o.observer, os.Getenv("EVENFALL_OBSERVER"))
+	src.Requests, src.Limits, src.PID, src.Alive = s.requests, s.limits, os.Getpid(), processLives
+	src.ClockWords = clock.DisciplineWords(clock.Disciplined())
+	src.Request = func(target string) (targets.Request, bool) {
+		best, found := targets.Request{}, false
+		for _, q := range s.requests {
+			if targets.Key(q.Target) == targets.Key(target) && (!found || q.Weight > best.Weight) {
+				best, found = q, true
+			}
+		}
+		return best, found
+	}
+	// a session is known by where the observer sits: accounts are shared
+	where, _, _ := strings.Cut(os.Getenv("SSH_CONNECTION"), " ")
+	src.Session = first(src.Observer, "somebody") + " at " + first(where, "this machine")
+	ctx := context.Background()
+	last, ok, err := book.LastSession(ctx, src.Session)
+	if err != nil || !ok {
+		return
+	}
+	if w.clock.Now().Sub(last.Seen) < aliveWithin && last.Ended.IsZero() && processLives(last.PID) {
+		src.Session += fmt.Sprintf(", login %d", os.Getpid()) // the other one is still there
+		return
+	}
+	src.State = last.State
+}
+
+// aliveWithin is how lately a session must have been seen to be still there.
+const aliveWithin = 12 * time.Hour
+
+// processLives tells whether a process of this machine is there.
+func processLives(pid int) bool {
+	return pid > 0 && (pid == os.Getpid() || syscall.Kill(pid, 0) == nil)
+}
+
 // nights prepares nights and keeps them; safe for several goroutines.
 func (s *session) nights() func(astro.Date) (*moment.Night, error) {
 	var mu sync.Mutex
 	kept := map[astro.Date]*moment.Night{s.night.Date: s.night}
+	s.renew = func(c targets.Conditions) {
+		mu.Lock()
+		defer mu.Unlock()
+		s.conditions = c
+		clear(kept)
+	}
 	const most = 8
 	return func(date astro.Date) (*moment.Night, error) {
 		mu.Lock()

@@ -133,6 +133,8 @@ type session struct {
 	requests   []targets.Request
 	magnitudes []targets.Magnitude
 	limits     targets.Limits
+	conditions targets.Conditions
+	renew      func(targets.Conditions) // has nights heed other conditions
 	at         astro.Instant
 	night      *moment.Night
 	prepared   []moment.Prepared
@@ -156,10 +158,15 @@ func openSession(w world, o *options) (*session, error) {
 		s.targets, s.requests, s.magnitudes = site.run.Targets, site.run.Requests, site.run.Magnitudes
 	}
 	if s.dir != "" {
-		list, mags, err := bookTargets(s.dir)
+		at, err := o.now(w, s.site)
 		if err != nil {
 			return nil, err
 		}
+		list, mags, conditions, err := bookOf(s.dir, at.UTC())
+		if err != nil {
+			return nil, err
+		}
+		s.conditions = conditions
 		s.targets, s.magnitudes = slices.Concat(s.targets, list), slices.Concat(s.magnitudes, mags)
 	}
 	if err := s.readLists(w, o); err != nil {
@@ -306,7 +313,7 @@ func (s *session) setTime(w world, o *options) error {
 
 // nightOf prepares one night of the site.
 func (s *session) nightOf(date astro.Date) (*moment.Night, error) {
-	n, err := moment.NewNight(s.site, date, s.limits, targets.Conditions{})
+	n, err := moment.NewNight(s.site, date, s.limits, s.conditions)
 	if err == nil && s.run != nil {
 		n.Allocated = s.run.Config.AllocatedOn(n.Span, date)
 	}

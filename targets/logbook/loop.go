@@ -66,7 +66,7 @@ func (h Held) Error() string {
 	if what == "" {
 		what = h.By.Target
 	}
-	return fmt.Sprintf("%s has been %s %s since %s UTC; confirm to start it as well", who, h.By.Phase, what, h.By.PhaseAt.UTC().Format("15:04:05"))
+	return fmt.Sprintf("%s has been %s %s since %s UTC", who, h.By.Phase, what, h.By.PhaseAt.UTC().Format("15:04:05"))
 }
 
 func takeRow(t *Take) store.Row {

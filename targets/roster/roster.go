@@ -44,8 +44,8 @@ type Roster struct {
 
 	mu       sync.Mutex
 	prepared []*moment.Prepared
-	best     []string // likeliest stages of long lists, judged when asked for
-	nights   map[string]*nightly
+	best     []string                   // likeliest stages of long lists, judged when asked for
+	nights   map[*moment.Night]*nightly // a night made anew, for other conditions, is another one
 }
 
 // nightly is what is kept of a night.
@@ -66,7 +66,7 @@ func New(entries []Entry, models moment.Models, wants Wants) *Roster {
 	if wants == nil {
 		wants = func(_ *moment.Night, _ int, e *Entry) moment.Want { return e.Want }
 	}
-	r := &Roster{entries: entries, models: models, wants: wants, nights: map[string]*nightly{}}
+	r := &Roster{entries: entries, models: models, wants: wants, nights: map[*moment.Night]*nightly{}}
 	r.stars = make([]frame.Star, len(entries))
 	r.search = make([]string, len(entries))
 	r.prepared, r.best = make([]*moment.Prepared, len(entries)), make([]string, len(entries))
@@ -131,14 +131,13 @@ func (r *Roster) Prepared(i int) *moment.Prepared {
 func (r *Roster) night(n *moment.Night) *nightly {
 	r.mu.Lock()
 	defer r.mu.Unlock()
-	key := n.Date.String()
-	k, ok := r.nights[key]
+	k, ok := r.nights[n]
 	if !ok {
 		if len(r.nights) >= keepNights {
 			clear(r.nights)
 		}
 		k = &nightly{courses: map[int]*moment.Course{}}
-		r.nights[key] = k
+		r.nights[n] = k
 	}
 	return k
 }

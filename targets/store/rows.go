@@ -41,6 +41,14 @@ type Tx struct {
 	tx  *sql.Tx
 }
 
+// Fault has every write ask f first and fail as it does: for tests of what
+// happens then.
+func (d *DB) Fault(f func() error) {
+	d.mu.Lock()
+	defer d.mu.Unlock()
+	d.fail = f
+}
+
 // Do runs one transaction. It begins by taking the right to write, so that
 // what is read in it still holds when it writes. When it returns without error
 // all is on the disk.
@@ -48,8 +56,11 @@ func (d *DB) Do(ctx context.Context, f func(*Tx) error) error {
 	if d.readOnly {
 		return ErrReadOnly
 	}
-	if d.fail != nil {
-		if err := d.fail(); err != nil {
+	d.mu.Lock()
+	fail := d.fail
+	d.mu.Unlock()
+	if fail != nil {
+		if err := fail(); err != nil {
 			return judge(err)
 		}
 	}

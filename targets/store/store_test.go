@@ -187,12 +187,12 @@ func TestFailures(t *testing.T) {
 	d, _ := fresh(t)
 	for n := range 20 {
 		at, count := n, 0
-		d.fail = func() error {
+		d.Fault(func() error {
 			if count++; count == at%3+1 {
 				return errors.New("this write fails")
 			}
 			return nil
-		}
+		})
 		before, _ := d.Select(ctx, Entries, "")
 		acknowledged := 0
 		for k := range 3 {

@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"image/color"
 	"strings"
+	"sync"
 	"testing"
 	"time"
 
@@ -15,8 +16,10 @@ import (
 	"evenfall/astro"
 	"evenfall/targets"
 	"evenfall/targets/builtin"
+	"evenfall/targets/logbook"
 	"evenfall/targets/moment"
 	"evenfall/targets/roster"
+	"evenfall/targets/store"
 	"evenfall/tui/desk"
 	"evenfall/tui/kit"
 )
@@ -137,10 +140,40 @@ func Source(t testing.TB, every int) desk.Source {
 		list = append(list, roster.Entry{Target: stars[i], Want: moment.Want{Weight: 1, Level: 0.8}})
 	}
 	return desk.Source{Site: Site, Zone: time.UTC, Level: 0.8, Roster: roster.New(list, moment.NewModels(), nil), Every: time.Second,
-		Look: kit.Numbered(kit.ASCII),
-		Night: func(d astro.Date) (*moment.Night, error) {
-			return moment.NewNight(Site, d, targets.DefaultLimits(), targets.Conditions{})
-		}}
+		Look: kit.Numbered(kit.ASCII), Limits: targets.DefaultLimits(),
+		Night: nights()}
+}
+
+// nights prepares nights and keeps them, as the program does.
+func nights() func(astro.Date) (*moment.Night, error) {
+	var mu sync.Mutex
+	kept := map[astro.Date]*moment.Night{}
+	return func(d astro.Date) (*moment.Night, error) {
+		mu.Lock()
+		defer mu.Unlock()
+		if n, ok := kept[d]; ok {
+			return n, nil
+		}
+		n, err := moment.NewNight(Site, d, targets.DefaultLimits(), targets.Conditions{})
+		if err == nil {
+			kept[d] = n
+		}
+		return n, err
+	}
+}
+
+// Logged gives a source a log of its own, in memory, with a clock that the
+// driver moves.
+func Logged(t testing.TB, src *desk.Source, observer string) *logbook.Book {
+	t.Helper()
+	db, err := store.Memory()
+	if err != nil {
+		t.Fatal(err)
+	}
+	t.Cleanup(func() { db.Close() })
+	src.Book, src.Observer, src.Session = logbook.Open(db, func() time.Time { return Start }, ""), observer, "session of the test"
+	src.Every = time.Minute
+	return src.Book
 }
 
 // New sits down at a desk.

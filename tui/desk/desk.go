@@ -8,9 +8,8 @@ import (
 	"context"
 	"time"
 
-	"evenfall/astro"
 	"evenfall/targets"
-	"evenfall/targets/moment"
+	"evenfall/targets/logbook"
 	"evenfall/targets/roster"
 	"evenfall/tui/entry"
 	"evenfall/tui/help"
@@ -18,39 +17,8 @@ import (
 	"evenfall/tui/next"
 	"evenfall/tui/plain"
 	"evenfall/tui/star"
+	"evenfall/tui/weather"
 )
-
-// Source is what the desk is opened on.
-type Source struct {
-	Site     astro.Site
-	Title    string
-	Demo     bool
-	Zone     *time.Location
-	HandOver moment.HandOver
-	Band     targets.Band
-	Level    float64
-	Roster   *roster.Roster
-	// Night prepares a night; called from tasks, several at a time.
-	Night func(astro.Date) (*moment.Night, error)
-	// Copy sends text to the clipboard and says where it went; called from a
-	// task.
-	Copy func(text string) (string, error)
-	// Fixed: the clock stands still.
-	Fixed bool
-	// Start is a moment of one's own to begin with; zero: the clock's.
-	Start time.Time
-	// Every is how often the list follows the clock; 0: only when asked.
-	Every time.Duration
-	// Notices are said once, at the start.
-	Notices []string
-	Look    *kit.Look
-}
-
-// Task is work for the background. What Run returns goes to Apply.
-type Task struct {
-	Name string
-	Run  func() any
-}
 
 // Desk is the program's state. It is used by one goroutine.
 type Desk struct {
@@ -72,6 +40,29 @@ type Desk struct {
 	anchor     int                // the star that the user selected, also while it is filtered out
 	works      int                // in flight
 	before     asked              // what held before the user's last question
+
+	queue     []write // not on the disk yet, the first being written
+	writing   bool
+	refused   error     // why the disk refused the first; nil: it did not
+	failedAt  time.Time // when
+	prompt    *prompt   // a line being asked for
+	kept      map[string]string
+	question  string // that a y is asked for
+	answer    func(*Desk) []Task
+	polling   bool
+	polled    bool // once, at least
+	deaf      bool // the log could not be read
+	setup     setup
+	offset    targets.Measure // of the instrument's clock, s
+	takeRow   int
+	rung      string // what the bell was rung for last
+	bell      bool
+	weather   kit.Screen
+	drafts    map[string]string // as they are on the disk
+	saved     string            // the session's state as it is on the disk
+	sessionID int64
+	began     time.Time
+	resume    *state // to be gone back to once the list is there
 }
 
 // asked is what a list is asked by, to be gone back to where it fails.
@@ -98,18 +89,21 @@ const idleAfter = time.Minute
 
 // New opens the desk at a time of the clock.
 func New(src Source, now time.Time) (*Desk, []Task) {
-	d := &Desk{src: src, anchor: -1, entry: entry.New(), screens: []kit.Screen{next.New()}}
+	d := &Desk{src: src, anchor: -1, entry: entry.New(), weather: weather.New(), screens: []kit.Screen{next.New()}, kept: map[string]string{},
+		drafts: map[string]string{}, takeRow: -1, began: now}
 	d.w = kit.World{Look: src.Look, Site: src.Site, Title: src.Title, Demo: src.Demo, Zone: src.Zone, HandOver: src.HandOver,
 		Band: src.Band, Level: src.Level, Fixed: src.Fixed, Selected: -1, Place: -1, Wall: now, Shown: now, Live: true,
-		Marks: map[int]bool{}, Width: 80, Height: 24, Ticks: src.Every > 0}
+		Marks: map[int]bool{}, Width: 80, Height: 24, Ticks: src.Every > 0,
+		Book: src.Book, Observer: src.Observer, Requests: src.Requests, Limits: src.Limits, ClockWords: src.ClockWords}
 	if !src.Start.IsZero() {
 		d.w.Shown, d.w.Live = src.Start, false
 	}
 	d.keyAt = now
+	d.back(src.State)
 	for _, n := range src.Notices {
 		d.say(n, false)
 	}
-	return d, d.ask(nil)
+	return d, append(append(d.ask(nil), d.poll()...), d.recall()...)
 }
 
 // Done tells whether the user left.
@@ -125,8 +119,11 @@ func (d *Desk) up() kit.Screen { return d.screens[len(d.screens)-1] }
 
 func (d *Desk) put(s kit.Screen) {
 	d.screens[len(d.screens)-1] = s
-	if s.Title() == kit.OnEntry {
+	switch s.Title() {
+	case kit.OnEntry:
 		d.entry = s
+	case kit.OnWeather:
+		d.weather = s
 	}
 }
 
@@ -146,9 +143,21 @@ func (d *Desk) Key(press string) []Task {
 		d.done = press == "y" || press == "ctrl+c"
 		return nil
 	}
+	if d.answer != nil {
+		then := d.answer
+		d.answer, d.question = nil, ""
+		if press == "y" {
+			return then(d)
+		}
+		d.say("not done", false)
+		return nil
+	}
 	if press == "ctrl+c" {
 		d.leave()
 		return nil
+	}
+	if d.prompt != nil {
+		return d.promptKey(press)
 	}
 	if !d.bad {
 		d.message = ""
@@ -173,6 +182,10 @@ func (d *Desk) Key(press string) []Task {
 // Paste takes pasted text: it goes to a field or is dropped, never to keys.
 func (d *Desk) Paste(text string) []Task {
 	d.keyAt = d.w.Wall
+	if d.prompt != nil {
+		d.prompt.field = d.prompt.field.Insert(text)
+		return nil
+	}
 	p, ok := d.up().(kit.Paster)
 	if !ok {
 		d.say(kit.PasteWhere, false)
@@ -195,6 +208,9 @@ var steps = map[kit.Action]kit.Step{
 func (d *Desk) common(a kit.Action) ([]Task, bool) {
 	if step, ok := steps[a]; ok {
 		return d.do(step), true
+	}
+	if tasks, ok := d.atTelescope(a); ok {
+		return tasks, true
 	}
 	switch a {
 	case kit.BackToNow:
@@ -230,8 +246,12 @@ func (d *Desk) common(a kit.Action) ([]Task, bool) {
 
 // leave ends the program, or asks first where something is half typed.
 func (d *Desk) leave() {
-	for _, s := range append([]kit.Screen{d.entry}, d.screens...) {
-		if t, ok := s.(kit.Draft); ok && t.HalfTyped() {
+	if len(d.queue) > 0 {
+		d.asking = true
+		return
+	}
+	for _, s := range append([]kit.Screen{d.entry, d.weather}, d.screens...) {
+		if t, ok := s.(kit.Holder); ok && t.HalfTyped() {
 			d.asking = true
 			return
 		}
@@ -293,7 +313,7 @@ func (d *Desk) do(job kit.Job) []Task {
 	case kit.Close:
 		d.close()
 	case kit.Toggle:
-		d.toggle()
+		return d.toggle()
 	case kit.Find:
 		return d.find(j)
 	case kit.Rerank:
@@ -310,7 +330,11 @@ func (d *Desk) do(job kit.Job) []Task {
 		d.w.Live, d.w.Shown = true, d.w.Wall
 		return d.ask(nil)
 	case kit.Add:
-		return []Task{d.add(j.Entry)}
+		return []Task{d.add(j.Entry, true)}
+	case kit.Weather:
+		return d.named(func(d *Desk) []Task { return d.conditions(j.Conditions) })
+	case kit.Amend:
+		return d.amend(j)
 	case kit.Copy:
 		return []Task{d.clip(j.Text)}
 	}
@@ -327,19 +351,24 @@ func (d *Desk) selectRow(row int) {
 
 // toggle marks or unmarks the selected star. The map is never changed: tasks
 // under way may be reading it.
-func (d *Desk) toggle() {
+func (d *Desk) toggle() []Task {
 	if d.w.Entry() == nil {
 		d.say("no star is selected", false)
-		return
+		return nil
 	}
 	marks := make(map[int]bool, len(d.w.Marks)+1)
 	for i := range d.w.Marks {
 		marks[i] = true
 	}
-	if marks[d.w.Selected] {
-		delete(marks, d.w.Selected)
-	} else {
+	on := !marks[d.w.Selected]
+	if on {
 		marks[d.w.Selected] = true
+	} else {
+		delete(marks, d.w.Selected)
 	}
 	d.w.Marks = marks
+	name := d.w.Entry().Target.Name
+	return d.save(write{what: "mark of " + name, run: func(ctx context.Context, b *logbook.Book) (any, error) {
+		return nil, b.Mark(ctx, name, on)
+	}})
 }

@@ -9,6 +9,7 @@ import (
 
 	"evenfall/astro"
 	"evenfall/astro/timescale"
+	"evenfall/targets/logbook"
 	"evenfall/targets/moment"
 	"evenfall/targets/roster"
 	"evenfall/tui/entry"
@@ -35,10 +36,14 @@ type added struct {
 	base, roster *roster.Roster
 	entry        roster.Entry
 	row          int
+	typed        bool // in this session
 }
 
 // twice says that a new target's name is taken.
-type twice struct{ name string }
+type twice struct {
+	name  string
+	typed bool
+}
 
 // ask makes the task of a new snapshot. A kept order is gone on with; nil is
 // the user's word for a new one.
@@ -109,17 +114,36 @@ func (d *Desk) Apply(result any) []Task {
 	case added:
 		d.works--
 		if r.base != d.src.Roster { // another was added meanwhile
-			return []Task{d.add(r.entry)}
+			return []Task{d.add(r.entry, r.typed)}
 		}
-		if d.up().Title() == kit.OnEntry {
-			d.close()
+		if r.typed {
+			if d.up().Title() == kit.OnEntry {
+				d.close()
+			}
+			d.entry = entry.New()
 		}
-		d.entry = entry.New()
-		d.src.Roster, d.anchor = r.roster, r.row
-		d.say(r.roster.Entry(r.row).Target.Name+" is in the list, kept for this session", false)
-		return d.ask(nil)
+		d.src.Roster = r.roster
+		t := r.entry.Target
+		if !r.typed { // another session's
+			d.say(t.Name+" was added by another session", false)
+			return d.ask(nil)
+		}
+		d.anchor = r.row
+		d.say(t.Name+" is in the list", false)
+		tasks := d.save(write{what: "target " + t.Name + " " + t.Place.RA.HMS(2) + " " + t.Place.Dec.DMS(1),
+			run: func(ctx context.Context, b *logbook.Book) (any, error) { return nil, b.AddTarget(ctx, t) }})
+		return append(tasks, d.ask(nil)...)
+	case wrote:
+		return d.written(r)
+	case news:
+		return append(d.heard(r), d.follow()...)
+	case recalled:
+		d.remember(r)
 	case twice:
 		d.works--
+		if !r.typed {
+			return nil
+		}
 		d.say("name: "+r.name+" is in the list already; give the new one another name", true)
 	case kit.Say:
 		d.say(r.Text, r.Bad)
@@ -151,6 +175,9 @@ func (d *Desk) arrived(r listed) []Task {
 		d.w.OrderAt = r.shown
 	}
 	d.w.Snap = r.snap
+	if d.resume != nil {
+		d.comeBack()
+	}
 	place := d.w.Place
 	switch {
 	case d.anchor >= 0 && r.snap.Find(d.anchor) >= 0:
@@ -224,14 +251,14 @@ func (d *Desk) find(j kit.Find) []Task {
 }
 
 // add takes a target into the list.
-func (d *Desk) add(e roster.Entry) Task {
+func (d *Desk) add(e roster.Entry, typed bool) Task {
 	d.works++
 	r := d.src.Roster
 	return Task{"adding " + e.Target.Name, func() any {
 		if r.Named(e.Target.Name) {
-			return twice{e.Target.Name}
+			return twice{e.Target.Name, typed}
 		}
-		return added{r, r.With(e), e, r.Len()}
+		return added{r, r.With(e), e, r.Len(), typed}
 	}}
 }
 
@@ -287,11 +314,25 @@ func (d *Desk) catchUp() []Task {
 
 // Tick tells the desk the time of the clock, about once a second.
 func (d *Desk) Tick(now time.Time) []Task {
+	back := now.Before(d.w.Wall.Add(-steppedBack))
 	d.w.Wall = now
+	if back {
+		d.say("the clock was set back to "+now.Format("15:04:05")+"; entries keep the order of their numbers", true)
+	}
+	d.bells()
+	tasks := append(append(d.retry(), d.poll()...), d.keep()...)
 	if !d.w.Live {
-		return nil
+		return tasks
 	}
 	d.w.Shown = now
+	return append(tasks, d.tickList(now)...)
+}
+
+// steppedBack is how far back the clock must jump to be spoken of.
+const steppedBack = 2 * time.Second
+
+// tickList has the list follow the clock.
+func (d *Desk) tickList(now time.Time) []Task {
 	if d.src.Fixed || d.src.Every <= 0 || d.cancel != nil || now.Sub(d.askedAt) < d.src.Every {
 		return nil
 	}

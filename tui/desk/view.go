@@ -27,9 +27,15 @@ func (d *Desk) View() string {
 	s := d.up()
 	body := s.View(w, w.Width, w.Body())
 	p := kit.NewPen(w.Look, w.Width)
+	d.loopLine(p)
+	p.Line()
 	d.status(s, p)
 	p.Line()
-	p.Put(kit.Dim, kit.Footer(s.Title(), w.Width)).Line()
+	foot := s.Title()
+	if d.prompt != nil {
+		foot = kit.OnField
+	}
+	p.Put(kit.Dim, kit.Footer(foot, w.Width)).Line()
 	var b strings.Builder
 	b.Grow(len(body) + 256)
 	b.WriteString(body)
@@ -42,6 +48,14 @@ func (d *Desk) View() string {
 // message, or what the list is like.
 func (d *Desk) status(s kit.Screen, p *kit.Pen) {
 	switch {
+	case d.answer != nil:
+		p.Put(kit.Warn, d.question)
+	case d.prompt != nil:
+		p.Put(kit.Key, d.prompt.label+" ")
+		d.prompt.field.Show(p, true)
+		p.Put(kit.Dim, "  "+d.prompt.hint)
+	case d.asking && len(d.queue) > 0:
+		p.Put(kit.Warn, fmt.Sprintf("y leaves, other keys stay: %d not saved; l shows them to copy by hand", len(d.queue)))
 	case d.asking:
 		p.Put(kit.Warn, "y leaves, other keys stay: something is half typed")
 	case s.Prompt(&d.w, p):

@@ -23,22 +23,20 @@ const (
 	mag
 	motion
 	epoch
-	count
 )
 
-var labels = [count]struct{ word, hint string }{
-	{"name", "or paste a whole line: name, position, V=12.3, pm +12 -30"},
-	{"position", "ICRS: 05 34 31.9 +22 00 52 or degrees 83.633 +22.015"},
-	{"kind", "giant lpv postagb pn wd interacting standard other"},
-	{"magnitude", "V 12.3, or G 15.2"},
-	{"motion", "mas/yr in RA (with cos dec) and dec: +12.3 -45"},
-	{"epoch", "year of the position: 2000 unless given"},
+var lines = []kit.FormField{
+	{Label: "name", Hint: "or paste a whole line: name, position, V=12.3, pm +12 -30"},
+	{Label: "position", Hint: "ICRS: 05 34 31.9 +22 00 52 or degrees 83.633 +22.015"},
+	{Label: "kind", Hint: "giant lpv postagb pn wd interacting standard other"},
+	{Label: "magnitude", Hint: "V 12.3, or G 15.2"},
+	{Label: "motion", Hint: "mas/yr in RA (with cos dec) and dec: +12.3 -45"},
+	{Label: "epoch", Hint: "year of the position: 2000 unless given"},
 }
 
 // Screen is the form.
 type Screen struct {
-	fields [count]kit.Field
-	at     int
+	form   kit.Form
 	look   *Look // where it would stand; of what was typed when asked
 	asked  table.Typed
 	minute time.Time // of what was asked
@@ -52,7 +50,16 @@ type Look struct {
 }
 
 // New returns an empty form.
-func New() Screen { return Screen{} }
+func New() Screen { return Screen{form: kit.NewForm(lines)} }
+
+// Draft writes what is typed, for keeping; Recall reads it back.
+func (s Screen) Draft() string { return s.form.Draft() }
+
+// Recall returns the form as a draft had it.
+func (s Screen) Recall(draft string) kit.Screen {
+	s.form = s.form.Recall(draft)
+	return s
+}
 
 // Title names it.
 func (s Screen) Title() string { return kit.OnEntry }
@@ -64,28 +71,19 @@ func (s Screen) Typing() bool { return true }
 func (s Screen) HalfTyped() bool { return s.typed() != table.Typed{} }
 
 func (s Screen) typed() table.Typed {
-	f := func(i int) string { return s.fields[i].String() }
+	f := s.form.Text
 	return table.Typed{Name: f(name), Position: f(position), Kind: f(kind), Mag: f(mag), Motion: f(motion), Epoch: f(epoch)}
 }
 
 // Key obeys a key.
 func (s Screen) Key(w *kit.World, press string) (kit.Screen, kit.Job) {
-	switch kit.Lookup(kit.OnEntry, press) {
-	case kit.Back:
+	if kit.Lookup(kit.OnEntry, press) == kit.Back {
 		return s, kit.Close{}
-	case kit.NextField:
-		if press == "enter" && s.at == count-1 {
-			return s.finish(w)
-		}
-		s.at = (s.at + 1) % count
-		return s, nil
-	case kit.PriorField:
-		s.at = (s.at + count - 1) % count
-		return s, nil
 	}
-	field, ok := s.fields[s.at].Press(press)
-	if ok {
-		s.fields[s.at] = field
+	form, finished := s.form.Press(kit.OnEntry, press)
+	s.form = form
+	if finished {
+		return s.finish(w)
 	}
 	return s, nil
 }
@@ -93,13 +91,13 @@ func (s Screen) Key(w *kit.World, press string) (kit.Screen, kit.Job) {
 // Paste puts text into the field; a whole line is taken apart.
 func (s Screen) Paste(w *kit.World, text string) (kit.Screen, kit.Job) {
 	y, whole := table.FromPaste(text)
-	if !whole || s.at != name && y.Name == "" {
-		s.fields[s.at] = s.fields[s.at].Insert(text)
+	if !whole || s.form.At != name && y.Name == "" {
+		s.form = s.form.With(s.form.At, s.form.Fields[s.form.At].Insert(text))
 		return s, nil
 	}
 	for i, v := range [...]string{y.Name, y.Position, y.Kind, y.Mag, y.Motion, y.Epoch} {
 		if v != "" {
-			s.fields[i] = kit.NewField(v)
+			s.form = s.form.With(i, kit.NewField(v))
 		}
 	}
 	return s, kit.Say{Text: "taken apart; check the fields, enter on the last one adds the target"}
@@ -110,7 +108,7 @@ func (s Screen) finish(w *kit.World) (kit.Screen, kit.Job) {
 	t, problems := s.typed().Target()
 	for _, p := range problems {
 		if !p.Warning {
-			s.at = fieldOf(p.Field)
+			s.form.At = fieldOf(p.Field)
 			return s, kit.Say{Text: p.Field + ": " + p.Text, Bad: true}
 		}
 	}
@@ -183,18 +181,7 @@ func (s Screen) View(w *kit.World, width, height int) string {
 	if height >= 16 {
 		p.Line().Put(kit.Title, "a new target, kept for this session").Line().Line()
 	}
-	for i := range labels {
-		cursor := "  "
-		if i == s.at {
-			cursor = "> "
-		}
-		p.Put(kit.Selected, cursor).Put(kit.Dim, labels[i].word).To(13)
-		s.fields[i].Show(p, i == s.at)
-		if s.fields[i].String() == "" {
-			p.Put(kit.Dim, "  "+labels[i].hint)
-		}
-		p.Line()
-	}
+	s.form.Draw(p)
 	if height >= 16 {
 		p.Line()
 	}
@@ -220,7 +207,7 @@ func (s Screen) judgement(p *kit.Pen, height int) {
 	ready := true
 	for _, pr := range problems {
 		ready = ready && pr.Warning
-		if s.fields[fieldOf(pr.Field)].String() != "" || pr.Warning {
+		if s.form.Text(fieldOf(pr.Field)) != "" || pr.Warning {
 			say(kit.Warn, "! "+pr.Field+": "+pr.Text)
 		}
 	}
@@ -238,7 +225,7 @@ func (s Screen) judgement(p *kit.Pen, height int) {
 		}
 		say(kit.Good, text)
 	}
-	if s.at == count-1 {
+	if s.form.At == epoch {
 		say(kit.Key, "enter adds it to the list")
 	}
 }

@@ -42,6 +42,21 @@ const (
 	NextField   Action = "next field"
 	PriorField  Action = "prior field"
 	EmptyField  Action = "empty field"
+	TakeStep    Action = "take"
+	TakeNow     Action = "take now"
+	FrameDone   Action = "frame done"
+	StopEarly   Action = "stop"
+	AbortTake   Action = "abort"
+	SetUp       Action = "set up"
+	WriteNote   Action = "note"
+	OpenWeather Action = "conditions"
+	OpenLog     Action = "log"
+	BellSwitch  Action = "bell"
+	ClockOffset Action = "offset"
+	GradeGood   Action = "good"
+	GradeUsable Action = "usable"
+	GradePoor   Action = "poor"
+	VoidEntry   Action = "void"
 	Finish      Action = "finish"
 )
 
@@ -58,16 +73,21 @@ type Binding struct {
 
 // The screens by name.
 const (
-	OnNext  = "next"
-	OnStar  = "star"
-	OnEntry = "new target"
-	OnCopy  = "copy"
-	OnHelp  = "help"
-	OnField = "filter" // a line being typed
-	OnSort  = "sort"
+	OnNext    = "next"
+	OnStar    = "star"
+	OnEntry   = "new target"
+	OnCopy    = "copy"
+	OnHelp    = "help"
+	OnField   = "filter" // a line being typed
+	OnSort    = "sort"
+	OnLog     = "log"
+	OnWeather = "conditions"
 )
 
-var lists = []string{OnNext, OnStar, OnHelp, OnCopy}
+var (
+	lists = []string{OnNext, OnStar, OnHelp, OnCopy, OnLog}
+	work  = []string{OnNext, OnStar, OnLog}
+)
 
 // Bindings is the table of keys. Every movement has a letter; no key needs
 // ctrl, alt or a function key, and none that ends an arrow's code (A to D, H,
@@ -98,16 +118,31 @@ var Bindings = []Binding{
 	{NightLess, []string{"<"}, "<", "", "the night before, same time", []string{OnNext, OnStar}},
 	{NightMore, []string{">"}, ">", "", "the night after, same time", []string{OnNext, OnStar}},
 	{BackToNow, []string{"n"}, "n", "", "back to now, and on with the clock", []string{OnNext, OnStar}},
-	{ChangeTheme, []string{"v"}, "v", "", "theme: dark, red for night vision, plain", []string{OnNext, OnStar, OnHelp, OnCopy}},
-	{ShowHelp, []string{"?"}, "?", "help", "the keys and signs of this screen", []string{OnNext, OnStar, OnCopy}},
+	{TakeStep, []string{"t"}, "t", "take", "the loop's next step: slew to the selected star, acquire, expose, accept and log", work},
+	{TakeNow, []string{"T"}, "T", "", "straight to exposing; then t accepts: a take in two keys", work},
+	{FrameDone, []string{"f"}, "f", "", "count a frame by hand", work},
+	{StopEarly, []string{"x"}, "x", "", "stop early: what is done is logged", work},
+	{AbortTake, []string{"X"}, "X", "", "abort: logged as void (asks)", work},
+	{SetUp, []string{"e"}, "e", "", "frames, seconds and first file of the take: 3x90 obs0042", work},
+	{WriteNote, []string{"o"}, "o", "", "write a note into the log", work},
+	{OpenWeather, []string{"w"}, "w", "", "conditions: seeing, cloud, wind, humidity, dome", work},
+	{OpenLog, []string{"l"}, "l", "log", "the log of the night and what is owed", []string{OnNext, OnStar}},
+	{GradeGood, []string{"1"}, "1", "1 2 3 grade", "grade the entry good", []string{OnLog}},
+	{GradeUsable, []string{"2"}, "2", "", "usable", []string{OnLog}},
+	{GradePoor, []string{"3"}, "3", "", "poor: it does not count as a visit", []string{OnLog}},
+	{VoidEntry, []string{"0"}, "0", "void", "void: the entry stays and does not count (asks)", []string{OnLog}},
+	{BellSwitch, []string{"b"}, "b", "", "bell at the end of an exposure, before events and limits: on, off", work},
+	{ClockOffset, []string{"i"}, "i", "", "how many seconds the instrument's clock is ahead; logged with each take", work},
+	{ChangeTheme, []string{"v"}, "v", "", "theme: dark, red for night vision, plain", []string{OnNext, OnStar, OnHelp, OnCopy, OnLog}},
+	{ShowHelp, []string{"?"}, "?", "help", "the keys and signs of this screen", []string{OnNext, OnStar, OnCopy, OnLog}},
 	{Back, []string{"esc", "backspace"}, "esc", "", "dismiss a message, else back; nothing typed is lost", lists},
 	{Leave, []string{"q"}, "q", "leave", "leave this screen, from the list the program; asks once (y) if something is half typed", lists},
 
-	{NextField, []string{"enter", "down", "tab"}, "enter, tab, down", "next field", "the next field", []string{OnEntry}},
-	{PriorField, []string{"up", "shift+tab"}, "up", "", "the field before", []string{OnEntry}},
-	{EmptyField, []string{"ctrl+u"}, "ctrl+u", "", "empty the field", []string{OnEntry, OnField}},
-	{Finish, []string{"enter"}, "enter", "", "in a filter: done; on the last field of a new target: add it", []string{OnField}},
-	{Back, []string{"esc"}, "esc", "back, kept", "back to the list; what is typed stays for when you return", []string{OnEntry, OnField, OnSort}},
+	{NextField, []string{"enter", "down", "tab"}, "enter, tab, down", "next field", "the next field; on the last one enter adds the target, or saves", []string{OnEntry, OnWeather}},
+	{PriorField, []string{"up", "shift+tab"}, "up", "", "the field before", []string{OnEntry, OnWeather}},
+	{EmptyField, []string{"ctrl+u"}, "ctrl+u", "", "empty the field", []string{OnEntry, OnWeather, OnField}},
+	{Finish, []string{"enter"}, "enter", "", "done", []string{OnField}},
+	{Back, []string{"esc"}, "esc", "back, kept", "back to the list; what is typed stays for when you return", []string{OnEntry, OnWeather, OnField, OnSort}},
 }
 
 // Lookup returns what a key does on a screen; "": nothing.
@@ -149,7 +184,7 @@ func Footer(screen string, width int) string {
 
 var footers = func() map[string][]string {
 	out := map[string][]string{}
-	for _, screen := range []string{OnNext, OnStar, OnEntry, OnCopy, OnHelp, OnField} {
+	for _, screen := range []string{OnNext, OnStar, OnEntry, OnCopy, OnHelp, OnField, OnLog, OnWeather} {
 		for _, b := range KeysOn(screen) {
 			switch {
 			case b.Short == "":

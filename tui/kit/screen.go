@@ -10,6 +10,7 @@ import (
 
 	"evenfall/astro"
 	"evenfall/targets"
+	"evenfall/targets/logbook"
 	"evenfall/targets/moment"
 	"evenfall/targets/roster"
 )
@@ -36,8 +37,21 @@ type World struct {
 	Band     targets.Band
 	Level    float64
 	Width    int
-	Height   int  // of the whole screen
-	Ticks    bool // the clock goes on by itself, not only with keys
+	Height   int // of the whole screen
+	// of the log
+	Book       *logbook.Book     // nil: none
+	Observer   string            // "": not asked yet
+	Requests   []targets.Request // of the run
+	Take       *logbook.Take     // under way in this session
+	Others     []logbook.Take    // under way in others
+	Conditions logbook.Conditions
+	Limits     targets.Limits
+	Changed    int      // counts what was written to the log
+	Pending    []string // what the disk has not taken yet
+	Silent     bool     // no bell
+	ClockWords string   // whether the clock is kept right
+
+	Ticks bool // the clock goes on by itself, not only with keys
 }
 
 // Entry returns the selected target; nil: there is none.
@@ -60,8 +74,12 @@ func (w *World) Moment() *moment.Moment {
 // the footer.
 func (w *World) Body() int { return max(w.Height-StatusLines, 0) }
 
-// StatusLines is how many lines below a screen are not its own.
-const StatusLines = 2
+// Warnings says which limits of the site the conditions break.
+func (w *World) Warnings() []string { return w.Conditions.Warnings(&w.Limits) }
+
+// StatusLines is how many lines below a screen are not its own: the loop at
+// the telescope, the status line and the footer.
+const StatusLines = 3
 
 // Screen is one screen. It is a value: Key and Apply return what it becomes.
 type Screen interface {
@@ -91,8 +109,16 @@ type Shows interface {
 	Rows(w *World) []int32
 }
 
-// Draft is a screen that may hold something half typed.
-type Draft interface{ HalfTyped() bool }
+// Holder is a screen that may hold something half typed.
+type Holder interface{ HalfTyped() bool }
+
+// Kept is a holder whose text can be kept and recalled.
+type Kept interface {
+	Holder
+	Title() string
+	Draft() string
+	Recall(draft string) Screen
+}
 
 // PasteWhere says what pasted text is for.
 const PasteWhere = "pasted text is for fields: a adds a target, / filters"
@@ -133,6 +159,14 @@ type (
 	Close struct{}
 	// Add takes a new target into the list.
 	Add struct{ Entry roster.Entry }
+	// Weather writes conditions.
+	Weather struct{ Conditions logbook.Conditions }
+	// Amend grades an entry, or declares it void.
+	Amend struct {
+		Entry int64
+		Grade string
+		Void  bool
+	}
 	// Copy sends text to the clipboard.
 	Copy struct{ Text string }
 	// Say puts a message on the status line.

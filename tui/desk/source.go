@@ -1,0 +1,68 @@
+package desk
+
+import (
+	"time"
+
+	"evenfall/astro"
+	"evenfall/targets"
+	"evenfall/targets/logbook"
+	"evenfall/targets/moment"
+	"evenfall/targets/roster"
+	"evenfall/tui/kit"
+)
+
+// Source is what the desk is opened on.
+type Source struct {
+	Site     astro.Site
+	Title    string
+	Demo     bool
+	Zone     *time.Location
+	HandOver moment.HandOver
+	Band     targets.Band
+	Level    float64
+	Roster   *roster.Roster
+	// Night prepares a night; called from tasks, several at a time.
+	Night func(astro.Date) (*moment.Night, error)
+	// Copy sends text to the clipboard and says where it went; called from a
+	// task.
+	Copy func(text string) (string, error)
+	// Fixed: the clock stands still.
+	Fixed bool
+	// Start is a moment of one's own to begin with; zero: the clock's.
+	Start time.Time
+	// Every is how often the list follows the clock; 0: only when asked.
+	Every time.Duration
+	// Book is the run's log; nil: none.
+	Book *logbook.Book
+	// Session names this session, the same again after a dropped link.
+	Session string
+	// PID is the process, by which another login sees whether it lives; Alive
+	// tells whether one does.
+	PID   int
+	Alive func(pid int) bool
+	// Observer is who observes, if it is known.
+	Observer string
+	// Requests are the run's; Request returns the one that a target is taken
+	// for.
+	Requests []targets.Request
+	Request  func(target string) (targets.Request, bool)
+	// Readout is the time between frames, seconds.
+	Readout float64
+	// Changed tells that other conditions hold; nights made from then on are
+	// to heed them.
+	Changed func(targets.Conditions)
+	Limits  targets.Limits
+	// ClockWords says whether the clock is kept right.
+	ClockWords string
+	// State is what an earlier session of the same name left, as State wrote it.
+	State string
+	// Notices are said once, at the start.
+	Notices []string
+	Look    *kit.Look
+}
+
+// Task is work for the background. What Run returns goes to Apply.
+type Task struct {
+	Name string
+	Run  func() any
+}
