@@ -1,3 +1,5 @@
+//go:build unix
+
 package main
 
 import (
@@ -5,6 +7,7 @@ import (
 	"context"
 	"encoding/json"
 	"fmt"
+	"net"
 	"os"
 	"os/exec"
 	"path/filepath"
@@ -15,7 +18,10 @@ import (
 	"testing"
 	"time"
 
+	"github.com/creack/pty"
+
 	"evenfall/astro/clock"
+	"evenfall/targets/logbook"
 	"evenfall/targets/store"
 )
 
@@ -341,5 +347,163 @@ func TestDiskTrouble(t *testing.T) {
 		} else {
 			t.Log("no small disk could be mounted here")
 		}
+	}
+}
+
+// check names a network file system, an unsound run.db and takes that nobody
+// ended.
+func TestCheckStore(t *testing.T) {
+	dir := runFolder(t)
+	called(t, "log", "note", "x", "--run", dir)
+	if _, out, _ := called(t, "check", "--run", dir); !strings.Contains(out, "sound, 1 row of the log") || strings.Contains(out, "lies on") {
+		t.Errorf("%s", out)
+	}
+	networkKind = func(string) string { return "NFS" }
+	defer func() { networkKind = store.NetworkKind }()
+	if status, out, _ := called(t, "check", "--run", dir); status != exitDone || !strings.Contains(out, "lies on NFS; keep the run folder on a local disk") {
+		t.Errorf("%d %s", status, out)
+	}
+	db, err := store.Open(filepath.Join(dir, "run.db"))
+	if err != nil {
+		t.Fatal(err)
+	}
+	b := logbook.Open(db, func() time.Time { return time.Date(2026, 12, 2, 4, 0, 0, 0, time.UTC) }, "observer 1")
+	if _, err := b.Begin(context.Background(), logbook.Take{Target: "R Lep", Phase: logbook.Exposing, Done: -1}, false); err != nil {
+		t.Fatal(err)
+	}
+	db.Close()
+	if _, out, _ := called(t, "check", "--run", dir); !strings.Contains(out, "R Lep by observer 1") {
+		t.Errorf("%s", out)
+	}
+	if err := os.WriteFile(filepath.Join(dir, "run.db"), []byte(strings.Repeat("no database ", 200)), 0o644); err != nil {
+		t.Fatal(err)
+	}
+	for _, args := range []string{"check", "log", "list"} {
+		if status, _, errs := called(t, args, "--run", dir); status != exitFailure || !strings.Contains(errs, "no sound database") {
+			t.Errorf("%s: %d %s", args, status, errs)
+		}
+	}
+}
+
+// The link drops while somebody types, again and again, over a real sshd: the
+// draft is there, at most a second or so old, the log is whole, and no program
+// is left. EVENFALL_DROPS sets how often (5).
+func TestDroppedLink(t *testing.T) {
+	bin, dir := built(t), runFolder(t)
+	drops := 5
+	if n, err := strconv.Atoi(os.Getenv("EVENFALL_DROPS")); err == nil {
+		drops = n
+	}
+	link := sshd(t)
+	notes := 0
+	for k := range drops {
+		s := &screen{t: t, ended: make(chan error, 1), cmd: link("cd '" + dir + "' && TERM=xterm-256color exec " + bin + " --observer 'observer 1'")}
+		tty, err := pty.StartWithSize(s.cmd, &pty.Winsize{Rows: 24, Cols: 80})
+		if err != nil {
+			t.Fatal(err)
+		}
+		s.tty = tty
+		go s.read()
+		go func() { s.ended <- s.cmd.Wait() }()
+		s.see("idle", 20*time.Second)
+		if k > 0 {
+			s.see("Nova", 10*time.Second) // what the drop before left, on the screen that was up
+		}
+		s.press("\x1b")
+		time.Sleep(200 * time.Millisecond)
+		s.press(fmt.Sprintf("oround %d\r", k))
+		s.see("saved: note", 10*time.Second)
+		notes++
+		s.press("a")
+		s.see("a new target", 10*time.Second)
+		s.press("\x15") // a fresh name
+		time.Sleep(100 * time.Millisecond)
+		name := fmt.Sprintf("Nova %d", k)
+		s.press(name)
+		time.Sleep(time.Duration(1300+(k*173)%700) * time.Millisecond)
+		s.press(" and more")
+		s.cmd.Process.Kill() // the link drops
+		<-s.ended
+		tty.Close()
+		waitGone(t, dir)
+		db, err := store.Open(filepath.Join(dir, "run.db"))
+		if err != nil {
+			t.Fatal(err)
+		}
+		b := logbook.Open(db, time.Now, "")
+		if err := db.Check(context.Background()); err != nil {
+			t.Error(err)
+		}
+		list, err := b.Entries(context.Background(), time.Time{}, time.Time{})
+		if err != nil || len(list) != notes {
+			t.Errorf("drop %d: %d entries of %d, %v", k, len(list), notes, err)
+		}
+		drafts, err := db.Select(context.Background(), store.Drafts, "screen = ?", "new target")
+		if err != nil || len(drafts) == 0 || !strings.Contains(drafts[len(drafts)-1].Text("detail"), name) {
+			t.Errorf("drop %d: the draft is %v, %v", k, drafts, err)
+		}
+		db.Close()
+	}
+}
+
+// waitGone waits until no program of the tests works in a folder.
+func waitGone(t *testing.T, dir string) {
+	t.Helper()
+	for end := time.Now().Add(10 * time.Second); ; time.Sleep(50 * time.Millisecond) {
+		alive := false
+		links, _ := filepath.Glob("/proc/[0-9]*/cwd")
+		for _, l := range links {
+			if at, err := os.Readlink(l); err == nil && at == dir {
+				alive = true
+			}
+		}
+		if !alive {
+			return
+		}
+		if time.Now().After(end) {
+			t.Fatal("a program is left 10 s after its link dropped")
+		}
+	}
+}
+
+// sshd starts a private server on loopback and returns what makes a call over
+// it.
+func sshd(t *testing.T) func(command string) *exec.Cmd {
+	t.Helper()
+	if _, err := os.Stat("/usr/sbin/sshd"); err != nil {
+		t.Skip("no sshd on this machine")
+	}
+	dir := t.TempDir()
+	for _, k := range []string{"host", "key"} {
+		if out, err := exec.Command("ssh-keygen", "-q", "-t", "ed25519", "-N", "", "-f", filepath.Join(dir, k)).CombinedOutput(); err != nil {
+			t.Skipf("no keys: %v %s", err, out)
+		}
+	}
+	os.MkdirAll("/run/sshd", 0o755)
+	listener, err := net.Listen("tcp", "127.0.0.1:0")
+	if err != nil {
+		t.Fatal(err)
+	}
+	port := fmt.Sprint(listener.Addr().(*net.TCPAddr).Port)
+	listener.Close()
+	config := "Port " + port + "\nListenAddress 127.0.0.1\nHostKey " + dir + "/host\nAuthorizedKeysFile " + dir + "/key.pub\nStrictModes no\nUsePAM no\nPasswordAuthentication no\nPermitRootLogin prohibit-password\nPidFile none\n"
+	if err := os.WriteFile(filepath.Join(dir, "config"), []byte(config), 0o600); err != nil {
+		t.Fatal(err)
+	}
+	server := exec.Command("/usr/sbin/sshd", "-D", "-f", filepath.Join(dir, "config"), "-E", filepath.Join(dir, "log"))
+	if err := server.Start(); err != nil {
+		t.Skip("sshd does not start: ", err)
+	}
+	t.Cleanup(func() { server.Process.Kill(); server.Wait() })
+	for range 100 {
+		if c, err := net.Dial("tcp", "127.0.0.1:"+port); err == nil {
+			c.Close()
+			break
+		}
+		time.Sleep(50 * time.Millisecond)
+	}
+	return func(command string) *exec.Cmd {
+		return exec.Command("ssh", "-tt", "-p", port, "-i", filepath.Join(dir, "key"), "-o", "IdentitiesOnly=yes", "-o", "StrictHostKeyChecking=no",
+			"-o", "UserKnownHostsFile=/dev/null", "-o", "LogLevel=ERROR", "127.0.0.1", command)
 	}
 }

@@ -11,7 +11,6 @@ import (
 	"strconv"
 	"strings"
 	"sync"
-	"syscall"
 	"time"
 
 	"github.com/charmbracelet/x/term"
@@ -179,7 +178,7 @@ func (s *session) openLog(src *desk.Source) (*store.DB, error) {
 // log gives the screens the run's log, and what an earlier session left.
 func (s *session) log(src *desk.Source, o *options, w world, book *logbook.Book) {
 	src.Book, src.Observer = book, first(o.observer, os.Getenv("EVENFALL_OBSERVER"))
-	src.Requests, src.Limits, src.PID, src.Alive = s.requests, s.limits, os.Getpid(), processLives
+	src.Requests, src.Limits, src.PID, src.Alive = s.requests, s.limits, os.Getpid(), terminal.Alive
 	src.ClockWords = clock.DisciplineWords(clock.Disciplined())
 	src.Request = func(target string) (targets.Request, bool) {
 		best, found := targets.Request{}, false
@@ -198,7 +197,7 @@ func (s *session) log(src *desk.Source, o *options, w world, book *logbook.Book)
 	if err != nil || !ok {
 		return
 	}
-	if w.clock.Now().Sub(last.Seen) < aliveWithin && last.Ended.IsZero() && processLives(last.PID) {
+	if w.clock.Now().Sub(last.Seen) < aliveWithin && last.Ended.IsZero() && terminal.Alive(last.PID) {
 		src.Session += fmt.Sprintf(", login %d", os.Getpid()) // the other one is still there
 		return
 	}
@@ -207,11 +206,6 @@ func (s *session) log(src *desk.Source, o *options, w world, book *logbook.Book)
 
 // aliveWithin is how lately a session must have been seen to be still there.
 const aliveWithin = 12 * time.Hour
-
-// processLives tells whether a process of this machine is there.
-func processLives(pid int) bool {
-	return pid > 0 && (pid == os.Getpid() || syscall.Kill(pid, 0) == nil)
-}
 
 // nights prepares nights and keeps them; safe for several goroutines.
 func (s *session) nights() func(astro.Date) (*moment.Night, error) {
