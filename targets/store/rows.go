@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"sort"
 	"strings"
+	"time"
 )
 
 // Row is one row: values by column. A value is a string, float64, int64 or
@@ -64,6 +65,9 @@ func (d *DB) Do(ctx context.Context, f func(*Tx) error) error {
 			return judge(err)
 		}
 	}
+	if d.busy.Load() {
+		time.Sleep(rest)
+	}
 	tx, err := d.sql.BeginTx(ctx, nil)
 	if err != nil {
 		return judge(err)
@@ -72,7 +76,10 @@ func (d *DB) Do(ctx context.Context, f func(*Tx) error) error {
 	if err := f(&Tx{ctx, tx}); err != nil {
 		return err
 	}
-	return judge(tx.Commit())
+	err = judge(tx.Commit())
+	d.busy.Store(true)
+	time.AfterFunc(rest, func() { d.busy.Store(false) })
+	return err
 }
 
 // Insert adds a row and returns its id, which was never used before.

@@ -14,6 +14,8 @@ import (
 	"path/filepath"
 	"strings"
 	"sync"
+	"sync/atomic"
+	"time"
 
 	_ "modernc.org/sqlite" // the driver, in pure Go
 )
@@ -24,13 +26,18 @@ type DB struct {
 	path     string
 	readOnly bool
 	mu       sync.Mutex
-	seen     int64 // data_version when last asked
+	seen     int64       // data_version when last asked
+	busy     atomic.Bool // wrote a moment ago
 	fail     func() error
 }
 
 // busyMs is how long a writer waits for another one, milliseconds. A
 // transaction takes some ten; another one that takes seconds has died.
 const busyMs = 5000
+
+// rest is how long a writer that has just written leaves the database to
+// others. SQLite has no queue: who writes without a pause would starve them.
+const rest = 4 * time.Millisecond
 
 // Open opens run.db, making it where it is missing, and brings it to the
 // present schema, after a copy of the old file.

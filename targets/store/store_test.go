@@ -7,9 +7,12 @@ import (
 	"fmt"
 	"os"
 	"path/filepath"
+	"slices"
+	"strconv"
 	"strings"
 	"sync"
 	"testing"
+	"time"
 )
 
 var ctx = context.Background()
@@ -208,7 +211,8 @@ func TestFailures(t *testing.T) {
 }
 
 // Two writers at once, each with a connection of its own: all there, none
-// twice, and each sees that the other wrote.
+// twice, and each sees that the other wrote. EVENFALL_WRITES sets how many
+// entries each writes (250).
 func TestTwoWriters(t *testing.T) {
 	a, path := fresh(t)
 	b, err := Open(path)
@@ -219,7 +223,10 @@ func TestTwoWriters(t *testing.T) {
 	if changed, err := a.Changed(ctx); err != nil || !changed {
 		t.Error("the first look sees no change", err)
 	}
-	const each = 250
+	each := 250
+	if n, err := strconv.Atoi(os.Getenv("EVENFALL_WRITES")); err == nil {
+		each = n
+	}
 	var wg sync.WaitGroup
 	for w, d := range []*DB{a, b} {
 		wg.Add(1)
@@ -313,6 +320,56 @@ func TestNetworkKind(t *testing.T) {
 	if got := NetworkKind(t.TempDir()); got != "" {
 		t.Logf("the folder of the tests lies on %s", got)
 	}
+}
+
+// BenchmarkTwoWriters reports the 99th percentile of an entry while another
+// writes too, as a ratio to that of a plain write and sync in the same run.
+func BenchmarkTwoWriters(b *testing.B) {
+	a, path := fresh(b)
+	other, err := Open(path)
+	if err != nil {
+		b.Fatal(err)
+	}
+	defer other.Close()
+	stop := make(chan struct{})
+	var wg sync.WaitGroup
+	wg.Add(1)
+	go func() {
+		defer wg.Done()
+		for {
+			select {
+			case <-stop:
+				return
+			default:
+				other.Do(ctx, func(tx *Tx) error { _, err := tx.Insert(Entries, Row{"note": "other"}); return err })
+			}
+		}
+	}()
+	f, err := os.Create(filepath.Join(b.TempDir(), "plain"))
+	if err != nil {
+		b.Fatal(err)
+	}
+	defer f.Close()
+	var entry, plain []time.Duration
+	for range max(b.N, 500) {
+		began := time.Now()
+		insert(b, a, Entries, Row{"type": "science", "target": "R Lep", "each_s": 90.0})
+		entry = append(entry, time.Since(began))
+		began = time.Now()
+		f.WriteString("science,R Lep,90\n")
+		if err := f.Sync(); err != nil {
+			b.Fatal(err)
+		}
+		plain = append(plain, time.Since(began))
+	}
+	close(stop)
+	wg.Wait()
+	slices.Sort(entry)
+	slices.Sort(plain)
+	p99 := func(l []time.Duration) float64 { return float64(l[len(l)*99/100].Microseconds()) }
+	b.ReportMetric(p99(entry)/1000, "ms-p99")
+	b.ReportMetric(p99(entry)/p99(plain), "times-plain-p99")
+	b.ReportMetric(0, "ns/op")
 }
 
 // BenchmarkEntry writes entries as the log does; BenchmarkPlainSync appends
