@@ -135,7 +135,9 @@ func DefaultLimits() Limits {
 
 // Conditions is what the sky and the dome are like now, as far as known.
 type Conditions struct {
-	Closed      bool // the dome is shut
+	Closed      bool    // the dome is shut
+	CloudFrom   Measure // azimuths between which it is cloudy, deg,
+	CloudTo     Measure // from through to, eastward
 	WindFromDeg Measure
 	WindMS      Measure
 }

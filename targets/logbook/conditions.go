@@ -240,5 +240,5 @@ func (c *Conditions) Warnings(l *targets.Limits) []string {
 
 // Of returns what the rest of the program computes with.
 func (c *Conditions) Of() targets.Conditions {
-	return targets.Conditions{Closed: c.Dome == "closed", WindFromDeg: c.WindFrom, WindMS: c.WindMS}
+	return targets.Conditions{Closed: c.Dome == "closed", WindFromDeg: c.WindFrom, WindMS: c.WindMS, CloudFrom: c.CloudFrom, CloudTo: c.CloudTo}
 }

@@ -28,6 +28,7 @@ const (
 // Take is what is being done at the telescope, or was.
 type Take struct {
 	ID               int64
+	Type             string // of the entry it will be; "" science
 	Request, Target  string
 	Phase            string
 	PhaseAt, Began   time.Time
@@ -73,7 +74,7 @@ func takeRow(t *Take) store.Row {
 	r := store.Row{"phase": t.Phase, "phase_utc": stamp(t.PhaseAt), "began_utc": stamp(t.Began), "frames": int64(t.Frames), "each_s": t.EachS,
 		"readout_s": t.ReadoutS, "done": int64(t.Done)}
 	for column, s := range map[string]string{"request": t.Request, "target": t.Target, "instrument": t.Instrument, "mode": t.Mode, "band": string(t.Band),
-		"file_first": t.FileFirst, "observer": t.Observer, "session": t.Session, "ended_utc": stamp(t.Ended), "how": t.How} {
+		"file_first": t.FileFirst, "observer": t.Observer, "session": t.Session, "ended_utc": stamp(t.Ended), "how": t.How, "type": t.Type} {
 		if s != "" {
 			r[column] = s
 		}
@@ -88,7 +89,7 @@ func takeOf(r store.Row) Take {
 	t := Take{ID: r.Int("id"), Request: r.Text("request"), Target: r.Text("target"), Phase: r.Text("phase"), PhaseAt: parse(r.Text("phase_utc")),
 		Began: parse(r.Text("began_utc")), Frames: int(r.Int("frames")), Done: int(r.Int("done")), Instrument: r.Text("instrument"), Mode: r.Text("mode"),
 		Band: targets.Band(r.Text("band")), FileFirst: r.Text("file_first"), Observer: r.Text("observer"), Session: r.Text("session"),
-		Ended: parse(r.Text("ended_utc")), How: r.Text("how"), Entry: r.Int("entry")}
+		Ended: parse(r.Text("ended_utc")), How: r.Text("how"), Type: r.Text("type"), Entry: r.Int("entry")}
 	t.EachS, _ = r.Real("each_s")
 	t.ReadoutS, _ = r.Real("readout_s")
 	return t

@@ -106,7 +106,22 @@ func (t *tracker) rules() []rule {
 			return off - l.WindSector.Deg()/2
 		}})
 	}
+	if middle, half, ok := CloudSector(&t.night.Conditions); ok {
+		rules = append(rules, rule{targets.CodeCloud, func(k look) float64 {
+			return math.Abs(k.place.Az.Minus(middle).Signed().Deg()) - half
+		}})
+	}
 	return rules
+}
+
+// CloudSector returns the middle of the sector of cloud and half its width,
+// degrees; false: there is none.
+func CloudSector(c *targets.Conditions) (middle astro.Angle, half float64, ok bool) {
+	if !c.CloudFrom.Known || !c.CloudTo.Known || c.CloudFrom.Value == c.CloudTo.Value {
+		return middle, 0, false
+	}
+	wide := astro.Deg(c.CloudTo.Value - c.CloudFrom.Value).Turn().Deg()
+	return astro.Deg(c.CloudFrom.Value + wide/2), wide / 2, true
 }
 
 // times returns when a rule is kept tonight: the values at the nodes, with

@@ -213,3 +213,37 @@ func TestInstrumentLimits(t *testing.T) {
 		t.Errorf("a mode for a brighter sky begins at %v, without it at %v", with.Can[0].From.UTC(), without.Can[0].From.UTC())
 	}
 }
+
+// A sector of cloud closes the stars in it, across north too; one without
+// width closes none.
+func TestCloudSector(t *testing.T) {
+	for _, c := range []struct {
+		from, to, az float64
+		in           bool
+	}{{270, 330, 300, true}, {270, 330, 200, false}, {330, 30, 5, true}, {330, 30, 100, false}, {10, 10, 10, false}} {
+		k := targets.Conditions{CloudFrom: targets.Known(c.from), CloudTo: targets.Known(c.to)}
+		middle, half, ok := CloudSector(&k)
+		in := ok && math.Abs(astro.Deg(c.az).Minus(middle).Signed().Deg()) < half
+		if in != c.in {
+			t.Errorf("%v", c)
+		}
+	}
+	n, err := NewNight(testSite, astro.Date{Year: 2026, Month: 12, Day: 1}, targets.DefaultLimits(), targets.Conditions{CloudFrom: targets.Known(0), CloudTo: targets.Known(359.9)})
+	if err != nil {
+		t.Fatal(err)
+	}
+	blocked := 0
+	for _, p := range testStars(t)[:20] {
+		c := Tonight(n, &p, Want{})
+		s := NewScene(n, testInstant(t, "2026-12-02T04:00:00Z"))
+		m := Of(&s, &p, &c, Want{})
+		for _, b := range m.BlockedBy {
+			if b.Code == targets.CodeCloud && b.Words != "" {
+				blocked++
+			}
+		}
+	}
+	if blocked != 20 {
+		t.Errorf("%d of 20 stars are behind cloud all around", blocked)
+	}
+}

@@ -38,6 +38,8 @@ func words(s *Scene, m *Moment, b Block) string {
 		text = fmt.Sprintf("only %s from the Moon, the limit is %s", degrees(m.MoonSep), degrees(l.Moon))
 	case targets.CodeWind:
 		text = "in the sector of the wind"
+	case targets.CodeCloud:
+		text = "in the sector of cloud"
 	case targets.CodeWindow:
 		text = "outside the hours allocated tonight"
 	case targets.CodeInstrument:

@@ -35,7 +35,11 @@ type bounds struct {
 	can, should              darkness
 	sinLat, cosLat           float64
 	horizon                  []targets.HorizonPoint
+	sectors                  []sector // of wind and cloud
 }
+
+// sector is a part of the sky by azimuth that is kept away from.
+type sector struct{ middle, half float64 } // rad
 
 // bulk ranks a long list by the sweep.
 func (r *Roster) bulk(ctx context.Context, s *Snapshot, ask Ask) error {
@@ -99,12 +103,22 @@ func boundsOf(s *moment.Scene) bounds {
 		decFrom: math.Sin(l.DeclinationDeg[0] * math.Pi / 180), decUntil: math.Sin(l.DeclinationDeg[1] * math.Pi / 180),
 		sinLat: s.Night.Site.Lat.Sin(), cosLat: math.Max(s.Night.Site.Lat.Cos(), 1e-9), horizon: l.Horizon,
 	}
+	c := &s.Night.Conditions
+	if c.WindMS.Known && c.WindFromDeg.Known && c.WindMS.Value > l.WindMS {
+		b.sectors = append(b.sectors, sector{astro.Deg(c.WindFromDeg.Value).Rad(), l.WindSector.Rad() / 2})
+	}
+	if middle, half, cloudy := moment.CloudSector(c); cloudy {
+		b.sectors = append(b.sectors, sector{middle.Rad(), astro.Deg(half).Rad()})
+	}
 	if l.MaxAltitude.Deg() < 90 {
 		b.sinTop = sin(l.MaxAltitude)
 	}
 	can, should := s.Night.CanDark(), s.Night.SunBelow(moment.ShouldSunAltitude)
 	if ours := s.Night.Allocated; ours != nil {
 		can, should = astro.Intersect(can, ours), astro.Intersect(should, ours)
+	}
+	if s.Night.Conditions.Closed {
+		can, should = nil, nil
 	}
 	b.can, b.should = darknessAt(can, s.Instant), darknessAt(should, s.Instant)
 	return b
@@ -140,9 +154,12 @@ func (b *bounds) judge(f *frame.Frame, sun, u astro.Vec, c *sweep.Columns, i int
 	cosDec := math.Sqrt(math.Max(1-sinDec*sinDec, 1e-18))
 	h := math.Atan2(-f.East.Dot(u), (sa-b.sinLat*sinDec)/b.cosLat)
 	ok := sinDec >= b.decFrom && sinDec <= b.decUntil && sun.Dot(u) <= b.cosSun && !(b.moonUp && float64(q.cosMoon) > b.cosMoon)
-	if len(b.horizon) > 0 && ok {
-		az := math.Atan2(f.East.Dot(u), f.North.Dot(u))
-		ok = sa >= moment.HorizonAt(b.horizon, astro.Rad(az)).Sin()
+	if ok && len(b.horizon)+len(b.sectors) > 0 {
+		az := astro.Rad(math.Atan2(f.East.Dot(u), f.North.Dot(u)))
+		ok = len(b.horizon) == 0 || sa >= moment.HorizonAt(b.horizon, az).Sin()
+		for _, s := range b.sectors {
+			ok = ok && math.Abs(az.Minus(astro.Rad(s.middle)).Signed().Rad()) >= s.half
+		}
 	}
 	if !ok {
 		return q

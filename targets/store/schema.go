@@ -64,7 +64,7 @@ var Tables = []Table{
 		columns(Text, "request", "target", "phase", "phase_utc", "began_utc"),
 		columns(Integer, "frames"), columns(Real, "each_s", "readout_s"), columns(Integer, "done"),
 		columns(Text, "instrument", "mode", "band", "file_first", "observer", "session", "ended_utc", "how"),
-		columns(Integer, "entry"))},
+		columns(Integer, "entry"), columns(Text, "type"))},
 	{Conditions, join(
 		columns(Text, "from_utc"),
 		columns(Real, "seeing_arcsec", "extinction_mag", "cloud_from_deg", "cloud_to_deg", "wind_from_deg", "wind_ms", "humidity", "dew_margin_c"),

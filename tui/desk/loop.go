@@ -1,8 +1,10 @@
 package desk
 
 import (
+	"cmp"
 	"context"
 	"fmt"
+	"slices"
 	"strconv"
 	"strings"
 	"time"
@@ -24,6 +26,7 @@ func sessionEntry(t targets.Target, band targets.Band, level float64) roster.Ent
 
 // setup is what the next take is taken with.
 type setup struct {
+	kind   string // type of the entry; "" science
 	frames int
 	each   float64
 	file   string
@@ -37,6 +40,8 @@ func parseSetup(s string) (setup, error) {
 		count, err1 := strconv.Atoi(n)
 		sec, err2 := strconv.ParseFloat(each, 64)
 		switch {
+		case slices.Contains(logbook.Types[:10], word):
+			out.kind = word
 		case ok && err1 == nil && err2 == nil:
 			if count < 1 || count > 100_000 || !(sec > 0 && sec < 1e6) {
 				return out, fmt.Errorf("%s: frames from 1 on, seconds above 0", word)
@@ -45,7 +50,7 @@ func parseSetup(s string) (setup, error) {
 		case out.file == "":
 			out.file = word
 		default:
-			return out, fmt.Errorf("%s: write frames x seconds and the first file, e.g. 3x90 obs0042", word)
+			return out, fmt.Errorf("%s: write frames x seconds and the first file, e.g. 3x90 obs0042, or flat 11x3", word)
 		}
 	}
 	return out, nil
@@ -56,7 +61,7 @@ func (s setup) String() string {
 	if s.frames > 0 {
 		text = fmt.Sprintf("%dx%g", s.frames, s.each)
 	}
-	return strings.TrimSpace(text + " " + s.file)
+	return strings.Join(strings.Fields(s.kind+" "+text+" "+s.file), " ")
 }
 
 // setTake takes over what is under way in this session; nil: nothing.
@@ -104,16 +109,21 @@ func (d *Desk) advance(quick bool) []Task {
 // begin starts a take of the selected star.
 func (d *Desk) begin(quick, confirmed bool) []Task {
 	e := d.w.Entry()
-	if e == nil {
+	ofSky := d.setup.kind == "" || d.setup.kind == "science" || d.setup.kind == "standard" || d.setup.kind == "telluric" || d.setup.kind == "acquisition"
+	if e == nil && ofSky {
 		d.say("no star is selected", false)
 		return nil
 	}
-	t := logbook.Take{Target: e.Target.Name, Phase: logbook.Slewing, PhaseAt: d.w.Wall, Began: d.w.Wall, Done: -1, Session: d.src.Session, Observer: d.w.Observer}
-	if quick {
+	name := d.setup.kind
+	if ofSky {
+		name = e.Target.Name
+	}
+	t := logbook.Take{Type: d.setup.kind, Target: name, Phase: logbook.Slewing, PhaseAt: d.w.Wall, Began: d.w.Wall, Done: -1, Session: d.src.Session, Observer: d.w.Observer}
+	if quick || !ofSky {
 		t.Phase = logbook.Exposing
 	}
-	if d.src.Request != nil {
-		if q, ok := d.src.Request(e.Target.Name); ok {
+	if d.src.Request != nil && ofSky {
+		if q, ok := d.src.Request(name); ok {
 			t.Request, t.Instrument, t.Mode, t.Band = q.ID, q.Instrument, q.Mode, q.Band
 			if q.Frames > 0 && q.ExposureS.Known {
 				t.Frames, t.EachS = q.Frames, q.ExposureS.Value
@@ -212,6 +222,9 @@ func (d *Desk) end(how string) []Task {
 			if next, ok := logbook.Count(e.FileLast, 1); ok {
 				d.setup.file = next
 			}
+			if k.Type != "" { // flats are over, science goes on
+				d.setup.kind, d.setup.frames = "", 0
+			}
 			return nil
 		},
 	})
@@ -221,7 +234,7 @@ func (d *Desk) end(how string) []Task {
 func (d *Desk) entryOf(k *logbook.Take, how string) logbook.Entry {
 	now := d.w.Wall
 	s := k.At(now)
-	e := logbook.Entry{Type: "science", Request: k.Request, Target: k.Target, Start: k.PhaseAt, End: now, Instrument: k.Instrument, Mode: k.Mode, Band: k.Band,
+	e := logbook.Entry{Type: cmp.Or(k.Type, "science"), Request: k.Request, Target: k.Target, Start: k.PhaseAt, End: now, Instrument: k.Instrument, Mode: k.Mode, Band: k.Band,
 		Observer: d.w.Observer, FileFirst: k.FileFirst, Seeing: d.w.Conditions.Seeing, Extinction: d.w.Conditions.Extinction, ClockOffsetS: d.offset}
 	if k.Phase != logbook.Exposing { // ended before the first frame
 		e.Type, e.Start = "acquisition", k.Began
@@ -270,8 +283,15 @@ func (d *Desk) loopLine(p *kit.Pen) {
 	} else {
 		p.Put(kit.Text, "idle")
 	}
+	if d.offset.Known {
+		p.Put(kit.Text, fmt.Sprintf("  (instrument's clock %+g s)", d.offset.Value))
+	}
 	if what, at, ok := d.fixed(); ok {
-		p.Put(kit.Dim, fmt.Sprintf("   fits %s: %s %s", kit.Left(at.Sub(w.Wall)), what, at.UTC().Round(time.Minute).Format("15:04")))
+		role, sign := kit.Dim, ""
+		if at.Sub(w.Wall) < bellBefore {
+			role, sign = kit.Warn, "! "
+		}
+		p.Put(role, fmt.Sprintf("   %sfits %s: %s %s", sign, kit.Left(at.Sub(w.Wall)), what, at.UTC().Round(time.Minute).Format("15:04")))
 	}
 	for _, o := range w.Others {
 		p.Put(kit.Warn, fmt.Sprintf("   %s: %s %s", o.Observer, o.At(w.Wall).Phase, o.Target))

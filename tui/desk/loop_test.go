@@ -84,6 +84,20 @@ func TestLoopSteps(t *testing.T) {
 	d.Press("e").Type("3x").Press("enter").Press("e").Type("a b c").Press("enter").See("write frames x seconds")
 	d.Press("esc", "i").Type("-0.4").Press("enter").See("-0.4 s ahead")
 	d.Press("b").See("bell off")
+	d.Press("e", "ctrl+u").Type("flat 11x3 b0001").Press("enter", "T").See("exposing flat").Wait(40 * time.Second)
+	d.See("COMPLETE 11 of 11", "instrument's clock -0.4").Press("t").See("saved: flat flat")
+	d.Press("o").Type("fault: the dome sticks").Press("enter").See("saved: fault")
+	list = logOf(t, book)
+	kinds := map[string]bool{}
+	for _, e := range list {
+		kinds[e.Type] = true
+		if e.Type == "flat" && (e.Frames != 11 || e.FileLast != "b0011" || e.ClockOffsetS.Value != -0.4) {
+			t.Errorf("%+v", e)
+		}
+	}
+	if !kinds["flat"] || !kinds["fault"] {
+		t.Errorf("%+v", list)
+	}
 }
 
 // Conditions are typed, logged, warned of, and heeded: a closed dome takes no

@@ -31,9 +31,9 @@ func (d *Desk) atTelescope(a kit.Action) ([]Task, bool) {
 		}
 		d.sure("y aborts "+d.w.Take.Target+" and logs it as void; other keys go on", func(d *Desk) []Task { return d.end(logbook.Aborted) })
 	case kit.SetUp:
-		d.ask1(prompt{label: "take", hint: "frames x seconds, first file: 3x90 obs0042", field: kit.NewField(d.setup.String()), take: (*Desk).settle})
+		d.ask1(prompt{label: "take", hint: "frames x seconds, first file: 3x90 obs0042; flat 11x3", field: kit.NewField(d.setup.String()), take: (*Desk).settle})
 	case kit.WriteNote:
-		d.ask1(prompt{label: "note", hint: "enter writes it into the log", take: (*Desk).note})
+		d.ask1(prompt{label: "note", hint: "enter writes it; begin with fault: for a fault", take: (*Desk).note})
 	case kit.OpenWeather:
 		d.screens = append(d.screens, d.weather)
 	case kit.OpenLog:
@@ -95,14 +95,17 @@ func (d *Desk) note(text string) []Task {
 	if strings.TrimSpace(text) == "" {
 		return nil
 	}
-	at := d.w.Wall
+	at, kind := d.w.Wall, "note"
+	if rest, ok := strings.CutPrefix(strings.TrimSpace(text), "fault:"); ok {
+		kind, text = "fault", strings.TrimSpace(rest)
+	}
 	return d.named(func(d *Desk) []Task {
-		return d.save(write{what: "note: " + text,
+		return d.save(write{what: kind + ": " + text,
 			run: func(ctx context.Context, b *logbook.Book) (any, error) {
-				return b.Add(ctx, logbook.Entry{Type: "note", Start: at, Note: text})
+				return b.Add(ctx, logbook.Entry{Type: kind, Start: at, Note: text})
 			},
 			done: func(d *Desk, r any) []Task {
-				d.say(fmt.Sprintf("entry %d saved: note", r.(int64)), false)
+				d.say(fmt.Sprintf("entry %d saved: %s", r.(int64), kind), false)
 				return nil
 			}})
 	})

@@ -156,7 +156,7 @@ var kept = map[targets.Code]string{
 	targets.CodeDaylight: "Sun low enough", targets.CodeSun: "far enough from the Sun", targets.CodeBelow: "above the horizon",
 	targets.CodeAltitude: "high enough", targets.CodeHorizon: "above the site's horizon", targets.CodeZenith: "clear of the zenith",
 	targets.CodeHourAngle: "hour angle allowed", targets.CodeDeclination: "declination allowed", targets.CodeMoon: "far enough from the Moon",
-	targets.CodeWind: "out of the wind", targets.CodeWindow: "in our hours", targets.CodeClosed: "open", targets.CodeInstrument: "instrument mounted",
+	targets.CodeWind: "out of the wind", targets.CodeCloud: "out of the cloud", targets.CodeWindow: "in our hours", targets.CodeClosed: "open", targets.CodeInstrument: "instrument mounted",
 }
 
 func (w *writer) night(m *moment.Moment) {
