@@ -75,6 +75,25 @@ func TestOpen(t *testing.T) {
 	}
 }
 
+// Where the folder is the group's, run.db is too.
+func TestGroup(t *testing.T) {
+	for mode, want := range map[os.FileMode]os.FileMode{0o775: 0o020, 0o755: 0} {
+		dir := t.TempDir()
+		if err := os.Chmod(dir, mode); err != nil {
+			t.Fatal(err)
+		}
+		d, err := Open(filepath.Join(dir, "run.db"))
+		if err != nil {
+			t.Fatal(err)
+		}
+		d.Close()
+		info, err := os.Stat(filepath.Join(dir, "run.db"))
+		if err != nil || info.Mode().Perm()&0o020 != want {
+			t.Errorf("folder %v: file %v, %v", mode, info.Mode(), err)
+		}
+	}
+}
+
 // Ids are never used again, rows of the log never deleted, unknown columns
 // and tables refused.
 func TestRows(t *testing.T) {

@@ -39,6 +39,10 @@ var scenes = []struct {
 	{"entry", []string{"a", "T", "1", "enter", "0", "5", " ", "3", "4", " ", "3", "1", " ", "-", "2", "2", " ", "0", "0", " ", "5", "2", "enter", "w", "d"}},
 	{"plain", []string{"c"}},
 	{"help", []string{"?"}},
+	{"log", []string{"e", "3", "x", "9", "0", " ", "o", "b", "s", "0", "0", "4", "2", "enter", "T", "x", "y", "o", "f", "o", "g", "enter", "l"}},
+	{"exposing", []string{"e", "3", "x", "9", "0", "enter", "T"}},
+	{"conditions", []string{"w", "1", ".", "2", "enter", "0"}},
+	{"note", []string{"o", "f", "o", "g"}},
 	{"asked", []string{"a", "T", "esc", "q"}},
 }
 
@@ -51,6 +55,7 @@ func TestGolden(t *testing.T) {
 	src := check.Source(t, 5)
 	src.Copy = func(string) (string, error) { return "the clipboard", nil }
 	for _, s := range scenes {
+		check.Logged(t, &src, "observer 1")
 		d := check.New(t, src, 80, 24)
 		d.Press(s.keys...)
 		for _, size := range sizes {

@@ -250,8 +250,10 @@ func (d *Desk) entryOf(k *logbook.Take, how string) logbook.Entry {
 				e.End = end
 			}
 		}
-		if last, ok := logbook.Count(k.FileFirst, max(e.Frames-1, 0)); ok {
+		if last, ok := logbook.Count(k.FileFirst, e.Frames-1); ok && e.Frames > 0 {
 			e.FileLast = last
+		} else if e.Frames == 0 { // no frame was completed: no file
+			e.FileFirst = ""
 		}
 	}
 	if how == logbook.Stopped {

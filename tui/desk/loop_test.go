@@ -53,7 +53,9 @@ func TestTwoKeys(t *testing.T) {
 	}
 	// the next one counts its files on, and nobody is asked again
 	d.Press("T").See("frame 1 of 3").Press("x").See("entry 2 saved")
-	if list = logOf(t, book); list[1].FileFirst != "obs0045" || !strings.Contains(list[1].Note, "stopped early") || list[1].Frames != 0 {
+	d.Press("T").See("frame 1 of 3").Wait(130 * time.Second).Press("x").See("entry 3 saved")
+	if list = logOf(t, book); list[1].FileFirst != "" || list[1].Frames != 0 || list[2].FileFirst != "obs0045" || list[2].FileLast != "obs0045" ||
+		!strings.Contains(list[2].Note, "stopped early") || list[2].Frames != 1 {
 		t.Errorf("%+v", list[1])
 	}
 }

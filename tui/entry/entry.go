@@ -181,7 +181,7 @@ func (s Screen) View(w *kit.World, width, height int) string {
 	if height >= 16 {
 		p.Line().Put(kit.Title, "a new target, kept for this session").Line().Line()
 	}
-	s.form.Draw(p)
+	s.form.Draw(p, height-p.Lines())
 	if height >= 16 {
 		p.Line()
 	}

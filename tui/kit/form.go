@@ -77,9 +77,12 @@ func (f Form) Recall(draft string) Form {
 	return f
 }
 
-// Draw writes the form's lines.
-func (f Form) Draw(p *Pen) {
-	for i, l := range f.Lines {
+// Draw writes the form's lines, those about the one being typed where there
+// is no room for all.
+func (f Form) Draw(p *Pen, room int) {
+	from := max(min(f.At-room/2, len(f.Lines)-room), 0)
+	for i, l := range f.Lines[from:min(from+max(room, 0), len(f.Lines))] {
+		i += from
 		cursor := "  "
 		if i == f.At {
 			cursor = "> "

@@ -146,7 +146,7 @@ func (s Screen) View(w *kit.World, width, height int) string {
 		header = 1
 	}
 	kit.Header(w, p, header)
-	s.form.Draw(p)
+	s.form.Draw(p, height-p.Lines())
 	say := func(r kit.Role, text string) {
 		for _, line := range kit.Wrap(text, width, 2) {
 			if p.Lines() < height {
