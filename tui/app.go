@@ -61,6 +61,7 @@ func Open(o Options) error {
 // The messages of our own.
 type (
 	tick     struct{}
+	beat     struct{} // a second has passed
 	ack      struct{}
 	retaken  struct{}         // the terminal is ours again
 	settle   struct{}         // the size has settled
@@ -79,7 +80,7 @@ const unknownCSI = "tea.unknownCSISequenceMsg"
 // acknowledged turns the terminal's answer into a message of our own.
 func acknowledged(msg tea.Msg) tea.Msg {
 	switch msg.(type) {
-	case tea.KeyMsg, tick, ack, finished, settle, escape, lookover, retaken, tea.WindowSizeMsg:
+	case tea.KeyMsg, tick, beat, ack, finished, settle, escape, lookover, retaken, tea.WindowSizeMsg:
 		return msg
 	}
 	if fmt.Sprintf("%T", msg) == unknownCSI {
@@ -109,7 +110,15 @@ func newModel(o Options, p *pace) *model {
 }
 
 // Init starts the clock and the first list.
-func (m *model) Init() tea.Cmd { return tea.Batch(m.commands(m.start), m.nextTick()) }
+func (m *model) Init() tea.Cmd { return tea.Batch(m.commands(m.start), m.nextTick(), m.nextBeat()) }
+
+// nextBeat waits for the next second where the screen goes on more seldom.
+func (m *model) nextBeat() tea.Cmd {
+	if m.o.Tick > 0 && m.o.Tick <= time.Second {
+		return nil
+	}
+	return tea.Every(time.Second, func(time.Time) tea.Msg { return beat{} })
+}
 
 func (m *model) nextTick() tea.Cmd {
 	if m.o.Tick <= 0 {
@@ -184,6 +193,8 @@ func (m *model) Update(msg tea.Msg) (_ tea.Model, cmd tea.Cmd) {
 		return m, m.commands(m.desk.Resize(m.size.Width, m.size.Height))
 	case tick:
 		return m, tea.Batch(m.commands(m.desk.Tick(m.o.Clock.Now())), m.nextTick(), m.ring())
+	case beat:
+		return m, tea.Batch(m.commands(m.desk.Beat(m.o.Clock.Now())), m.nextBeat(), m.ring())
 	case ack:
 		m.pace.arrived()
 	case lookover:

@@ -3,6 +3,7 @@
 package tui
 
 import (
+	"context"
 	"fmt"
 	"os"
 	"strings"
@@ -523,5 +524,30 @@ func TestPanics(t *testing.T) {
 	log, err := os.ReadFile(dir + "/crash.log")
 	if err != nil || !strings.Contains(string(log), "two and two") || !strings.Contains(string(log), "app_test.go") || !strings.Contains(string(log), "nil pointer") {
 		t.Errorf("crash log: %v\n%s", err, log)
+	}
+}
+
+// However seldom the screen goes on, what is half typed is kept each second.
+func TestBeat(t *testing.T) {
+	for _, tick := range []time.Duration{0, time.Minute, time.Second} {
+		src := source(t, 16)
+		book := check.Logged(t, &src, "observer 1")
+		m := newModel(Options{Source: src, Clock: quick{time.Now(), 1}, Tick: tick}, &pace{now: time.Now})
+		run := func(tasks []desk.Task) {
+			for len(tasks) > 0 {
+				tasks = append(tasks[1:], m.desk.Apply(tasks[0].Run())...)
+			}
+		}
+		run(m.start)
+		for _, k := range []string{"a", "N", "o", "v", "a"} {
+			run(m.desk.Key(k))
+		}
+		if (m.nextBeat() == nil) != (tick == time.Second) {
+			t.Errorf("tick %v: beats %v", tick, m.nextBeat() != nil)
+		}
+		run(m.desk.Beat(check.Start.Add(time.Second)))
+		if text, err := book.Draft(context.Background(), src.Session, kit.OnEntry); err != nil || !strings.HasPrefix(text, "Nova") {
+			t.Errorf("tick %v: the draft is %q, %v", tick, text, err)
+		}
 	}
 }

@@ -319,13 +319,20 @@ func (d *Desk) Tick(now time.Time) []Task {
 	if back {
 		d.say("the clock was set back to "+now.Format("15:04:05")+"; entries keep the order of their numbers", true)
 	}
-	d.bells()
-	tasks := append(append(d.retry(), d.poll()...), d.keep()...)
+	tasks := d.Beat(now)
 	if !d.w.Live {
 		return tasks
 	}
 	d.w.Shown = now
 	return append(tasks, d.tickList(now)...)
+}
+
+// Beat brings to the disk what is half typed, tries again what it refused,
+// looks at what others wrote and rings: each second, however seldom the screen
+// goes on.
+func (d *Desk) Beat(now time.Time) []Task {
+	d.bells(now)
+	return append(append(d.retry(now), d.poll()...), d.keep()...)
 }
 
 // steppedBack is how far back the clock must jump to be spoken of.

@@ -342,7 +342,7 @@ func (d *Desk) fixed() (what string, at time.Time, ok bool) {
 }
 
 // bells returns what there is to ring for, each once.
-func (d *Desk) bells() {
+func (d *Desk) bells(now time.Time) {
 	w := &d.w
 	if w.Silent {
 		return
@@ -352,12 +352,12 @@ func (d *Desk) bells() {
 			d.rung, d.bell = what, true
 		}
 	}
-	if t := w.Take; t != nil && t.At(w.Wall).Over {
+	if t := w.Take; t != nil && t.At(now).Over {
 		ring(fmt.Sprint("end of ", t.ID))
 		return
 	}
 	if what, at, ok := d.fixed(); ok && w.Take != nil {
-		if left := at.Sub(w.Wall); left > 0 && left < bellBefore {
+		if left := at.Sub(now); left > 0 && left < bellBefore {
 			ring(what + at.Format(time.RFC3339))
 		}
 	}

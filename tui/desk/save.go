@@ -97,8 +97,8 @@ func onDisk(err error) bool {
 }
 
 // retry tries again what the disk refused.
-func (d *Desk) retry() []Task {
-	if d.refused == nil || d.w.Wall.Sub(d.failedAt) < retryAfter && !d.failedAt.After(d.w.Wall) {
+func (d *Desk) retry(now time.Time) []Task {
+	if d.refused == nil || now.Sub(d.failedAt) < retryAfter && !d.failedAt.After(now) {
 		return nil
 	}
 	return d.pump()
