@@ -32,6 +32,11 @@ type setup struct {
 	file   string
 }
 
+// ofSky tells whether the take is of a star, not of a lamp or the dark.
+func (s setup) ofSky() bool {
+	return slices.Contains([]string{"", "science", "standard", "telluric", "acquisition", "test"}, s.kind)
+}
+
 // parseSetup reads "3x90 obs0042": frames, seconds each, the first file.
 func parseSetup(s string) (setup, error) {
 	var out setup
@@ -88,6 +93,12 @@ func (d *Desk) advance(quick bool) []Task {
 	}
 	t := d.w.Take
 	if t == nil {
+		if m := d.w.Moment(); m != nil && !m.InCan && d.setup.ofSky() && len(m.BlockedBy) > 0 {
+			d.sure("y begins it all the same: "+m.BlockedBy[0].Words, func(d *Desk) []Task {
+				return d.named(func(d *Desk) []Task { return d.begin(quick, false) })
+			})
+			return nil
+		}
 		return d.named(func(d *Desk) []Task { return d.begin(quick, false) })
 	}
 	switch t.Phase {
@@ -109,7 +120,7 @@ func (d *Desk) advance(quick bool) []Task {
 // begin starts a take of the selected star.
 func (d *Desk) begin(quick, confirmed bool) []Task {
 	e := d.w.Entry()
-	ofSky := d.setup.kind == "" || d.setup.kind == "science" || d.setup.kind == "standard" || d.setup.kind == "telluric" || d.setup.kind == "acquisition"
+	ofSky := d.setup.ofSky()
 	if e == nil && ofSky {
 		d.say("no star is selected", false)
 		return nil

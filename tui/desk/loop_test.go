@@ -102,6 +102,14 @@ func TestLoopSteps(t *testing.T) {
 	}
 }
 
+// A star that cannot be taken now is not begun without a word.
+func TestBlockedTake(t *testing.T) {
+	src := check.Source(t, 8)
+	check.Logged(t, &src, "observer 1")
+	d := check.New(t, src, 80, 24)
+	d.Press("G", "T").See("y begins it all the same: ").Press("n").See("idle").Press("T", "y").See("exposing")
+}
+
 // Conditions are typed, logged, warned of, and heeded: a closed dome takes no
 // star.
 func TestWeather(t *testing.T) {
