@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"os"
 	"path/filepath"
+	"strconv"
 	"time"
 
 	"github.com/spf13/cobra"
@@ -116,7 +117,11 @@ func runLog(ctx context.Context, w world, o *options, history bool) error {
 		case "csv":
 			return logCSV(w.out, list)
 		}
-		return x.logText(w.out, list)
+		all, err := x.book.Entries(ctx, time.Time{}, time.Time{})
+		if err != nil {
+			return err
+		}
+		return x.logText(w.out, list, all)
 	})
 }
 
@@ -147,7 +152,7 @@ func logAddCommand(w world, o *options) *cobra.Command {
 				if err := g.put(cmd, x, &e); err != nil {
 					return err
 				}
-				if err := x.complete(g, &e); err != nil {
+				if err := x.complete(g, &e, ""); err != nil {
 					return err
 				}
 				id, err := x.book.Add(cmd.Context(), e)
@@ -165,8 +170,8 @@ func logAddCommand(w world, o *options) *cobra.Command {
 
 // number reads the number of an entry.
 func number(s string) (int64, error) {
-	var id int64
-	if _, err := fmt.Sscanf(s, "%d", &id); err != nil || id < 1 {
+	id, err := strconv.ParseInt(s, 10, 64)
+	if err != nil || id < 1 {
 		return 0, usagef("%s: not the number of an entry; evenfall log prints them", quote(s))
 	}
 	return id, nil
@@ -185,10 +190,11 @@ func logAmendCommand(w world, o *options) *cobra.Command {
 			}
 			return within(w, o, func(x *writing) error {
 				made, err := x.book.Amend(cmd.Context(), id, func(e *logbook.Entry) error {
+					was := e.Target
 					if err := g.put(cmd, x, e); err != nil {
 						return err
 					}
-					return x.complete(g, e)
+					return x.complete(g, e, was)
 				})
 				if err != nil {
 					return asUsage(err)

@@ -2,6 +2,7 @@ package main
 
 import (
 	"fmt"
+	"strings"
 	"time"
 
 	"github.com/spf13/cobra"
@@ -36,7 +37,11 @@ func logNoteCommand(w world, o *options) *cobra.Command {
 				if err != nil {
 					return err
 				}
-				id, err := x.book.Add(cmd.Context(), logbook.Entry{Type: "note", Start: at, Note: table.Clean(args[0])})
+				text := table.Clean(args[0])
+				if strings.TrimSpace(text) == "" {
+					return usagef("a note without words")
+				}
+				id, err := x.book.Add(cmd.Context(), logbook.Entry{Type: "note", Start: at, Note: text})
 				if err != nil {
 					return asUsage(err)
 				}
@@ -61,18 +66,18 @@ func logClosedCommand(w world, o *options) *cobra.Command {
 				if err != nil {
 					return err
 				}
+				until, err := x.from("end", end)
+				if err != nil {
+					return err
+				}
+				if end != "" && until.Before(at) {
+					return usagef("--end comes before --start")
+				}
 				id, err := x.book.Conditions(cmd.Context(), logbook.Conditions{From: at, Dome: "closed", Reason: reason, Note: table.Clean(note)})
 				if err != nil {
 					return asUsage(err)
 				}
 				if end != "" {
-					until, err := x.from("end", end)
-					if err != nil {
-						return err
-					}
-					if until.Before(at) {
-						return usagef("--end comes before --start")
-					}
 					if _, err := x.book.Conditions(cmd.Context(), logbook.Conditions{From: until, Dome: "open"}); err != nil {
 						return asUsage(err)
 					}
@@ -191,8 +196,8 @@ func logMagnitudeCommand(w world, o *options) *cobra.Command {
 				if o.band == "" || !cmd.Flags().Changed("mag") {
 					return usagef("a magnitude needs --band and --mag")
 				}
-				if !(mag > -30 && mag < 40) || err1 < 0 {
-					return usagef("--mag %g --err %g: no magnitude with its error", mag, err1)
+				if cmd.Flags().Changed("jd") && at != "" {
+					return usagef("give --jd or --utc, not both")
 				}
 				m := targets.Magnitude{Target: x.targets[i].Name, JD: jd, TimeScale: "JD_UTC", Band: targets.Band(o.band), Mag: mag, Err: err1, Limit: faint, Source: table.Clean(source)}
 				if !cmd.Flags().Changed("jd") {

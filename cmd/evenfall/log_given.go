@@ -77,6 +77,9 @@ func (g *given) put(c *cobra.Command, x *writing, e *logbook.Entry) error {
 			*n.into = targets.Known(n.value)
 		}
 	}
+	if on("grade") {
+		e.Void = g.grade == "void"
+	}
 	if on("frames") {
 		e.Frames = g.frames
 	}
@@ -106,8 +109,8 @@ func (g *given) put(c *cobra.Command, x *writing, e *logbook.Entry) error {
 }
 
 // complete fills what follows from request, target and times, and checks that
-// they are known.
-func (x *writing) complete(g *given, e *logbook.Entry) error {
+// they are known; was is the target of the entry that is amended.
+func (x *writing) complete(g *given, e *logbook.Entry, was string) error {
 	if e.Request != "" {
 		i := slices.IndexFunc(x.requests, func(q targets.Request) bool { return targets.Key(q.ID) == targets.Key(e.Request) })
 		if i < 0 {
@@ -115,6 +118,13 @@ func (x *writing) complete(g *given, e *logbook.Entry) error {
 		}
 		q := &x.requests[i]
 		e.Request = q.ID
+		if e.Target != "" && targets.Key(e.Target) != targets.Key(q.Target) {
+			a, err1 := table.Match(x.targets, e.Target)
+			b, err2 := table.Match(x.targets, q.Target)
+			if err1 != nil || err2 != nil || a != b {
+				return usagef("--request %s wants %s, not %s; give one of the two", quote(q.ID), quote(q.Target), quote(e.Target))
+			}
+		}
 		e.Target = first(e.Target, q.Target)
 		e.Programme, e.Instrument, e.Mode = first(e.Programme, q.Programme), first(e.Instrument, q.Instrument), first(e.Mode, q.Mode)
 		if e.Band == "" {
@@ -126,12 +136,15 @@ func (x *writing) complete(g *given, e *logbook.Entry) error {
 			return usagef("--instrument %s: not in run.toml", quote(e.Instrument))
 		}
 	}
-	p, err := x.preparedFor(g, e)
-	if err != nil {
-		return err
-	}
 	if err := e.Check(); err != nil {
 		return usagef("%w", err)
+	}
+	p, err := x.preparedFor(g, e)
+	if err != nil && was != "" && targets.Key(was) == targets.Key(e.Target) {
+		return nil // given with its place then: what followed from it is kept
+	}
+	if err != nil {
+		return err
 	}
 	if err := reckon.Fill(e, p, reckon.Sky{Site: x.site, Night: x.nights()}); err != nil {
 		return usagef("%w", err)

@@ -113,7 +113,7 @@ func logCSV(w io.Writer, list []logbook.Entry) error {
 }
 
 // logText prints the log for people, and how far the requests are.
-func (x *writing) logText(w io.Writer, list []logbook.Entry) error {
+func (x *writing) logText(w io.Writer, list, all []logbook.Entry) error {
 	var b strings.Builder
 	fmt.Fprintln(&b, x.heading())
 	if len(list) == 0 {
@@ -125,7 +125,7 @@ func (x *writing) logText(w io.Writer, list []logbook.Entry) error {
 		fmt.Fprintln(&b, logLine(&list[i]))
 	}
 	if len(x.requests) > 0 {
-		progress := logbook.ProgressOf(x.requests, list)
+		progress := logbook.ProgressOf(x.requests, all)
 		b.WriteString("requests\n")
 		for i := range x.requests {
 			q := &x.requests[i]

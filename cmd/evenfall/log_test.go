@@ -150,33 +150,63 @@ func TestLogCommands(t *testing.T) {
 	if out := must("show", "R Lep", "--at", "2026-12-02T04:00:00Z"); !strings.Contains(out, "8.4") {
 		t.Error("the magnitude entered is not heeded")
 	}
+	refusals(t, dir)
+	// what was refused wrote nothing; what is void again counts again
+	if n := len(entries(t, dir)); n != len(now) {
+		t.Errorf("%d entries, were %d", n, len(now))
+	}
+	void := must("log", "void", must("log", "closed", "--start", "2026-12-02T03:00:00Z"))
+	if _, out, _ := called(t, "list", "--run", dir, "--at", "2026-12-02T03:30:00Z"); strings.Contains(out, "closed") {
+		t.Error("a closure that is void still closes")
+	}
+	must("log", "amend", void, "--grade", "good")
+	if _, out, _ := called(t, "list", "--run", dir, "--at", "2026-12-02T03:30:00Z"); !strings.Contains(out, "closed") {
+		t.Error("a closure that is void no longer does not close")
+	}
+	must("log", "open", "--start", "2026-12-02T03:10:00Z")
+	unknown := must("log", "add", "--target", "Nova Z", "--ra", "10 23 45", "--dec=-47 12 33", "--start", "2026-12-02T04:10:00Z")
+	must("log", "amend", unknown, "--grade", "good")
+	if status, _, errs := called(t, "log", "add", "--lat", "1", "--lon", "1"); status != exitUsage || !strings.Contains(errs, "run folder") {
+		t.Errorf("%d, %q", status, errs)
+	}
+	must("log", "add", "--target", "Nova X", "--ra", "10 23 45", "--dec=-47 12 33", "--start", "2026-12-02T04:10:00Z")
+}
+
+// refusals are calls that are wrong usage, each with what is said of it.
+func refusals(t *testing.T, dir string) {
+	t.Helper()
 	for args, want := range map[string]string{
-		"log add --target Nonesuch --start 2026-12-02T04:10:00Z":                   "give --ra and --dec",
-		"log add --target R_Lep":                                                   "needs the time",
-		"log add --target R_Lep --start noon":                                      "not a time",
-		"log add --start 2026-12-02T04:10:00Z":                                     "needs a target",
-		"log add --request nonesuch --start 2026-12-02T04:10:00Z":                  "no such request",
-		"log add --target R_Lep --start 2026-12-02T04:10:00Z --grade lovely":       "use one of",
-		"log add --target R_Lep --start 2026-12-02T04:10:00Z --files a..":          "FIRST..LAST",
-		"log add --target R_Lep --start 2026-12-02T04:10:00Z --instrument nothing": "run.toml",
-		"log add --target x --ra 99 --dec high --start 2026-12-02T04:10:00Z":       "--ra",
-		"log amend 999 --frames 2":                                                 "no such entry",
-		"log void one":                                                             "not the number",
-		"log conditions":                                                           "say nothing",
-		"log magnitude --target R_Lep":                                             "--band and --mag",
-		"export nonesuch":                                                          "no table",
-		"export --format csv":                                                      "one table",
-		"import nonesuch.json":                                                     "no such file",
+		"log add --target Nonesuch --start 2026-12-02T04:10:00Z":                                "give --ra and --dec",
+		"log add --target R_Lep":                                                                "needs the time",
+		"log add --target R_Lep --start noon":                                                   "not a time",
+		"log add --start 2026-12-02T04:10:00Z":                                                  "needs a target",
+		"log add --request nonesuch --start 2026-12-02T04:10:00Z":                               "no such request",
+		"log add --target R_Lep --start 2026-12-02T04:10:00Z --grade lovely":                    "use one of",
+		"log add --target R_Lep --start 2026-12-02T04:10:00Z --files a..":                       "FIRST..LAST",
+		"log add --target R_Lep --start 2026-12-02T04:10:00Z --instrument nothing":              "run.toml",
+		"log add --target x --ra 99 --dec high --start 2026-12-02T04:10:00Z":                    "--ra",
+		"log amend 999 --frames 2":                                                              "no such entry",
+		"log void 1.9":                                                                          "not the number",
+		"log amend 3abc":                                                                        "not the number",
+		"log add --target R_Lep --start 2026-12-02T04:10:00Z --snr inf":                         "snr",
+		"log add --target R_Lep --start 2026-12-02T04:10:00Z --seeing -3":                       "seeing",
+		"log add --target R_Lep --start 2026-12-02T04:10:00Z --frames 99999999":                 "frames",
+		"log add --request vw-hyi-v --target R_Lep --start 2026-12-02T04:10:00Z":                "wants",
+		"log magnitude --target R_Lep --band V --mag 8 --jd NaN":                                "Julian",
+		"log magnitude --target R_Lep --band V --mag 8 --jd 2461000 --utc 2026-12-02T04:10:00Z": "not both",
+		"log closed --start 2026-12-02T04:10:00Z --end 2026-12-02T03:10:00Z":                    "--end comes before",
+		"log void one":                 "not the number",
+		"log conditions":               "say nothing",
+		"log magnitude --target R_Lep": "--band and --mag",
+		"export nonesuch":              "no table",
+		"export --format csv":          "one table",
+		"import nonesuch.json":         "no such file",
 	} {
 		status, _, errs := called(t, append(strings.Fields(args), "--run", dir)...)
 		if status != exitUsage || !strings.Contains(errs, want) {
 			t.Errorf("%s: status %d, %q", args, status, errs)
 		}
 	}
-	if status, _, errs := called(t, "log", "add", "--lat", "1", "--lon", "1"); status != exitUsage || !strings.Contains(errs, "run folder") {
-		t.Errorf("%d, %q", status, errs)
-	}
-	must("log", "add", "--target", "Nova X", "--ra", "10 23 45", "--dec=-47 12 33", "--start", "2026-12-02T04:10:00Z")
 }
 
 // An export comes into a new run folder and exports the same.
@@ -195,6 +225,12 @@ func TestExportImport(t *testing.T) {
 	}
 	if _, again, _ := called(t, "export", "--run", other); again != out {
 		t.Errorf("%s\n%s", out, again)
+	}
+	for _, bad := range []string{"{}", `{"tables": {"entries": [{"start_utc": "yesterday"}]}}`} {
+		os.WriteFile(file, []byte(bad), 0o644)
+		if status, _, errs := called(t, "import", file, "--run", other); status != exitRefused || !strings.Contains(errs, "nothing was taken in") {
+			t.Errorf("%s: %d, %s", bad, status, errs)
+		}
 	}
 	os.WriteFile(file, []byte(strings.Replace(out, "R Lep", "R Leo", 1)), 0o644)
 	if status, _, errs := called(t, "import", file, "--run", other); status != exitRefused || !strings.Contains(errs, "nothing was taken in") {

@@ -22,6 +22,7 @@ import (
 	"evenfall/targets/moment"
 	"evenfall/targets/roster"
 	"evenfall/targets/store"
+	"evenfall/targets/table"
 	"evenfall/tui"
 	"evenfall/tui/desk"
 	"evenfall/tui/kit"
@@ -187,21 +188,57 @@ func (s *session) log(src *desk.Source, o *options, w world, book *logbook.Book)
 				best, found = q, true
 			}
 		}
-		return best, found
+		if found {
+			return best, true
+		}
+		return s.defaultRequest(target)
+	}
+	src.Readout = func(name string) float64 {
+		if s.run == nil {
+			return 0
+		}
+		if i, ok := s.run.Config.Instrument(name); ok {
+			return i.DeadS
+		}
+		return 0
 	}
 	// a session is known by where the observer sits: accounts are shared
 	where, _, _ := strings.Cut(os.Getenv("SSH_CONNECTION"), " ")
 	src.Session = first(src.Observer, "somebody") + " at " + first(where, "this machine")
 	ctx := context.Background()
-	last, ok, err := book.LastSession(ctx, src.Session)
-	if err != nil || !ok {
+	former, err := book.Former(ctx, src.Session)
+	if err != nil {
 		return
 	}
-	if w.clock.Now().Sub(last.Seen) < aliveWithin && last.Ended.IsZero() && terminal.Alive(last.PID) {
+	base, alive := src.Session, false
+	for _, f := range former {
+		if f.Ended.IsZero() && w.clock.Now().Sub(f.Seen) < aliveWithin && terminal.Alive(f.PID) {
+			alive = alive || f.Name == base
+			continue
+		}
+		if f.Ended.IsZero() && src.State == "" { // the latest that was cut off
+			src.State, src.Former = f.State, f.Name
+		}
+	}
+	if alive {
 		src.Session += fmt.Sprintf(", login %d", os.Getpid()) // the other one is still there
-		return
 	}
-	src.State = last.State
+}
+
+// defaultRequest is the default of a target's kind among what is mounted: its
+// instrument and mode, without a name of its own.
+func (s *session) defaultRequest(target string) (targets.Request, bool) {
+	if s.run == nil {
+		return targets.Request{}, false
+	}
+	i, err := table.Match(s.targets, target)
+	if err != nil {
+		return targets.Request{}, false
+	}
+	night, _ := s.run.Config.NightOn(s.night.Date)
+	q, ok := s.run.Config.DefaultRequest(s.targets[i].Kind, night.Instruments...)
+	q.ID = ""
+	return q, ok
 }
 
 // aliveWithin is how lately a session must have been seen to be still there.

@@ -104,8 +104,13 @@ func (b *Book) Amend(ctx context.Context, id int64, change func(*Entry) error) (
 			return err
 		}
 		s := b.signed(e)
-		made, err = tx.Insert(store.Entries, rowOf(&s))
-		return err
+		if made, err = tx.Insert(store.Entries, rowOf(&s)); err != nil {
+			return err
+		}
+		if old.Void != e.Void {
+			return unsay(tx, id, e.Void)
+		}
+		return nil
 	})
 	return made, err
 }
@@ -119,6 +124,32 @@ func (b *Book) Void(ctx context.Context, id int64, why string) (int64, error) {
 		}
 		return nil
 	})
+}
+
+// unsay makes the conditions that a void entry said hold no more, and has
+// them hold again where it is no longer void.
+func unsay(tx *store.Tx, id int64, void bool) error {
+	for id != 0 {
+		rows, err := tx.Select(store.Conditions, "entry = ?", id)
+		if err != nil {
+			return err
+		}
+		for _, r := range rows {
+			value := any(nil)
+			if void {
+				value = int64(1)
+			}
+			if _, err := tx.Update(store.Conditions, r.Int("id"), store.Row{"void": value}); err != nil {
+				return err
+			}
+		}
+		before, err := tx.Select(store.Entries, "id = ?", id)
+		if err != nil || len(before) == 0 {
+			return err
+		}
+		id = before[0].Int("replaces")
+	}
+	return nil
 }
 
 // current returns an entry that no other replaces.

@@ -113,11 +113,12 @@ func (b *Book) Conditions(ctx context.Context, c Conditions) (int64, error) {
 				return err
 			}
 		}
-		if _, err := tx.Insert(store.Conditions, row); err != nil {
+		var err error
+		if id, err = tx.Insert(store.Entries, rowOf(&e)); err != nil {
 			return err
 		}
-		var err error
-		id, err = tx.Insert(store.Entries, rowOf(&e))
+		row["entry"] = id
+		_, err = tx.Insert(store.Conditions, row)
 		return err
 	})
 	return id, err
@@ -127,8 +128,7 @@ func (b *Book) Conditions(ctx context.Context, c Conditions) (int64, error) {
 // the end of it: so that time lost adds up from the entries alone.
 func closure(tx *store.Tx, c *Conditions, e *Entry) error {
 	if c.Dome == "closed" {
-		e.Type = "closed"
-		return nil
+		e.Type = "closed" // for another reason than before, perhaps: that closure ends here
 	}
 	rows, err := tx.Select(store.Entries, "type = 'closed' AND end_utc IS NULL AND void IS NULL AND start_utc <= ? AND id NOT IN (SELECT replaces FROM entries WHERE replaces IS NOT NULL)", stamp(c.From))
 	if err != nil {
@@ -211,9 +211,13 @@ func (b *Book) At(ctx context.Context, at time.Time) (Conditions, error) {
 			}
 		}
 		for _, t := range now.texts() {
-			if s := r.Text(t.column); s != "" {
+			// why it was closed, and notes, are of their time alone
+			if s := r.Text(t.column); s != "" && t.column != "note" && t.column != "observer" {
 				*t.at = s
 			}
+		}
+		if now.Dome != "closed" {
+			now.Reason = ""
 		}
 	}
 	return now, nil

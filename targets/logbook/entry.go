@@ -5,6 +5,7 @@ package logbook
 
 import (
 	"fmt"
+	"math"
 	"slices"
 	"strings"
 	"time"
@@ -45,6 +46,15 @@ type Entry struct {
 	Key                               string // names an entry before it is written: sent twice it comes in once
 }
 
+// mostFrames is how many frames a take may have.
+const mostFrames = 1_000_000
+
+// ranges are what the numbers of an entry may be.
+var ranges = map[string][2]float64{
+	"each_s": {0, 1e6}, "slit_arcsec": {0, 3600}, "position_angle_deg": {-360, 360}, "seeing_arcsec": {0, 60}, "extinction_mag": {0, 20},
+	"measured_mag": {-30, 40}, "snr": {0, 1e6}, "clock_offset_s": {-86400, 86400},
+}
+
 // Check tells what is wrong with an entry before it is written.
 func (e *Entry) Check() error {
 	if !slices.Contains(Types, e.Type) {
@@ -62,8 +72,13 @@ func (e *Entry) Check() error {
 	if e.Frames < 0 {
 		return fmt.Errorf("frames %d: a number from 1 on", e.Frames)
 	}
-	if e.EachS.Known && !(e.EachS.Value >= 0) {
-		return fmt.Errorf("each %g s: not a duration", e.EachS.Value)
+	if e.Frames > mostFrames {
+		return fmt.Errorf("frames %d: at most %d", e.Frames, mostFrames)
+	}
+	for _, n := range e.numbers() {
+		if r, ok := ranges[n.column]; n.at.Known && (math.IsNaN(n.at.Value) || math.IsInf(n.at.Value, 0) || ok && !(n.at.Value >= r[0] && n.at.Value <= r[1])) {
+			return fmt.Errorf("%s %g: outside %g to %g", n.column, n.at.Value, r[0], r[1])
+		}
 	}
 	if e.Type == "science" && e.Target == "" {
 		return fmt.Errorf("a science entry needs a target or a request")

@@ -64,6 +64,12 @@ func (b *Book) AddMagnitude(ctx context.Context, m targets.Magnitude) (int64, er
 	if m.Target == "" || m.Band == "" {
 		return 0, fmt.Errorf("a magnitude needs a target and a band")
 	}
+	if !(m.Mag > -30 && m.Mag < 40) || !(m.Err >= 0 && m.Err < 20) {
+		return 0, fmt.Errorf("magnitude %g +- %g: no magnitude with its error", m.Mag, m.Err)
+	}
+	if !(m.JD > 2e6 && m.JD < 3e6) {
+		return 0, fmt.Errorf("Julian date %g: outside 2,000,000 to 3,000,000", m.JD)
+	}
 	var id int64
 	err := b.db.Do(ctx, func(tx *store.Tx) error {
 		var err error
@@ -115,6 +121,16 @@ func (b *Book) Draft(ctx context.Context, session, screen string) (string, error
 	return rows[len(rows)-1].Text("detail"), nil
 }
 
+// Drafts returns all that was half typed in a session, by screen.
+func (b *Book) Drafts(ctx context.Context, session string) (map[string]string, error) {
+	rows, err := b.db.Select(ctx, store.Drafts, "session = ?", session)
+	out := map[string]string{}
+	for _, r := range rows {
+		out[r.Text("screen")] = r.Text("detail")
+	}
+	return out, err
+}
+
 // Session is a session at the screen.
 type Session struct {
 	ID                 int64
@@ -156,6 +172,21 @@ func (b *Book) LastSession(ctx context.Context, name string) (Session, bool, err
 		return Session{}, false, err
 	}
 	return sessionOf(rows[len(rows)-1]), true, nil
+}
+
+// Former returns the sessions of a name and its further logins, the latest
+// first.
+func (b *Book) Former(ctx context.Context, name string) ([]Session, error) {
+	rows, err := b.db.Select(ctx, store.Sessions, "name = ? OR name LIKE ? || ', login %'", name, name)
+	if err != nil {
+		return nil, err
+	}
+	out := make([]Session, len(rows))
+	for i, r := range rows {
+		out[i] = sessionOf(r)
+	}
+	slices.SortStableFunc(out, func(x, y Session) int { return y.Seen.Compare(x.Seen) })
+	return out, nil
 }
 
 // Others returns the sessions of other names that were seen since a time and

@@ -40,7 +40,7 @@ func TestRoundTrip(t *testing.T) {
 			if !rapid.Bool().Draw(t, "has "+name) {
 				return targets.Measure{}
 			}
-			return targets.Known(rapid.Float64Range(-1e6, 1e6).Draw(t, name))
+			return targets.Known(rapid.Float64Range(0, 60).Draw(t, name)) // within every range
 		}
 		start := night.Add(time.Duration(rapid.Int64Range(-1e9, 1e9).Draw(t, "start")) * time.Millisecond)
 		e := Entry{Type: rapid.SampledFrom(Types).Draw(t, "type"), Request: rapid.String().Draw(t, "request"), Target: "R Lep", Programme: rapid.String().Draw(t, "programme"),
@@ -95,7 +95,8 @@ func TestAmend(t *testing.T) {
 		t.Errorf("voiding nothing: %v", err)
 	}
 	for _, bad := range []Entry{{}, {Type: "nap", Start: night}, {Type: "note"}, {Type: "science", Start: night}, {Type: "science", Target: "x", Start: night, End: night.Add(-1)},
-		{Type: "science", Target: "x", Start: night, Grade: "lovely"}, {Type: "science", Target: "x", Start: night, EachS: targets.Known(math.NaN())}} {
+		{Type: "science", Target: "x", Start: night, Grade: "lovely"}, {Type: "science", Target: "x", Start: night, EachS: targets.Known(math.NaN())},
+		{Type: "science", Target: "x", Start: night, SNR: targets.Known(math.Inf(1))}, {Type: "note", Start: night, Seeing: targets.Known(-3)}, {Type: "note", Start: night, Frames: 1e9}} {
 		if _, err := b.Add(ctx, bad); err == nil {
 			t.Errorf("%+v is taken", bad)
 		}
@@ -300,6 +301,19 @@ func TestConditions(t *testing.T) {
 	log, err := b.Entries(ctx, time.Time{}, time.Time{})
 	if err != nil {
 		t.Fatal(err)
+	}
+	// a closure that was void never was
+	id := int64(0)
+	for _, e := range log {
+		if e.Type == "closed" {
+			id = e.ID
+		}
+	}
+	if _, err := b.Void(ctx, id, "wrong night"); err != nil {
+		t.Fatal(err)
+	}
+	if then, err := b.At(ctx, night.Add(150*time.Minute)); err != nil || then.Of().Closed {
+		t.Errorf("void, and still closed: %+v, %v", then, err)
 	}
 	closed := 0
 	for _, e := range log {

@@ -44,6 +44,9 @@ func Fill(e *logbook.Entry, p *moment.Prepared, sky Sky) error {
 		end = e.Start
 	}
 	e.Mid = e.Start.Add(end.Sub(e.Start) / 2)
+	// what followed from other times or another target holds no more
+	none := targets.Measure{}
+	e.AirmassStart, e.AirmassMid, e.AirmEnd, e.MidBJD, e.MoonAltDeg, e.MoonSepDeg, e.MoonLit, e.ExpectMag = none, none, none, none, none, none, none, none
 	if p == nil {
 		return nil
 	}

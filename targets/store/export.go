@@ -9,6 +9,8 @@ import (
 	"slices"
 	"sort"
 	"strconv"
+	"strings"
+	"time"
 )
 
 // Names lists the tables.
@@ -104,6 +106,9 @@ func (d *DB) ImportJSON(ctx context.Context, r io.Reader) (int, error) {
 	var dump Dump
 	if err := dec.Decode(&dump); err != nil {
 		return 0, fmt.Errorf("not an export of evenfall: %w", err)
+	}
+	if len(dump.Tables) == 0 {
+		return 0, fmt.Errorf("not an export of evenfall: it holds no tables")
 	}
 	if dump.Schema > Version {
 		return 0, fmt.Errorf("schema %d: %w", dump.Schema, ErrNewer)
@@ -240,6 +245,11 @@ func (t *Table) value(column string, v any) (any, error) {
 			return nil, fmt.Errorf("%s %q: not a number", column, s)
 		}
 		return f, nil
+	}
+	if strings.HasSuffix(column, "_utc") && s != "" {
+		if _, err := time.Parse(time.RFC3339Nano, s); err != nil {
+			return nil, fmt.Errorf("%s %q: not a time as 2026-12-02T04:00:00Z", column, s)
+		}
 	}
 	return s, nil
 }

@@ -69,12 +69,13 @@ func firstSchema(tx *sql.Tx) error {
 }
 
 // addKeys lets a writer name an entry before it is written, so that one sent
-// twice, because the answer was lost, comes in once; and takes have a type.
+// twice, because the answer was lost, comes in once; takes have a type, conditions the entry that says them.
 func addKeys(tx *sql.Tx) error {
 	for _, s := range []string{
 		"ALTER TABLE entries ADD COLUMN key TEXT",
 		"CREATE UNIQUE INDEX entries_by_key ON entries (key) WHERE key IS NOT NULL",
 		"ALTER TABLE takes ADD COLUMN type TEXT",
+		"ALTER TABLE conditions ADD COLUMN entry INTEGER",
 	} {
 		if _, err := tx.Exec(s); err != nil {
 			return fmt.Errorf("%s: %w", s, err)

@@ -68,7 +68,7 @@ var Tables = []Table{
 	{Conditions, join(
 		columns(Text, "from_utc"),
 		columns(Real, "seeing_arcsec", "extinction_mag", "cloud_from_deg", "cloud_to_deg", "wind_from_deg", "wind_ms", "humidity", "dew_margin_c"),
-		columns(Text, "photometric", "instrument", "dome", "reason", "note", "observer", "entered_utc"), columns(Integer, "void"))},
+		columns(Text, "photometric", "instrument", "dome", "reason", "note", "observer", "entered_utc"), columns(Integer, "void", "entry"))},
 	{Magnitudes, join(
 		columns(Text, "target"), columns(Real, "jd"), columns(Text, "time_scale", "band"), columns(Real, "mag", "err"),
 		columns(Integer, "faint_limit"), columns(Text, "source", "observer", "entered_utc"), columns(Integer, "void"))},

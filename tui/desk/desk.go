@@ -55,6 +55,7 @@ type Desk struct {
 	setup     setup
 	offset    targets.Measure // of the instrument's clock, s
 	takeRow   int
+	ref       *ref   // of the take under way
 	rung      string // what the bell was rung for last
 	bell      bool
 	weather   kit.Screen

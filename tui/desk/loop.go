@@ -9,14 +9,11 @@ import (
 	"strings"
 	"time"
 
-	"evenfall/astro"
 	"evenfall/targets"
-	"evenfall/targets/light"
 	"evenfall/targets/logbook"
 	"evenfall/targets/moment"
 	"evenfall/targets/reckon"
 	"evenfall/targets/roster"
-	"evenfall/tui/kit"
 )
 
 // sessionEntry makes an entry of the roster of a target typed in.
@@ -67,6 +64,14 @@ func (s setup) String() string {
 		text = fmt.Sprintf("%dx%g", s.frames, s.each)
 	}
 	return strings.Join(strings.Fields(s.kind+" "+text+" "+s.file), " ")
+}
+
+// ref is the number of a take in the store: 0 while its beginning is on its
+// way, dead where it never began. What follows on it waits in the queue behind
+// its beginning.
+type ref struct {
+	id   int64
+	dead bool
 }
 
 // setTake takes over what is under way in this session; nil: nothing.
@@ -145,21 +150,27 @@ func (d *Desk) begin(quick, confirmed bool) []Task {
 		t.Frames, t.EachS = d.setup.frames, d.setup.each
 	}
 	t.FileFirst = d.setup.file
-	t.ReadoutS = d.src.Readout
+	if d.src.Readout != nil {
+		t.ReadoutS = d.src.Readout(t.Instrument)
+	}
+	mine := &ref{}
+	d.ref = mine
+	d.setTake(&t)
+	began := t
 	return d.save(write{
-		what: "start of " + t.Target,
+		what: "start of " + t.Target, loop: true,
 		run: func(ctx context.Context, b *logbook.Book) (any, error) {
-			id, err := b.Begin(ctx, t, confirmed)
-			t.ID = id
-			return t, err
+			id, err := b.Begin(ctx, began, confirmed)
+			return id, err
 		},
 		done: func(d *Desk, r any) []Task {
-			t := r.(logbook.Take)
-			d.setTake(&t)
-			d.say(t.Phase+" "+t.Target+": saved", false)
+			mine.id = r.(int64)
+			d.say(began.Phase+" "+began.Target+": saved", false)
 			return nil
 		},
 		held: func(d *Desk, h logbook.Held) []Task {
+			mine.dead = true
+			d.setTake(nil)
 			d.sure("y starts it too: "+h.Error(), func(d *Desk) []Task { return d.begin(quick, true) })
 			return nil
 		},
@@ -174,12 +185,20 @@ func (d *Desk) phase(t logbook.Take, to string) []Task {
 }
 
 func (d *Desk) change(t logbook.Take, what string) []Task {
-	return d.save(write{what: what,
-		run: func(ctx context.Context, b *logbook.Book) (any, error) { return t, b.Phase(ctx, t) },
+	d.setTake(&t)
+	mine := d.ref
+	return d.save(write{what: what, loop: true,
+		run: func(ctx context.Context, b *logbook.Book) (any, error) {
+			if mine.dead {
+				return nil, nil
+			}
+			t.ID = mine.id
+			return nil, b.Phase(ctx, t)
+		},
 		done: func(d *Desk, r any) []Task {
-			t := r.(logbook.Take)
-			d.setTake(&t)
-			d.say(what+": saved", false)
+			if !mine.dead {
+				d.say(what+": saved", false)
+			}
 			return nil
 		}})
 }
@@ -217,9 +236,22 @@ func (d *Desk) end(how string) []Task {
 	if e.Frames > 0 {
 		words += fmt.Sprintf(" %dx%gs", e.Frames, e.EachS.Value)
 	}
+	mine := d.ref
+	d.setTake(nil)
+	d.rung = ""
+	if next, ok := logbook.Count(e.FileLast, 1); ok {
+		d.setup.file = next
+	}
+	if k.Type != "" { // flats are over, science goes on
+		d.setup.kind, d.setup.frames = "", 0
+	}
 	return d.save(write{
-		what: words,
+		what: words, loop: true,
 		run: func(ctx context.Context, b *logbook.Book) (any, error) {
+			if mine.dead {
+				return int64(0), nil
+			}
+			k.ID = mine.id
 			filled := e
 			// a date out of range leaves the airmass out, the entry is written
 			// all the same
@@ -227,14 +259,8 @@ func (d *Desk) end(how string) []Task {
 			return b.End(ctx, k, how, filled)
 		},
 		done: func(d *Desk, r any) []Task {
-			d.setTake(nil)
-			d.rung = ""
-			d.say(fmt.Sprintf("entry %d saved: %s", r.(int64), words), false)
-			if next, ok := logbook.Count(e.FileLast, 1); ok {
-				d.setup.file = next
-			}
-			if k.Type != "" { // flats are over, science goes on
-				d.setup.kind, d.setup.frames = "", 0
+			if id := r.(int64); id > 0 {
+				d.say(fmt.Sprintf("entry %d saved: %s", id, words), false)
 			}
 			return nil
 		},
@@ -245,7 +271,7 @@ func (d *Desk) end(how string) []Task {
 func (d *Desk) entryOf(k *logbook.Take, how string) logbook.Entry {
 	now := d.w.Wall
 	s := k.At(now)
-	e := logbook.Entry{Type: cmp.Or(k.Type, "science"), Request: k.Request, Target: k.Target, Start: k.PhaseAt, End: now, Instrument: k.Instrument, Mode: k.Mode, Band: k.Band,
+	e := logbook.Entry{Type: cmp.Or(k.Type, "science"), Request: k.Request, Target: k.Target, Start: k.PhaseAt, End: now, Instrument: k.Instrument, Mode: k.Mode, Band: k.Band, Programme: d.programmeOf(k.Request),
 		Observer: d.w.Observer, FileFirst: k.FileFirst, Seeing: d.w.Conditions.Seeing, Extinction: d.w.Conditions.Extinction, ClockOffsetS: d.offset}
 	if k.Phase != logbook.Exposing { // ended before the first frame
 		e.Type, e.Start = "acquisition", k.Began
@@ -255,7 +281,10 @@ func (d *Desk) entryOf(k *logbook.Take, how string) logbook.Entry {
 		e.Note = "the clock was set back during the take"
 	}
 	if k.Phase == logbook.Exposing && k.EachS > 0 {
-		e.Frames, e.EachS = s.Done, targets.Known(k.EachS)
+		e.EachS = targets.Known(k.EachS)
+	}
+	if k.Phase == logbook.Exposing && (k.EachS > 0 || k.Done >= 0) {
+		e.Frames = s.Done
 		if k.Done < 0 && s.Over { // ended by itself before it was accepted
 			if end := k.PhaseAt.Add(time.Duration((float64(k.Frames)*(k.EachS+k.ReadoutS) - k.ReadoutS) * float64(time.Second))); end.Before(e.End) {
 				e.End = end
@@ -266,6 +295,8 @@ func (d *Desk) entryOf(k *logbook.Take, how string) logbook.Entry {
 		} else if e.Frames == 0 { // no frame was completed: no file
 			e.FileFirst = ""
 		}
+	} else {
+		e.FileLast = e.FileFirst // nothing counted its frames: one file at least
 	}
 	if how == logbook.Stopped {
 		e.Note = strings.TrimPrefix(e.Note+"; stopped early", "; ")
@@ -276,121 +307,12 @@ func (d *Desk) entryOf(k *logbook.Take, how string) logbook.Entry {
 	return e
 }
 
-// loopLine writes where in the loop we are and what fits before the next
-// fixed moment.
-func (d *Desk) loopLine(p *kit.Pen) {
-	w := &d.w
-	if t := w.Take; t != nil {
-		s := t.At(w.Wall)
-		p.Put(kit.Mark, s.Phase).Put(kit.Title, " "+t.Target)
-		switch {
-		case t.Phase != logbook.Exposing:
-			p.Put(kit.Text, "  "+clockText(s.Frac))
-		case s.Over:
-			p.Put(kit.Warn, fmt.Sprintf("  COMPLETE %d of %d: t accepts", s.Done, t.Frames))
-		case t.Frames > 0:
-			p.Put(kit.Text, fmt.Sprintf("  frame %d of %d, %s left", s.Frame, t.Frames, clockText(s.Left)))
-		default:
-			p.Put(kit.Text, fmt.Sprintf("  %s, t ends it", clockText(s.Frac)))
-		}
-	} else {
-		p.Put(kit.Text, "idle")
-	}
-	if d.offset.Known {
-		p.Put(kit.Text, fmt.Sprintf("  (instrument's clock %+g s)", d.offset.Value))
-	}
-	if what, at, ok := d.fixed(); ok {
-		role, sign := kit.Dim, ""
-		if at.Sub(w.Wall) < bellBefore {
-			role, sign = kit.Warn, "! "
-		}
-		p.Put(role, fmt.Sprintf("   %sfits %s: %s %s", sign, kit.Left(at.Sub(w.Wall)), what, at.UTC().Round(time.Minute).Format("15:04")))
-	}
-	for _, o := range w.Others {
-		p.Put(kit.Warn, fmt.Sprintf("   %s: %s %s", o.Observer, o.At(w.Wall).Phase, o.Target))
-	}
-	if n := len(d.queue); n > 0 && d.refused != nil {
-		p.Put(kit.Bad, fmt.Sprintf("   %d NOT SAVED", n))
-	}
-}
-
-// clockText writes minutes and seconds.
-func clockText(t time.Duration) string {
-	s := int(t.Round(time.Second).Seconds())
-	return fmt.Sprintf("%d:%02d", s/60, s%60)
-}
-
-// fixed returns the next moment that does not move: the end of the window of
-// the star under way, or selected, an event of it, or the end of darkness.
-func (d *Desk) fixed() (what string, at time.Time, ok bool) {
-	w := &d.w
-	if w.Snap == nil || !w.Live { // another time is being looked at
-		return "", at, false
-	}
-	take := func(name string, t time.Time) {
-		if t.After(w.Wall) && (!ok || t.Before(at)) {
-			what, at, ok = name, t, true
+// programmeOf returns the programme of a request.
+func (d *Desk) programmeOf(request string) string {
+	for i := range d.src.Requests {
+		if request != "" && d.src.Requests[i].ID == request {
+			return d.src.Requests[i].Programme
 		}
 	}
-	n := w.Snap.Scene.Night
-	for _, s := range n.CanDark() {
-		take("dusk", s.From.UTC())
-		take("dawn", s.Until.UTC())
-	}
-	row := w.Selected
-	if w.Take != nil {
-		row = d.takeRow
-	}
-	if row >= 0 && row < w.Snap.Roster.Len() {
-		if m := w.Snap.Peek(row); m != nil && m.InCan && m.WindowOK {
-			take("limit", m.Window.Until.UTC())
-		}
-		for _, e := range d.eventsOf(row, w.Snap.Scene.Instant) {
-			take(e.Kind, e.At.UTC())
-		}
-	}
-	return what, at, ok
-}
-
-// bells returns what there is to ring for, each once.
-func (d *Desk) bells(now time.Time) {
-	w := &d.w
-	if w.Silent {
-		return
-	}
-	ring := func(what string) {
-		if d.rung != what {
-			d.rung, d.bell = what, true
-		}
-	}
-	if t := w.Take; t != nil && t.At(now).Over {
-		ring(fmt.Sprint("end of ", t.ID))
-		return
-	}
-	if what, at, ok := d.fixed(); ok && w.Take != nil {
-		if left := at.Sub(now); left > 0 && left < bellBefore {
-			ring(what + at.Format(time.RFC3339))
-		}
-	}
-}
-
-// bellBefore is how long before an event or a limit the bell rings.
-const bellBefore = 5 * time.Minute
-
-// Rings tells whether to ring the bell now; once.
-func (d *Desk) Rings() bool {
-	r := d.bell
-	d.bell = false
-	return r
-}
-
-// eventsOf lists the eclipses of a target; maxima are no matter of minutes.
-func (d *Desk) eventsOf(row int, at astro.Instant) []light.Event {
-	var out []light.Event
-	for _, e := range d.src.Roster.Prepared(row).Light.Next(at) {
-		if e.Kind == "eclipse" {
-			out = append(out, e)
-		}
-	}
-	return out
+	return ""
 }

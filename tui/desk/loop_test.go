@@ -28,7 +28,7 @@ func logOf(t *testing.T, b *logbook.Book) []logbook.Entry {
 func TestTwoKeys(t *testing.T) {
 	src := check.Source(t, 5)
 	book := check.Logged(t, &src, "")
-	src.Readout = 30
+	src.Readout = func(string) float64 { return 30 }
 	d := check.New(t, src, 80, 24)
 	d.See("idle   fits")
 	name := strings.TrimSpace(d.Selected()[7:20])
@@ -99,6 +99,88 @@ func TestLoopSteps(t *testing.T) {
 	}
 	if !kinds["flat"] || !kinds["fault"] {
 		t.Errorf("%+v", list)
+	}
+}
+
+// Keys faster than the disk, and keys while it refuses, are one take that ends
+// as one entry with its times.
+func TestFastKeys(t *testing.T) {
+	src := check.Source(t, 5)
+	book := check.Logged(t, &src, "observer 1")
+	d := check.New(t, src, 80, 24)
+	d.Hold = true
+	d.Press("t", "t", "t", "f", "f", "f")
+	d.Release(false)
+	d.See("exposing").Press("t").See("saved")
+	under, err := book.UnderWay(ctx)
+	if err != nil || len(under) != 0 {
+		t.Errorf("%d takes are left under way, %v", len(under), err)
+	}
+	if list := logOf(t, book); len(list) != 1 || list[0].Frames != 3 || list[0].EachS.Known {
+		t.Errorf("%+v", list)
+	}
+	book.Store().Fault(func() error { return syscall.ENOSPC })
+	d.Press("e", "ctrl+u").Type("obs0042").Press("enter", "t").Wait(time.Minute).Press("t").Wait(time.Minute).Press("t")
+	d.See("exposing", "NOT SAVED").Wait(10*time.Minute).Press("t").See("idle", "NOT SAVED")
+	book.Store().Fault(nil)
+	d.Wait(10 * time.Second).Not("NOT SAVED")
+	list := logOf(t, book)
+	if len(list) != 2 || list[1].End.Sub(list[1].Start) != 10*time.Minute || list[1].FileLast != "obs0042" {
+		t.Errorf("%+v", list)
+	}
+	if under, err = book.UnderWay(ctx); err != nil || len(under) != 0 {
+		t.Errorf("%d takes are left under way, %v", len(under), err)
+	}
+	d.Press("T").Wait(time.Minute).Press("t")
+	if list = logOf(t, book); len(list) != 3 || list[2].FileFirst != "obs0043" {
+		t.Errorf("the files do not count on: %+v", list[len(list)-1])
+	}
+}
+
+// A note is not lost when the name is asked in between and not given; text
+// typed on after Escape is kept too.
+func TestNoteIsKept(t *testing.T) {
+	src := check.Source(t, 16)
+	book := check.Logged(t, &src, "")
+	d := check.New(t, src, 80, 24)
+	d.Press("o").Type("important note").Press("enter").See("who observes?").Press("esc").Wait(2 * time.Second)
+	drafts, err := book.Drafts(ctx, src.Session)
+	if err != nil || drafts["line note"] != "important note" {
+		t.Errorf("%v, %v", drafts, err)
+	}
+	d.Press("o").See("note important note").Type(" and more").Wait(2 * time.Second)
+	if drafts, err = book.Drafts(ctx, src.Session); err != nil || drafts["line note"] != "important note and more" {
+		t.Errorf("%v, %v", drafts, err)
+	}
+	again := check.New(t, src, 80, 24)
+	again.Press("o").See("important note and more")
+	d.Press("enter").Type("observer 1").Press("enter").See("entry 1 saved").Wait(2 * time.Second)
+	if drafts, err = book.Drafts(ctx, src.Session); err != nil || drafts["line note"] != "" {
+		t.Errorf("%v, %v", drafts, err)
+	}
+}
+
+// Conditions of the future come into force though nobody writes.
+func TestFutureConditions(t *testing.T) {
+	src := check.Source(t, 16)
+	book := check.Logged(t, &src, "observer 1")
+	closed := false
+	src.Changed = func(c targets.Conditions) { closed = c.Closed }
+	for after, dome := range map[time.Duration]string{0: "closed", 10 * time.Second: "open"} {
+		c := logbook.Conditions{From: check.Start.Add(after), Dome: dome}
+		if dome == "closed" {
+			c.Reason = "weather"
+		}
+		if _, err := book.Conditions(ctx, c); err != nil {
+			t.Fatal(err)
+		}
+	}
+	d := check.New(t, src, 80, 24)
+	if !closed {
+		t.Error("not closed")
+	}
+	if d.Wait(12 * time.Second); closed {
+		t.Error("still closed")
 	}
 }
 

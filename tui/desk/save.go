@@ -4,6 +4,7 @@ import (
 	"context"
 	"errors"
 	"fmt"
+	"slices"
 	"strings"
 	"time"
 
@@ -18,6 +19,7 @@ type write struct {
 	run  func(ctx context.Context, b *logbook.Book) (any, error)
 	done func(d *Desk, result any) []Task // nil: nothing more
 	held func(d *Desk, h logbook.Held) []Task
+	loop bool // of the take under way, which is shown as it will be
 }
 
 // wrote is what became of a write.
@@ -60,6 +62,10 @@ func (d *Desk) written(r wrote) []Task {
 	var held logbook.Held
 	switch {
 	case r.err == nil:
+		if d.refused != nil && strings.HasPrefix(d.message, "NOT SAVED") {
+			d.message, d.bad = "", false
+			d.say("the disk takes it again: "+w.what+" is saved", false)
+		}
 		d.queue, d.refused = d.queue[1:], nil
 		d.w.Changed++
 		var tasks []Task
@@ -82,6 +88,9 @@ func (d *Desk) written(r wrote) []Task {
 		return nil
 	}
 	d.queue = d.queue[1:]
+	if w.loop { // what is under way is read anew
+		d.polled = false
+	}
 	d.say(w.what+": "+r.err.Error(), true)
 	return d.pump()
 }
@@ -109,12 +118,13 @@ type prompt struct {
 	label, hint string
 	field       kit.Field
 	take        func(d *Desk, text string) []Task
+	keep        bool // until what is done with it is on the disk
 }
 
 // ask1 asks for a line; what was typed for it before and not used is there
 // again.
 func (d *Desk) ask1(p prompt) {
-	if kept, ok := d.kept[p.label]; ok && p.field.String() == "" {
+	if kept, ok := d.kept[p.label]; ok {
 		p.field = kit.NewField(kept)
 	}
 	d.prompt = &p
@@ -127,7 +137,9 @@ func (d *Desk) promptKey(press string) []Task {
 	switch kit.Lookup(kit.OnField, press) {
 	case kit.Finish:
 		d.prompt = nil
-		delete(d.kept, p.label)
+		if !p.keep {
+			delete(d.kept, p.label)
+		}
 		return p.take(d, p.field.String())
 	case kit.Back:
 		d.prompt = nil
@@ -185,11 +197,15 @@ func (d *Desk) poll() []Task {
 	d.polling = true
 	book, at, r, level, band := d.src.Book, d.w.Wall, d.src.Roster, d.w.Level, d.w.Band
 	force := !d.polled
-	session, alive := d.src.Session, d.src.Alive
+	session, alive, observer := d.src.Session, d.src.Alive, d.w.Observer
 	return []Task{{"looking at the log", func() any {
 		var n news
 		ctx := context.Background()
-		if n.changed, n.err = book.Store().Changed(ctx); n.err != nil || !n.changed && !force {
+		if n.changed, n.err = book.Store().Changed(ctx); n.err != nil {
+			return n
+		}
+		// conditions of the future come into force though nobody writes
+		if n.conditions, n.err = book.At(ctx, at); n.err != nil || !n.changed && !force {
 			return n
 		}
 		n.changed = true
@@ -198,7 +214,8 @@ func (d *Desk) poll() []Task {
 		}
 		n.orphans = map[int64]bool{}
 		for _, t := range n.takes {
-			if t.Session == session || alive == nil || baseOf(t.Session) != baseOf(session) {
+			ours := baseOf(t.Session) == baseOf(session) || observer != "" && t.Observer == observer
+			if t.Session == session || alive == nil || !ours {
 				continue
 			}
 			if s, ok, err := book.LastSession(ctx, t.Session); err == nil && ok && !alive(s.PID) {
@@ -206,9 +223,6 @@ func (d *Desk) poll() []Task {
 			}
 		}
 		if n.marks, n.err = book.Marked(ctx); n.err != nil {
-			return n
-		}
-		if n.conditions, n.err = book.At(ctx, at); n.err != nil {
 			return n
 		}
 		list, err := book.Added(ctx)
@@ -235,6 +249,7 @@ func baseOf(name string) string {
 func (d *Desk) heard(n news) []Task {
 	d.polling = false
 	if n.err != nil {
+		d.polled = false // what there was to read is still to be read
 		if !d.deaf {
 			d.say("the log cannot be read: "+n.err.Error(), true)
 		}
@@ -242,23 +257,32 @@ func (d *Desk) heard(n news) []Task {
 		return nil
 	}
 	d.deaf, d.polled = false, true
+	tasks := d.heed(n.conditions)
 	if !n.changed {
-		return nil
+		return tasks
 	}
 	d.w.Changed++
 	d.w.Silent = n.bell == "off"
 	d.w.Others = nil
-	d.setTake(nil)
-	var tasks []Task
+	pending := slices.ContainsFunc(d.queue, func(w write) bool { return w.loop })
+	if pending { // our own take is ahead of what was read
+		d.polled = false
+	} else {
+		d.setTake(nil)
+	}
 	for i := range n.takes {
 		t := n.takes[i]
-		if n.orphans[t.ID] { // of a login of ours that is gone: it goes on here
+		if n.orphans[t.ID] && !pending { // of a login of ours that is gone: it goes on here
 			t.Session = d.src.Session
+			d.ref = &ref{id: t.ID}
 			tasks = append(tasks, d.change(t, "the take under way goes on: "+t.Target)...)
 		}
-		if t.Session == d.src.Session {
+		switch {
+		case t.Session == d.src.Session && pending:
+		case t.Session == d.src.Session:
+			d.ref = &ref{id: t.ID}
 			d.setTake(&t)
-		} else {
+		default:
 			d.w.Others = append(d.w.Others, t)
 		}
 	}
@@ -266,14 +290,19 @@ func (d *Desk) heard(n news) []Task {
 	for _, a := range n.added {
 		tasks = append(tasks, d.add(a.Entry, false))
 	}
-	if was := d.w.Conditions.Of(); was != n.conditions.Of() || d.w.Conditions.Words() != n.conditions.Words() {
-		d.w.Conditions = n.conditions
-		if was != n.conditions.Of() && d.src.Changed != nil {
-			d.src.Changed(n.conditions.Of())
-			tasks = append(tasks, d.ask(nil)...)
-		}
-	}
 	return tasks
+}
+
+// heed takes over the conditions that hold now; where they change what can be
+// taken, the list is worked out anew.
+func (d *Desk) heed(c logbook.Conditions) []Task {
+	was := d.w.Conditions.Of()
+	d.w.Conditions = c
+	if was == c.Of() || d.src.Changed == nil {
+		return nil
+	}
+	d.src.Changed(c.Of())
+	return d.ask(nil)
 }
 
 // marked takes over the marks of the run, by name.

@@ -1,10 +1,13 @@
 package desk
 
 import (
+	"cmp"
 	"context"
 	"encoding/json"
+	"strings"
 	"time"
 
+	"evenfall/targets"
 	"evenfall/targets/logbook"
 	"evenfall/targets/roster"
 	"evenfall/tui/kit"
@@ -22,6 +25,7 @@ type state struct {
 	Observer string      `json:"observer,omitempty"`
 	Setup    string      `json:"setup,omitempty"`
 	Theme    kit.Theme   `json:"theme"`
+	Offset   *float64    `json:"clock_offset_s,omitempty"`
 }
 
 // State writes where the session stands.
@@ -31,6 +35,9 @@ func (d *Desk) State() string {
 	case kit.OnStar, kit.OnLog, kit.OnEntry, kit.OnWeather:
 	default:
 		s.Screen = kit.OnNext
+	}
+	if d.offset.Known {
+		s.Offset = &d.offset.Value
 	}
 	if e := d.w.Entry(); e != nil {
 		s.Star = e.Target.Name
@@ -56,6 +63,9 @@ func (d *Desk) back(text string) {
 		d.filter, d.w.Filter = f, s.Filter
 	}
 	d.w.Sort = s.Sort
+	if s.Offset != nil {
+		d.offset = targets.Known(*s.Offset)
+	}
 	if d.w.Observer == "" {
 		d.w.Observer = s.Observer
 	}
@@ -117,11 +127,11 @@ func (d *Desk) keep() []Task {
 	for _, k := range d.keptScreens() {
 		now[k.Title()] = k.Draft()
 	}
-	if d.prompt != nil {
-		now["line "+d.prompt.label] = d.prompt.field.String()
-	}
 	for label, text := range d.kept {
 		now["line "+label] = text
+	}
+	if d.prompt != nil { // what is being typed goes before what was
+		now["line "+d.prompt.label] = d.prompt.field.String()
 	}
 	for screen := range d.drafts {
 		if _, ok := now[screen]; !ok {
@@ -159,17 +169,13 @@ func (d *Desk) recall() []Task {
 	if d.src.Book == nil {
 		return nil
 	}
-	book, session := d.src.Book, d.src.Session
-	names := []string{kit.OnEntry, kit.OnWeather, "line note", "line take"}
+	book, session := d.src.Book, cmp.Or(d.src.Former, d.src.Session)
 	return []Task{{"looking for drafts", func() any {
-		out := recalled{}
-		for _, n := range names {
-			text, err := book.Draft(context.Background(), session, n)
-			if err == nil && text != "" {
-				out[n] = text
-			}
+		drafts, err := book.Drafts(context.Background(), session)
+		if err != nil {
+			return kit.Say{Text: "drafts cannot be read: " + err.Error(), Bad: true}
 		}
-		return out
+		return recalled(drafts)
 	}}}
 }
 
@@ -192,12 +198,18 @@ func (d *Desk) remember(r recalled) {
 				d.screens[i] = s
 			}
 		}
-		d.drafts[k.Title()] = text
+		if d.src.Former == "" || d.src.Former == d.src.Session {
+			d.drafts[k.Title()] = text // on the disk under this session's name
+		}
 		d.say("what was half typed on the screen "+k.Title()+" is there again", false)
 	}
-	for name, label := range map[string]string{"line note": "note", "line take": "take"} {
-		if text, ok := r[name]; ok {
-			d.kept[label], d.drafts[name] = text, text
+	for name, text := range r {
+		if label, ok := strings.CutPrefix(name, "line "); ok && text != "" {
+			d.kept[label] = text
+			if d.src.Former == "" || d.src.Former == d.src.Session {
+				d.drafts[name] = text
+			}
+			d.say("what was half typed is there again: "+label+" "+text, false)
 		}
 	}
 }

@@ -46,16 +46,17 @@ type Source struct {
 	// for.
 	Requests []targets.Request
 	Request  func(target string) (targets.Request, bool)
-	// Readout is the time between frames, seconds.
-	Readout float64
+	// Readout returns the time between frames of an instrument, seconds; nil: 0.
+	Readout func(instrument string) float64
 	// Changed tells that other conditions hold; nights made from then on are
 	// to heed them.
 	Changed func(targets.Conditions)
 	Limits  targets.Limits
 	// ClockWords says whether the clock is kept right.
 	ClockWords string
-	// State is what an earlier session of the same name left, as State wrote it.
-	State string
+	// State is what an earlier session left, as State wrote it, and Former its
+	// name, under which its drafts are.
+	State, Former string
 	// Notices are said once, at the start.
 	Notices []string
 	Look    *kit.Look

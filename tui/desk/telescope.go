@@ -1,6 +1,7 @@
 package desk
 
 import (
+	"cmp"
 	"context"
 	"fmt"
 	"strconv"
@@ -33,7 +34,7 @@ func (d *Desk) atTelescope(a kit.Action) ([]Task, bool) {
 	case kit.SetUp:
 		d.ask1(prompt{label: "take", hint: "frames x seconds, first file: 3x90 obs0042; flat 11x3", field: kit.NewField(d.setup.String()), take: (*Desk).settle})
 	case kit.WriteNote:
-		d.ask1(prompt{label: "note", hint: "enter writes it; begin with fault: for a fault", take: (*Desk).note})
+		d.ask1(prompt{label: "note", hint: "enter writes it; begin with fault: for a fault", take: (*Desk).note, keep: true})
 	case kit.OpenWeather:
 		d.screens = append(d.screens, d.weather)
 	case kit.OpenLog:
@@ -76,6 +77,10 @@ func (d *Desk) settle(text string) []Task {
 		return nil
 	}
 	d.setup = s
+	if t := d.w.Take; t != nil && s.kind != "" && s.kind != cmp.Or(t.Type, "science") {
+		d.say("for the next take: "+s.String()+"; the one under way is "+cmp.Or(t.Type, "science"), false)
+		return nil
+	}
 	if t := d.w.Take; t != nil {
 		n := *t
 		if s.frames > 0 {
@@ -95,7 +100,8 @@ func (d *Desk) note(text string) []Task {
 	if strings.TrimSpace(text) == "" {
 		return nil
 	}
-	at, kind := d.w.Wall, "note"
+	d.kept["note"] = text // until it is saved
+	at, kind, typed := d.w.Wall, "note", text
 	if rest, ok := strings.CutPrefix(strings.TrimSpace(text), "fault:"); ok {
 		kind, text = "fault", strings.TrimSpace(rest)
 	}
@@ -105,6 +111,9 @@ func (d *Desk) note(text string) []Task {
 				return b.Add(ctx, logbook.Entry{Type: kind, Start: at, Note: text})
 			},
 			done: func(d *Desk, r any) []Task {
+				if d.kept["note"] == typed {
+					delete(d.kept, "note")
+				}
 				d.say(fmt.Sprintf("entry %d saved: %s", r.(int64), kind), false)
 				return nil
 			}})
