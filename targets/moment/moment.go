@@ -2,6 +2,7 @@ package moment
 
 import (
 	"errors"
+	"slices"
 	"time"
 
 	"evenfall/astro"
@@ -94,6 +95,9 @@ func Of(s *Scene, p *Prepared, c *Course, w Want) Moment {
 	return m
 }
 
+// steady are the limits that hold or do not, wherever the star is.
+var steady = []targets.Code{targets.CodeDaylight, targets.CodeInstrument, targets.CodeClosed}
+
 // windows fills what follows from the course and the instant.
 func (m *Moment) windows(s *Scene, c *Course) {
 	at := s.Instant
@@ -112,6 +116,11 @@ func (m *Moment) windows(s *Scene, c *Course) {
 	}
 	for _, l := range c.limits {
 		if _, kept := within(l.kept, at); kept {
+			continue
+		}
+		// in the forenoon the night to come has not begun: what its limits do
+		// is not known yet, but for those that do not move
+		if !s.Night.Span.Contains(at) && !slices.Contains(steady, l.code) {
 			continue
 		}
 		b := Block{Code: l.code, Until: l.nextKept(at)}

@@ -247,3 +247,16 @@ func TestCloudSector(t *testing.T) {
 		t.Errorf("%d of 20 stars are behind cloud all around", blocked)
 	}
 }
+
+// In the forenoon before a night only what holds all day is given as a reason.
+func TestForenoon(t *testing.T) {
+	n := testNight(t, targets.DefaultLimits())
+	s := NewScene(n, testInstant(t, "2026-12-01T14:17:00Z"))
+	for _, p := range testStars(t)[:40] {
+		c := Tonight(n, &p, Want{NotMounted: "imager"})
+		m := Of(&s, &p, &c, Want{})
+		if m.InCan || len(m.BlockedBy) != 2 || m.BlockedBy[0].Code != targets.CodeDaylight || m.BlockedBy[1].Code != targets.CodeInstrument {
+			t.Errorf("%s: %+v", p.Target.Name, m.BlockedBy)
+		}
+	}
+}

@@ -40,12 +40,29 @@ func (d *Desk) loopLine(p *kit.Pen) {
 		}
 		p.Put(role, fmt.Sprintf("   %sfits %s: %s %s", sign, kit.Left(at.Sub(w.Wall)), what, at.UTC().Round(time.Minute).Format("15:04")))
 	}
+	if name := d.following(); name != "" && p.Used()+9+len(name) <= p.Width() {
+		p.Put(kit.Dim, "   next: "+name)
+	}
 	for _, o := range w.Others {
 		p.Put(kit.Warn, fmt.Sprintf("   %s: %s %s", o.Observer, o.At(w.Wall).Phase, o.Target))
 	}
 	if n := len(d.queue); n > 0 && d.refused != nil {
 		p.Put(kit.Bad, fmt.Sprintf("   %d NOT SAVED", n))
 	}
+}
+
+// following names the first of the list that is not being taken.
+func (d *Desk) following() string {
+	w := &d.w
+	if w.Snap == nil || w.Take == nil || !w.Sort.Plain() {
+		return ""
+	}
+	for _, row := range w.Snap.Order[:min(2, len(w.Snap.Order))] {
+		if m := w.Snap.Peek(int(row)); m != nil && m.InCan && int(row) != d.takeRow {
+			return w.Snap.Roster.Entry(int(row)).Target.Name
+		}
+	}
+	return ""
 }
 
 // clockText writes minutes and seconds.

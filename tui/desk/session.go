@@ -119,7 +119,7 @@ func (d *Desk) keptScreens() []kit.Kept {
 // keep brings what is half typed, and where the session stands, to the disk:
 // at every tick at which it has changed.
 func (d *Desk) keep() []Task {
-	if d.src.Book == nil || d.refused != nil || d.w.Snap == nil || d.writing {
+	if d.src.Book == nil || d.src.Book.Store().ReadOnly() || d.refused != nil || d.w.Snap == nil || d.writing {
 		return nil
 	}
 	var tasks []Task
