@@ -2,6 +2,7 @@ package desk_test
 
 import (
 	"context"
+	"path/filepath"
 	"strings"
 	"syscall"
 	"testing"
@@ -9,6 +10,7 @@ import (
 
 	"evenfall/targets"
 	"evenfall/targets/logbook"
+	"evenfall/targets/store"
 	"evenfall/tui/check"
 )
 
@@ -307,4 +309,34 @@ func TestClockSetBack(t *testing.T) {
 	if e := logOf(t, book)[0]; e.End.Before(e.Start) || !strings.Contains(e.Note, "set back") {
 		t.Errorf("%+v", e)
 	}
+}
+
+// What one session writes the other sees within two seconds: takes, marks,
+// entries, targets and conditions, each over a connection of its own.
+func TestSeesTheOther(t *testing.T) {
+	path := filepath.Join(t.TempDir(), "run.db")
+	open := func(session, observer string) *check.Driver {
+		db, err := store.Open(path)
+		if err != nil {
+			t.Fatal(err)
+		}
+		t.Cleanup(func() { db.Close() })
+		src := check.Source(t, 8)
+		src.Book, src.Session, src.Observer = logbook.Open(db, func() time.Time { return check.Start }, ""), session, observer
+		return check.New(t, src, 100, 30)
+	}
+	one, two := open("one", "observer 1"), open("two", "observer 2")
+	two.Press("l")
+	one.Press("T", "m")
+	two.Wait(2 * time.Second).See("observer 1: exposing")
+	one.Press("x", "o").Type("fog from the west").Press("enter")
+	two.Wait(2*time.Second).See("fog from the west", "stopped early").Not("observer 1: exposing")
+	one.Press("a").Type("Nova X").Press("tab").Type("5.5 -20.5").Press("tab", "tab", "tab", "tab", "enter").See("Nova X is in the list")
+	two.Press("esc").Wait(2*time.Second).See("33", "Nova X was added by another session", "* ")
+	one.Press("w").Type("1.4")
+	for range 10 {
+		one.Press("enter")
+	}
+	one.See("saved: seeing 1.4")
+	two.Press("w").Wait(2 * time.Second).See("now: seeing 1.4 arcsec")
 }
