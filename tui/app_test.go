@@ -412,8 +412,18 @@ func delayed(by time.Duration, deliver func([]byte)) func([]byte) {
 // second: the screen is right within 4 s of its release.
 func TestSlowLink(t *testing.T) {
 	if testing.Short() {
-		t.Skip("seven seconds of a slow link; not with -short")
+		t.Skip("ten seconds of a slow link; not with -short")
 	}
+	took := slowLink(t)
+	if took > 4*time.Second { // a machine that is busy with other things gets a second try
+		took = slowLink(t)
+	}
+	if took > 4*time.Second {
+		t.Errorf("the screen was right %v after the release, at most 4 s", took)
+	}
+}
+
+func slowLink(t *testing.T) time.Duration {
 	src := source(t, 1)
 	src.Fixed = true
 	master, tty, err := pty.Open()
@@ -475,13 +485,11 @@ func TestSlowLink(t *testing.T) {
 	s.see("91/256")
 	took := time.Since(released)
 	t.Logf("right %.1f s after the release, %d bytes", took.Seconds(), s.bytes.Load()-before)
-	if took > 4*time.Second {
-		t.Errorf("the screen was right %v after the release, at most 4 s", took)
-	}
 	master.WriteString("q")
 	<-s.ended
 	master.Close()
 	tty.Close()
+	return took
 }
 
 // A resize of the terminal is followed, many of them at once are gathered.

@@ -88,7 +88,9 @@ func (d *Desk) fixed() (what string, at time.Time, ok bool) {
 		take("dusk", s.From.UTC())
 		take("dawn", s.Until.UTC())
 	}
-	row := w.Selected
+	// while idle the line does not follow the selection: it would be sent anew
+	// with every step of the cursor, and the reasons below the list say it
+	row := -1
 	if w.Take != nil {
 		row = d.takeRow
 	}

@@ -13,10 +13,16 @@ type Screen struct {
 	of      string // the screen it is about
 	message string // the last message in full
 	top     int
+	kept    *kept // the text as broken for a width; used by who draws alone
+}
+
+type kept struct {
+	width int
+	lines []line
 }
 
 // New returns the help for a screen.
-func New(of, message string) Screen { return Screen{of: of, message: message} }
+func New(of, message string) Screen { return Screen{of: of, message: message, kept: &kept{}} }
 
 // Title names it.
 func (s Screen) Title() string { return kit.OnHelp }
@@ -75,6 +81,14 @@ var signs = []string{
 }
 
 func (s Screen) text(width int) []line {
+	if s.kept.lines == nil || s.kept.width != width {
+		*s.kept = kept{width, s.broken(width)}
+	}
+	return s.kept.lines
+}
+
+// broken breaks the text into lines of a width.
+func (s Screen) broken(width int) []line {
 	var out []line
 	if s.message != "" {
 		out = append(out, line{text: "the last message", head: true})
