@@ -40,7 +40,7 @@ var ErrNotANumber = errors.New("altitude is not a number; there is no airmass")
 //     another by 2 per cent there.
 //
 // Source: [cite.KastenYoung1989]. Coefficients agree with two independent
-// transcriptions; the paper itself was not at hand.
+// printings of them; the paper itself was not at hand.
 //
 // Checked: TestAirmass, against testdata/astro/airmass.csv, to the digits
 // printed.
@@ -70,7 +70,7 @@ const youngLowestDeg = -0.6
 // Returns:
 //   - X, at least 1; [ErrBelowHorizon] under -0.6 degrees.
 //
-// Source: [cite.Young1994]. Seen in several transcriptions.
+// Source: [cite.Young1994]. Seen as several others print it.
 //
 // Checked: TestAirmass, against testdata/astro/airmass.csv.
 func MassYoung(trueAlt astro.Angle) (astro.Airmass, error) {
@@ -94,7 +94,7 @@ func MassYoung(trueAlt astro.Angle) (astro.Airmass, error) {
 // Returns:
 //   - X, at least 1; [ErrBelowHorizon].
 //
-// Source: [cite.Pickering2002]. Seen in several transcriptions.
+// Source: [cite.Pickering2002]. Seen as several others print it.
 //
 // Checked: TestAirmass, against testdata/astro/airmass.csv.
 func MassPickering(alt astro.Angle) (astro.Airmass, error) {
@@ -147,7 +147,7 @@ const ozoneHeight = 22.0 / 6370
 // Returns:
 //   - X, at least 1; [ErrBelowHorizon].
 //
-// Source: [cite.BirdRiordan1984]. Seen in one transcription.
+// Source: [cite.BirdRiordan1984]. Seen as one other prints it.
 //
 // Checked: TestAirmass, against testdata/astro/airmass.csv.
 func ThinLayer(alt astro.Angle) (astro.Airmass, error) {
@@ -172,8 +172,8 @@ func ThinLayer(alt astro.Angle) (astro.Airmass, error) {
 // Notes:
 //  1. The sky models were fitted with this path; [Mass] must not replace it.
 //
-// Source: [cite.Garstang1989]; [cite.KrisciunasSchaefer1991], eq. 3. Seen in
-// several transcriptions.
+// Source: [cite.Garstang1989]; [cite.KrisciunasSchaefer1991], eq. 3. Seen as
+// several others print it.
 //
 // Checked: TestAirmass, against testdata/astro/airmass.csv.
 func VanRhijn(alt astro.Angle) (astro.Airmass, error) {

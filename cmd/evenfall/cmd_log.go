@@ -156,11 +156,7 @@ func logAddCommand(w world, o *options) *cobra.Command {
 					return err
 				}
 				id, err := x.book.Add(cmd.Context(), e)
-				if err != nil {
-					return err
-				}
-				_, err = fmt.Fprintln(w.out, id)
-				return err
+				return x.acknowledge(id, err)
 			})
 		},
 	}
@@ -196,11 +192,7 @@ func logAmendCommand(w world, o *options) *cobra.Command {
 					}
 					return x.complete(g, e, was)
 				})
-				if err != nil {
-					return asUsage(err)
-				}
-				_, err = fmt.Fprintln(w.out, made)
-				return err
+				return x.acknowledge(made, err)
 			})
 		},
 	}
@@ -221,16 +213,21 @@ func logVoidCommand(w world, o *options) *cobra.Command {
 			}
 			return within(w, o, func(x *writing) error {
 				made, err := x.book.Void(cmd.Context(), id, table.Clean(note))
-				if err != nil {
-					return asUsage(err)
-				}
-				_, err = fmt.Fprintln(w.out, made)
-				return err
+				return x.acknowledge(made, err)
 			})
 		},
 	}
 	c.Flags().StringVar(&note, "note", "", "why: `TEXT`")
 	return c
+}
+
+// acknowledge prints an entry's number once it is on the disk.
+func (x *writing) acknowledge(id int64, err error) error {
+	if err != nil {
+		return asUsage(err)
+	}
+	_, err = fmt.Fprintln(x.w.out, id)
+	return err
 }
 
 // asUsage makes an entry that is not there a mistake of the call; failures of

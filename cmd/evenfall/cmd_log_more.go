@@ -42,11 +42,7 @@ func logNoteCommand(w world, o *options) *cobra.Command {
 					return usagef("a note without words")
 				}
 				id, err := x.book.Add(cmd.Context(), logbook.Entry{Type: "note", Start: at, Note: text})
-				if err != nil {
-					return asUsage(err)
-				}
-				_, err = fmt.Fprintln(w.out, id)
-				return err
+				return x.acknowledge(id, err)
 			})
 		},
 	}
@@ -108,11 +104,7 @@ func logOpenCommand(w world, o *options) *cobra.Command {
 					return err
 				}
 				id, err := x.book.Conditions(cmd.Context(), logbook.Conditions{From: at, Dome: "open", Note: table.Clean(note)})
-				if err != nil {
-					return asUsage(err)
-				}
-				_, err = fmt.Fprintln(w.out, id)
-				return err
+				return x.acknowledge(id, err)
 			})
 		},
 	}
@@ -212,11 +204,7 @@ func logMagnitudeCommand(w world, o *options) *cobra.Command {
 					m.JD = instant.JDUTC()
 				}
 				id, err := x.book.AddMagnitude(cmd.Context(), m)
-				if err != nil {
-					return asUsage(err)
-				}
-				_, err = fmt.Fprintln(w.out, id)
-				return err
+				return x.acknowledge(id, err)
 			})
 		},
 	}

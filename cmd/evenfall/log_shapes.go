@@ -146,13 +146,6 @@ func logLine(e *logbook.Entry) string {
 	if !e.End.IsZero() {
 		when += e.End.Format("-15:04")
 	}
-	frames := ""
-	if e.Frames > 0 {
-		frames = strconv.Itoa(e.Frames)
-		if e.EachS.Known {
-			frames += fmt.Sprintf("x%g", e.EachS.Value)
-		}
-	}
 	x := ""
 	if e.AirmassMid.Known {
 		x = fmt.Sprintf("%.2f", e.AirmassMid.Value)
@@ -166,7 +159,7 @@ func logLine(e *logbook.Entry) string {
 			rest = append(rest, s)
 		}
 	}
-	line := fmt.Sprintf("%4d  %-18s %-11s %-14s %-7s %4s  %s", e.ID, when, e.Type, cut(e.Target, 14), frames, x, strings.Join(rest, "; "))
+	line := fmt.Sprintf("%4d  %-18s %-11s %-14s %-7s %4s  %s", e.ID, when, e.Type, cut(e.Target, 14), e.FramesText(), x, strings.Join(rest, "; "))
 	if e.Void {
 		line += "  VOID"
 	}

@@ -97,6 +97,18 @@ func (e *Entry) Taken() time.Duration {
 	return e.End.Sub(e.Start)
 }
 
+// FramesText writes frames and seconds each as they are typed, 3x90; ""
+// where they were not given.
+func (e *Entry) FramesText() string {
+	switch {
+	case e.Frames == 0:
+		return ""
+	case e.EachS.Known:
+		return fmt.Sprintf("%dx%g", e.Frames, e.EachS.Value)
+	}
+	return fmt.Sprint(e.Frames)
+}
+
 // stamp writes a time as it is stored: to the millisecond where it has a
 // fraction.
 func stamp(t time.Time) string {

@@ -233,8 +233,8 @@ func (d *Desk) end(how string) []Task {
 	}
 	sky := reckon.Sky{Site: d.src.Site, Night: d.src.Night}
 	words := fmt.Sprintf("%s %s %s-%s", e.Type, e.Target, e.Start.Format("15:04:05"), e.End.Format("15:04:05"))
-	if e.Frames > 0 {
-		words += fmt.Sprintf(" %dx%gs", e.Frames, e.EachS.Value)
+	if frames := e.FramesText(); frames != "" {
+		words += " " + frames
 	}
 	mine := d.ref
 	d.setTake(nil)

@@ -39,20 +39,7 @@ func (s Screen) Prompt(*kit.World, *kit.Pen) bool { return false }
 // Key scrolls.
 func (s Screen) Key(w *kit.World, press string) (kit.Screen, kit.Job) {
 	page := max(w.Body()/2, 1)
-	switch kit.Lookup(kit.OnHelp, press) {
-	case kit.Down:
-		s.top++
-	case kit.Up:
-		s.top--
-	case kit.HalfDown:
-		s.top += page
-	case kit.HalfUp:
-		s.top -= page
-	case kit.First:
-		s.top = 0
-	case kit.Last:
-		s.top = 1 << 20
-	}
+	s.top = kit.Scroll(kit.Lookup(kit.OnHelp, press), s.top, page)
 	s.top = max(min(s.top, len(s.text(w.Width))-w.Body()), 0)
 	return s, nil
 }
@@ -70,7 +57,7 @@ var signs = []string{
 	"what %: likeliest stage of its life and its probability; undec: none reaches 60 %",
 	"expected: band, magnitude and 80 % interval, brighter end first; any: the phase is not known; /sq\": per square arcsec",
 	"alt: refracted, degrees, + rising - sinking   X: airmass   best, X: when it is lowest tonight, UTC   left: until the window ends",
-	"Mn: degrees from the Moon",
+	"Mn: degrees from the Moon   Sun, Moon above the list: altitude in degrees (d), how much of the Moon is lit; left and the loop: h hours, m minutes",
 	"night strip: s Sun up, c civil, n nautical, a astronomical twilight, . dark, m dark with the Moon up, | the moment shown, figures: hours UTC",
 	"star: = should, - can be taken, b best; the curve is its airmass, 1 at the top",
 	"filter: words that must occur, and conditions such as kind=wd alt>35 x<1.5 V<16 stage=TPAGB moon>60 left>90 mark=yes; = != < <= > >=",

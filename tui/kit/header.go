@@ -87,14 +87,18 @@ func otherClocks(w *World) string {
 // Sun and Moon are.
 func skyLine(w *World, p *Pen) {
 	sc := &w.Snap.Scene
-	p.Put(Text, otherClocks(w)+"  "+partWords(sc)+fmt.Sprintf("  Sun %+.0f", sc.Sun.Place.Alt.Deg()))
+	p.Put(Text, otherClocks(w)+"  "+partWords(sc)+fmt.Sprintf("  Sun %+.0fd", sc.Sun.Place.Alt.Deg()))
 	m := &sc.Moon
-	p.Put(Text, fmt.Sprintf("  Moon %.0f%% %+.0f", 100*sc.Phase.Illuminated, m.Place.Alt.Deg()))
+	p.Put(Text, fmt.Sprintf("  Moon %.0f%% %+.0fd", 100*sc.Phase.Illuminated, m.Place.Alt.Deg()))
 	n := sc.Night
+	next := ""
 	if set := following(n.Moonset, sc.Instant); m.Place.Alt.Deg() > 0 && set != nil {
-		p.Put(Text, " sets "+Clock(*set))
+		next = " sets " + Clock(*set)
 	} else if rise := following(n.Moonrise, sc.Instant); m.Place.Alt.Deg() <= 0 && rise != nil {
-		p.Put(Text, " rises "+Clock(*rise))
+		next = " rises " + Clock(*rise)
+	}
+	if p.Used()+len(next) <= p.Width() { // never half a time
+		p.Put(Text, next)
 	}
 }
 
@@ -119,7 +123,7 @@ func partWords(sc *moment.Scene) string {
 		}
 	}
 	if len(n.Ast.Below) == 0 {
-		return short(sc.Part) + ", never dark tonight"
+		return short(sc.Part) + ", never dark"
 	}
 	return short(sc.Part) + ", sunrise " + clockOf(n.Sunrise)
 }

@@ -105,6 +105,8 @@ var Bindings = []Binding{
 	{ReverseSort, []string{"S"}, "S", "", "reverse the order", []string{OnNext}},
 	{RankAnew, []string{"r"}, "r", "", "put the list into the order that holds now; it waits while you type", []string{OnNext}},
 	{MarkStar, []string{"m"}, "m", "mark", "mark or unmark the star; / mark=yes lists the marked", []string{OnNext, OnStar}},
+	{TakeStep, []string{"t"}, "t", "take", "the loop's next step: slew to the selected star, acquire, expose, accept and log", work},
+	{OpenLog, []string{"l"}, "l", "log", "the log of the night and what is owed", []string{OnNext, OnStar}},
 	{AddStar, []string{"a"}, "a", "add", "type or paste a new target", []string{OnNext, OnStar}},
 	{CopyLines, []string{"c"}, "c", "copy", "send the hand-over lines to the clipboard and show them plainly", []string{OnNext, OnStar}},
 	{NextStar, []string{"."}, ".", ". , stars", "the next star of the list", []string{OnStar}},
@@ -118,7 +120,6 @@ var Bindings = []Binding{
 	{NightLess, []string{"<"}, "<", "", "the night before, same time", []string{OnNext, OnStar}},
 	{NightMore, []string{">"}, ">", "", "the night after, same time", []string{OnNext, OnStar}},
 	{BackToNow, []string{"n"}, "n", "", "back to now, and on with the clock", []string{OnNext, OnStar}},
-	{TakeStep, []string{"t"}, "t", "take", "the loop's next step: slew to the selected star, acquire, expose, accept and log", work},
 	{TakeNow, []string{"T"}, "T", "", "straight to exposing; then t accepts: a take in two keys", work},
 	{FrameDone, []string{"f"}, "f", "", "count a frame by hand", work},
 	{StopEarly, []string{"x"}, "x", "", "stop early: what is done is logged", work},
@@ -126,7 +127,6 @@ var Bindings = []Binding{
 	{SetUp, []string{"e"}, "e", "", "frames, seconds, first file and type of the take: 3x90 obs0042, or flat 11x3 b0001", work},
 	{WriteNote, []string{"o"}, "o", "", "write a note into the log, or a fault (fault: ...)", work},
 	{OpenWeather, []string{"w"}, "w", "", "conditions: seeing, cloud, wind, humidity, dome", work},
-	{OpenLog, []string{"l"}, "l", "log", "the log of the night and what is owed", []string{OnNext, OnStar}},
 	{GradeGood, []string{"1"}, "1", "1 2 3 grade", "grade the entry good", []string{OnLog}},
 	{GradeUsable, []string{"2"}, "2", "", "usable", []string{OnLog}},
 	{GradePoor, []string{"3"}, "3", "", "poor: it does not count as a visit", []string{OnLog}},
@@ -154,6 +154,26 @@ func Lookup(screen, press string) Action {
 		}
 	}
 	return ""
+}
+
+// Scroll moves the first line shown as a key says; the end is far beyond, for
+// the screen to hold back.
+func Scroll(do Action, top, page int) int {
+	switch do {
+	case Down:
+		return top + 1
+	case Up:
+		return top - 1
+	case HalfDown:
+		return top + page
+	case HalfUp:
+		return top - page
+	case First:
+		return 0
+	case Last:
+		return 1 << 20
+	}
+	return top
 }
 
 // KeysOn lists the bindings of a screen.

@@ -5,6 +5,7 @@ package log
 import (
 	"context"
 	"fmt"
+	"slices"
 	"strings"
 	"time"
 
@@ -167,7 +168,7 @@ func (s Screen) draw(w *kit.World, p *kit.Pen, height int) {
 	}
 	const detail = 2
 	room := max(height-p.Lines()-owed-2-detail, 1)
-	p.Put(kit.Dim, "   no  UTC          type        target         frames   X    S/N files, note").Line()
+	p.Put(kit.Dim, "   no  UTC          type        target         frames x s X  S/N files, note").Line()
 	list := s.data.Entries
 	top := max(min(s.place-room/2, len(list)-room), 0)
 	for i := top; i < min(top+room, len(list)); i++ {
@@ -210,14 +211,7 @@ func row(p *kit.Pen, e *logbook.Entry, selected bool) {
 	if !e.End.IsZero() {
 		when += e.End.Format("-15:04")
 	}
-	frames := ""
-	if e.Frames > 0 {
-		frames = fmt.Sprint(e.Frames)
-		if e.EachS.Known {
-			frames += fmt.Sprintf("x%g", e.EachS.Value)
-		}
-	}
-	p.Put(role, cursor).Right(role, 5, fmt.Sprint(e.ID)).To(7).Put(role, when).To(20).Put(role, e.Type).To(32).Put(role, kit.Cut(e.Target, 14)).To(47).Put(role, frames)
+	p.Put(role, cursor).Right(role, 5, fmt.Sprint(e.ID)).To(7).Put(role, when).To(20).Put(role, e.Type).To(32).Put(role, kit.Cut(e.Target, 14)).To(47).Put(role, e.FramesText())
 	if e.AirmassMid.Known {
 		p.Right(role, 59, fmt.Sprintf("%.2f", e.AirmassMid.Value))
 	}
@@ -277,13 +271,9 @@ func whole(e *logbook.Entry) string {
 
 // owedMost orders requests by how many visits are missing.
 func owedMost(list []Owed) []Owed {
-	out := append([]Owed{}, list...)
-	missing := func(o *Owed) int { return max(o.Request.Visits, 1) - o.Progress.Visits }
-	for i := 1; i < len(out); i++ {
-		for k := i; k > 0 && missing(&out[k]) > missing(&out[k-1]); k-- {
-			out[k], out[k-1] = out[k-1], out[k]
-		}
-	}
+	missing := func(o Owed) int { return max(o.Request.Visits, 1) - o.Progress.Visits }
+	out := slices.Clone(list)
+	slices.SortStableFunc(out, func(a, b Owed) int { return missing(b) - missing(a) })
 	return out
 }
 

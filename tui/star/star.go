@@ -41,24 +41,14 @@ func (s Screen) Prompt(*kit.World, *kit.Pen) bool { return false }
 // Key obeys a key.
 func (s Screen) Key(w *kit.World, press string) (kit.Screen, kit.Job) {
 	page := max(layoutOf(w.Width, w.Body(), s.detail).doc/2, 1)
-	switch kit.Lookup(kit.OnStar, press) {
-	case kit.Down:
-		s.top++
-	case kit.Up:
-		s.top--
-	case kit.HalfDown:
-		s.top += page
-	case kit.HalfUp:
-		s.top -= page
-	case kit.First:
-		s.top = 0
-	case kit.Last:
-		s.top = 1 << 20
+	do := kit.Lookup(kit.OnStar, press)
+	switch do {
 	case kit.NextStar:
 		return s.other(w, 1)
 	case kit.PriorStar:
 		return s.other(w, -1)
 	}
+	s.top = kit.Scroll(do, s.top, page)
 	s.top = s.clamp(w.Width, w.Body())
 	return s, nil
 }
