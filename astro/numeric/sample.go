@@ -44,6 +44,11 @@ func Quantiles(sample []float64, p ...float64) ([]float64, error) {
 	return out, nil
 }
 
+// NormalDensity returns the density of the standard normal distribution at x.
+//
+// Checked: TestNormal.
+func NormalDensity(x float64) float64 { return math.Exp(-x*x/2) / math.Sqrt(2*math.Pi) }
+
 // NormalCDF returns the probability that a normal variable lies below x
 // standard deviations from its mean.
 //

@@ -57,6 +57,9 @@ func TestNormal(t *testing.T) {
 	} {
 		check.Near(t, NormalCDF(c.x), c.p, c.tol, "chance below %v sigma", c.x)
 	}
+	// table 26.1 again
+	check.Near(t, NormalDensity(0), 0.398942280401433, 1e-15, "density at 0")
+	check.Near(t, NormalDensity(-1), 0.241970724519143, 1e-15, "density at -1")
 	for _, c := range []struct{ p, x float64 }{
 		{0.5, 0}, {0.1, -1.2815515655446004}, {0.9, 1.2815515655446004}, {0.16, -0.9944578832097532},
 		{0.025, -1.959963984540054}, {0.001, -3.0902323061678136},
