@@ -27,6 +27,9 @@ type Verdict struct {
 	P        map[targets.Stage]float64 // sums to 1 over the codes
 	Evidence []targets.Evidence        // the most telling first
 	Missing  []string                  // what is missing, and what it costs
+	Place    Placing                   // on the diagram
+	MassMsun float64                   // likeliest mass now, Msun; 0: not known
+	FeH      float64                   // metallicity that the judgement used, dex
 }
 
 // factor is one piece of evidence: how much likelier it is in each stage than
