@@ -29,6 +29,8 @@ var layers = map[string][]string{
 	"astro/air":          {"astro", "astro/cite", "astro/numeric", "astro/meeusfence"},
 	"astro/skyglow":      {"astro", "astro/cite", "astro/air"},
 	"astro/photon":       {"astro", "astro/cite", "astro/numeric"},
+	"astro/stellar":      {"astro", "astro/cite", "astro/numeric"},
+	"astro/nebular":      {"astro", "astro/cite", "astro/numeric"},
 	"astro/clock":        {},
 	"astro/check":        {},
 	"targets":            {"astro"},
