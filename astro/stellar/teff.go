@@ -265,7 +265,7 @@ func gkTeff(c, g, f float64) float64 {
 // Source: [cite.CasagrandeEtAl2021], seen in one copy, the authors' program;
 // it agrees with spectra of giants in the Kepler field to 5 to 18 K.
 //
-// Checked: TestGK, to 1 K.
+// Checked: TestGK, to 1 K; TestKeplerGiants.
 func TeffFromGK(gk0 Measure, logG float64, feH Measure) (TeffEstimate, error) {
 	if !gk0.Known {
 		gk0.Value = math.NaN()
