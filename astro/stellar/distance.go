@@ -28,12 +28,13 @@ const (
 )
 
 // fullGrid is the 300 distances from 1 pc to 30 kpc, even in ln r.
-var fullGrid = func() (g struct{ lnR, r, plx [gridNodes]float64 }) {
+var fullGrid = func() (g struct{ lnR, r, plx, modulus [gridNodes]float64 }) {
 	lo, hi := math.Log(gridLoKpc), math.Log(gridHiKpc)
 	for i := range gridNodes {
 		g.lnR[i] = lo + (hi-lo)*float64(i)/(gridNodes-1)
 		g.r[i] = math.Exp(g.lnR[i])
 		g.plx[i] = 1 / g.r[i]
+		g.modulus[i] = ModulusAt(g.r[i])
 	}
 	return g
 }()
@@ -118,10 +119,10 @@ func (d *Distances) room(n int) {
 func (d *Distances) full() {
 	d.room(gridNodes)
 	copy(d.R, fullGrid.r[:])
-	inv := 1 / d.ErrMas
+	inv, perScale := 1/d.ErrMas, 1/d.ScaleKpc
 	for i := range d.W {
 		x := (d.PlxMas - fullGrid.plx[i]) * inv
-		d.W[i] = 3*fullGrid.lnR[i] - d.R[i]/d.ScaleKpc - x*x/2
+		d.W[i] = 3*fullGrid.lnR[i] - fullGrid.r[i]*perScale - x*x/2
 	}
 	d.firstX = fullGrid.lnR[0]
 	d.stepX = (fullGrid.lnR[gridNodes-1] - fullGrid.lnR[0]) / (gridNodes - 1)
@@ -151,7 +152,9 @@ func (d *Distances) compact() {
 func (d *Distances) normalise() {
 	most := math.Inf(-1)
 	for _, v := range d.W {
-		most = math.Max(most, v)
+		if v > most {
+			most = v
+		}
 	}
 	sum := 0.0
 	for i, v := range d.W {
@@ -161,20 +164,25 @@ func (d *Distances) normalise() {
 		}
 		sum += d.W[i]
 	}
+	per := 1 / sum
 	for i := range d.W {
-		d.W[i] /= sum
+		d.W[i] *= per
 	}
 	n := len(d.W)
 	for i := 1; i < n; i++ {
 		cell := (d.W[i-1] + d.W[i]) / 2
 		if i > 1 && i < n-1 {
-			cell = math.Max((13*(d.W[i-1]+d.W[i])-d.W[i-2]-d.W[i+1])/24, 0)
+			if cell = (13*(d.W[i-1]+d.W[i]) - d.W[i-2] - d.W[i+1]) / 24; cell < 0 {
+				cell = 0
+			}
 		}
 		d.cum[i] = d.cum[i-1] + cell
 	}
+	per = 1 / d.cum[n-1]
 	for i := range d.cum {
-		d.cum[i] /= d.cum[n-1]
+		d.cum[i] *= per
 	}
+	d.cum[n-1] = 1
 }
 
 // Quantile returns the distance, kpc, that the star is nearer than with
@@ -252,7 +260,19 @@ func (d Distances) Expect(f func(rKpc float64) float64) Measure {
 //	5 log10(r / 10 pc)
 //
 // Checked: TestExpect.
-func (d Distances) Modulus() Measure { return d.Expect(ModulusAt) }
+func (d Distances) Modulus() Measure {
+	if d.inverse || len(d.W) != gridNodes {
+		return d.Expect(ModulusAt)
+	}
+	var mean, square float64
+	for i, w := range d.W {
+		mean += w * fullGrid.modulus[i]
+	}
+	for i, w := range d.W {
+		square += w * (fullGrid.modulus[i] - mean) * (fullGrid.modulus[i] - mean)
+	}
+	return Measured(mean, math.Sqrt(square))
+}
 
 // ModulusAt returns the distance modulus of one distance, magnitudes.
 //
