@@ -31,6 +31,7 @@ var layers = map[string][]string{
 	"astro/photon":       {"astro", "astro/cite", "astro/numeric"},
 	"astro/stellar":      {"astro", "astro/cite", "astro/numeric"},
 	"astro/nebular":      {"astro", "astro/cite", "astro/numeric"},
+	"astro/degenerate":   {"astro", "astro/cite", "astro/numeric"},
 	"astro/clock":        {},
 	"astro/check":        {},
 	"targets":            {"astro"},
