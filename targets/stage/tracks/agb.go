@@ -9,11 +9,12 @@ func (w *walk) agb(clock float64) {
 	pulse := dredgeUpCore(helium)
 	collapse := math.Max(chandrasekhar, 0.773*helium-0.35)
 	w.end = after(helium)
-	if !w.early(clock, helium, math.Min(pulse, collapse)) {
+	whole := w.early(clock, helium, math.Min(pulse, collapse))
+	if !whole && bareEnd(helium) < collapse {
 		w.leave(w.m)
 		return
 	}
-	if pulse >= collapse {
+	if !whole || pulse >= collapse {
 		w.end, w.burned = EndExplosion, w.age
 		return
 	}

@@ -37,8 +37,9 @@ func (t *Track) length(p Phase) float64 {
 // slack is 1 per cent, but for what the table's coarse steps spoil: its
 // subgiants end a hundredth early; below 1 Msun its wind, in plain steps,
 // takes the envelope too fast, by 6 per cent of the pulsing branch, and
-// overshoots the core by a hundredth. With 16 times the steps the same program
-// comes within 1 per cent of what is found here.
+// overshoots the core by a hundredth, while it knows no thin envelope before the
+// pulses. With 16 times the steps the same program finds the pulsing branch and
+// the masses within half a per cent of what is found here.
 func slack(name string, m float64) float64 {
 	switch {
 	case name == "t_hg", name == "m_end" && m <= 1:
