@@ -96,7 +96,8 @@ type walk struct {
 	f             *Formulas
 	birth, m, age float64
 	eta           float64
-	fine          int // multiplies the number of steps; 1 serves the grid
+	fine          int     // multiplies the number of steps; 1 serves the grid
+	until         float64 // age, Myr, beyond which no phase is begun; 0: none
 	points        []Point
 	starts        []Start
 	end           End
@@ -119,17 +120,16 @@ func (w *walk) putLog(p Phase, core, logL, logR float64) {
 // live goes through all phases.
 func (w *walk) live() {
 	w.mainSequence()
-	if w.birth < w.f.mFGB {
-		if !w.redGiant() {
-			return
-		}
-	}
-	clock, ok := w.coreHelium()
-	if !ok {
+	if w.old() || w.birth < w.f.mFGB && !w.redGiant() || w.old() {
 		return
 	}
-	w.agb(clock)
+	if clock, ok := w.coreHelium(); ok && !w.old() {
+		w.agb(clock)
+	}
 }
+
+// old tells whether nobody wants to know how the star goes on.
+func (w *walk) old() bool { return w.until > 0 && w.age > w.until }
 
 // mainSequence goes to the base of the giant branch, or to helium ignition.
 func (w *walk) mainSequence() {
