@@ -103,13 +103,18 @@ func (w *walk) pulsing(clock, pulse, collapse float64) {
 	w.begin(PhaseTPAGB)
 	seen := true
 	for i := 0; i < mostSteps && w.m-core > envelopeEnd; i++ {
-		bareL, bareR := f.dwarf(core, w.end.cooling(), 0)
-		l, r := thin(w.m, core, lum, radius, bareL, 5*bareR)
+		l, r := lum, radius
+		if seen && (w.m-core)*clamp(math.Sqrt(7e4/lum), 1.2, 5) < w.m {
+			bareL, bareR := f.dwarf(core, w.end.cooling(), 0)
+			l, r = thin(w.m, core, lum, radius, bareL, 5*bareR)
+		}
 		logL, logR := math.Log10(l), math.Log10(r)
-		seen = seen && logTeff(logL, logR) < logTeff(math.Log10(lum), math.Log10(radius))+off
-		if seen || i == 0 {
+		seen = seen && (i == 0 || logTeff(logL, logR) < logTeff(math.Log10(lum), math.Log10(radius))+off)
+		if seen {
 			w.putLog(PhaseTPAGB, core, logL, logR)
 			w.note()
+		} else if w.m-core < 1e-3*wind {
+			break // the rest takes less than a thousand years
 		}
 		dt := math.Min(envelopeStep*(w.m-core)/wind, coreStep/(bothRate*lum)) / fine
 		before := w.m

@@ -13,6 +13,8 @@ const (
 	cellL, lowL, cellsL = 0.02, -5.2, 540  // dex; Lsun
 	mostNodes           = 16
 	codes               = 11
+	hotCells            = 3 // after the asymptotic giant branch, in cells a side
+	fleeting            = 7 // number of the first stage after it
 )
 
 // Ages and masses in the cells, by bins of their logarithms.
@@ -81,9 +83,9 @@ func NewGrid(r Recipe) (*Grid, error) {
 	g := &Grid{recipe: r, total: s.total}
 	fine := s.all
 	for _, size := range [][2]int{{1, 1}, {4, 1}, {16, 1}} {
-		fine = merge(fold(fine, size[0], size[1]))
+		fine = merge(fine, size[0], size[1])
 		g.levels = append(g.levels, newLevel(fine, size[0], size[1]))
-		tall := merge(fold(fine, size[0], 4))
+		tall := merge(fine, size[0], 4)
 		g.levels = append(g.levels, newLevel(tall, size[0], 4))
 	}
 	return g, nil
@@ -123,7 +125,7 @@ type sower struct {
 }
 
 func newSower(r *Recipe) *sower {
-	s := &sower{r: r, where: make([]int32, codes*cellsT*cellsL)}
+	s := &sower{r: r, where: make([]int32, codes*cellsT*cellsL), all: make([]seed, 0, 150000)}
 	for p := Phase(0); p < phases; p++ {
 		for i, code := range stages {
 			if code == p.Stage(1) {
@@ -218,7 +220,11 @@ type stretch struct {
 // drop spreads the stars on a stretch over the cells it crosses.
 func (s *sower) drop(k stretch) {
 	s.total += k.w
-	n := int(math.Max(math.Abs(k.t1-k.t0)/cellT, math.Abs(k.l1-k.l0)/cellL)) + 1
+	wide := 1
+	if k.code >= fleeting {
+		wide = hotCells
+	}
+	n := int(math.Max(math.Abs(k.t1-k.t0)/cellT, math.Abs(k.l1-k.l0)/cellL))/wide + 1
 	w := k.w / float64(n)
 	for i := 0; i < n; i++ {
 		x := (float64(i) + 0.5) / float64(n)
@@ -226,6 +232,9 @@ func (s *sower) drop(k stretch) {
 		row := int((k.l0 + (k.l1-k.l0)*x - lowL) / cellL)
 		if t < 0 || t >= cellsT || row < 0 || row >= cellsL {
 			continue
+		}
+		if wide > 1 {
+			t, row = t/wide*wide+wide/2, row/wide*wide+wide/2
 		}
 		at := (int(k.code)*cellsL+row)*cellsT + t
 		j := s.where[at]
@@ -244,28 +253,33 @@ func (s *sower) drop(k stretch) {
 	}
 }
 
-// fold numbers seeds by larger cells.
-func fold(in []seed, foldT, foldL int) []seed {
-	out := make([]seed, len(in))
-	for i, d := range in {
-		d.t = d.t * uint16(d.foldT) / uint16(foldT)
-		d.row = d.row * uint16(d.foldL) / uint16(foldL)
-		d.foldT, d.foldL = uint8(foldT), uint8(foldL)
-		out[i] = d
+// merge sorts seeds by larger cells, by row and then by temperature, and puts
+// those together that agree in cell, stage and metallicity.
+func merge(in []seed, foldT, foldL int) []seed {
+	across := cellsT/foldT + 1
+	place := func(d *seed) int {
+		return int(d.row)*int(d.foldL)/foldL*across + int(d.t)*int(d.foldT)/foldT
 	}
-	return out
-}
-
-// merge sorts seeds by row, temperature, stage and metallicity, and puts those
-// together that agree in all.
-func merge(in []seed) []seed {
-	in = count(in, codes*mostNodes, func(d *seed) int { return int(d.code)*mostNodes + int(d.node) })
-	in = count(in, cellsT, func(d *seed) int { return int(d.t) })
-	in = count(in, cellsL, func(d *seed) int { return int(d.row) })
-	out := in[:0]
-	for _, d := range in {
-		if n := len(out); n > 0 && out[n-1].row == d.row && out[n-1].t == d.t && out[n-1].code == d.code && out[n-1].node == d.node {
-			o := &out[n-1]
+	first := make([]int32, across*(cellsL/foldL+1)+1)
+	for i := range in {
+		first[place(&in[i])+1]++
+	}
+	for i := 1; i < len(first); i++ {
+		first[i] += first[i-1]
+	}
+	order := make([]int32, len(in))
+	for i := range in {
+		k := place(&in[i])
+		order[first[k]] = int32(i)
+		first[k]++
+	}
+	var known [codes * mostNodes]struct{ cell, at int } // cell plus 1
+	out := make([]seed, 0, len(in))
+	for _, i := range order {
+		d, cell := in[i], place(&in[i])+1
+		kind := &known[int(d.code)*mostNodes+int(d.node)]
+		if kind.cell == cell {
+			o := &out[kind.at]
 			o.w += d.w
 			o.age += d.age
 			o.age2 += d.age2
@@ -273,25 +287,10 @@ func merge(in []seed) []seed {
 			o.massSqrd += d.massSqrd
 			continue
 		}
+		kind.cell, kind.at = cell, len(out)
+		d.row, d.t = uint16((cell-1)/across), uint16((cell-1)%across)
+		d.foldT, d.foldL = uint8(foldT), uint8(foldL)
 		out = append(out, d)
-	}
-	return out
-}
-
-// count sorts by a small number and keeps the order of equals.
-func count(in []seed, n int, key func(*seed) int) []seed {
-	first := make([]int, n+1)
-	for i := range in {
-		first[key(&in[i])+1]++
-	}
-	for i := 0; i < n; i++ {
-		first[i+1] += first[i]
-	}
-	out := make([]seed, len(in))
-	for i := range in {
-		k := key(&in[i])
-		out[first[k]] = in[i]
-		first[k]++
 	}
 	return out
 }
