@@ -38,6 +38,8 @@ type Formulas struct {
 	loopHeF                float64 // R_m(mHeF) / R_GB(mHeF, L_m(mHeF))
 	coreB, coreI           float64 // C_B, C_I of the core masses
 	hookLum, hookRad       float64 // depth of the hook at a33, and dR at 2 Msun
+	below, above           *Formulas
+	mix                    float64 // share of above in the radii of giants; see newSmooth
 }
 
 // NewFormulas evaluates the coefficients for one metallicity.

@@ -126,10 +126,16 @@ func (f *Formulas) giantRadius(m, lum float64) float64 {
 
 // giantRadiusLog is giantRadius by natural logarithms of its arguments.
 func (f *Formulas) giantRadiusLog(lnM, lnL float64) float64 {
+	if f.above != nil {
+		return blend(f.below.giantRadiusLog(lnM, lnL), f.above.giantRadiusLog(lnM, lnL), f.mix)
+	}
 	b := &f.b
 	a := math.Min(b[4]*math.Exp(-b[5]*lnM), b[6]*math.Exp(-b[7]*lnM))
 	return a * (math.Exp(b[1]*lnL) + b[2]*math.Exp(b[3]*lnL))
 }
+
+// blend is between two radii, evenly in the logarithm.
+func blend(a, b, share float64) float64 { return a * math.Exp(share*math.Log(b/a)) }
 
 // agbRadius is the radius on the asymptotic giant branch.
 func (f *Formulas) agbRadius(m, lum float64) float64 {
@@ -137,6 +143,9 @@ func (f *Formulas) agbRadius(m, lum float64) float64 {
 }
 
 func (f *Formulas) agbRadiusLog(m, lnM, lnL float64) float64 {
+	if f.above != nil {
+		return blend(f.below.agbRadiusLog(m, lnM, lnL), f.above.agbRadiusLog(m, lnM, lnL), f.mix)
+	}
 	b, low := &f.b, f.mHeF-0.2
 	var a float64
 	e := b[3]

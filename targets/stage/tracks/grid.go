@@ -140,7 +140,11 @@ func newSower(r *Recipe) *sower {
 func (s *sower) node(k int) error {
 	r := s.r
 	z, effective := metals(r.FeH[k])
-	f, err := NewFormulas(z)
+	evaluate := NewFormulas
+	if r.Corrected {
+		evaluate = newSmooth
+	}
+	f, err := evaluate(z)
 	if err != nil {
 		return err
 	}

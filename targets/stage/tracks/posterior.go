@@ -61,8 +61,8 @@ const (
 //     number is not finite or an error negative.
 //
 // Notes:
-//  1. Cells far smaller than the errors are taken together; the answer changes
-//     by less than a hundredth.
+//  1. Cells far smaller than the errors are taken together; a probability changes
+//     by at most 0.03.
 //  2. Stages that no single star passes through, and binaries, have no part in
 //     it: the caller keeps some probability for what is none of these.
 //
@@ -84,7 +84,8 @@ func (g *Grid) Posterior(s Seen) Posterior {
 	if s.Floor {
 		sT, sL = math.Hypot(s.LogTErr, floorT), math.Hypot(s.LogLErr, floorL)
 	}
-	q := query{t: window{s.LogT, sT}, l: window{s.LogL, sL}}
+	v := g.level(sT, sL)
+	q := query{t: window{s.LogT, sharper(sT, cellT, v.foldT)}, l: window{s.LogL, sharper(sL, cellL, v.foldL)}}
 	for k, feH := range g.recipe.FeH {
 		q.node[k] = 1
 		if s.HasFeH {
@@ -92,20 +93,25 @@ func (g *Grid) Posterior(s Seen) Posterior {
 			q.node[k] = math.Exp(-x * x / 2)
 		}
 	}
-	q.add(g.level(sT, sL))
+	q.add(v)
 	return q.answer(g.total)
+}
+
+// sharper takes off an error what cells larger than the finest blur.
+func sharper(sigma, cell float64, fold int) float64 {
+	return math.Sqrt(sigma*sigma - cell*cell*float64(fold*fold-1)/12)
 }
 
 // level picks cells well below the errors in size.
 func (g *Grid) level(sT, sL float64) *level {
 	i := 0
 	switch {
-	case sT > 0.12:
+	case sT > 0.14:
 		i = 4
-	case sT > 0.03:
+	case sT > 0.035:
 		i = 2
 	}
-	if sL > 0.12 {
+	if sL > 0.14 {
 		i++
 	}
 	return &g.levels[i]
