@@ -23,7 +23,7 @@ const (
 )
 
 // Stages lists every stage code in order of evolution.
-var Stages = []Stage{MS, SG, RGB, RC, HB, EAGB, TPAGB, PAGB, Neb, CSPN, SDB, Dwarf, RSG, ACC}
+var Stages = [...]Stage{MS, SG, RGB, RC, HB, EAGB, TPAGB, PAGB, Neb, CSPN, SDB, Dwarf, RSG, ACC}
 
 // Answers that are not one stage.
 const (

@@ -39,31 +39,3 @@ var MillerBertolami2016 = Ref{
 	Title: "New models for the evolution of post-asymptotic giant branch stars and central stars of planetary nebulae",
 	Where: "A&A 588, A25", DOI: "10.1051/0004-6361/201526577",
 }
-
-// JacobEtAl2013 is how long a planetary nebula can be seen.
-var JacobEtAl2013 = Ref{
-	Authors: "Jacob, Schönberner & Steffen", Year: 2013,
-	Title: "The evolution of planetary nebulae. VIII. True expansion rates and visibility times",
-	Where: "A&A 558, A78", DOI: "10.1051/0004-6361/201321532",
-}
-
-// ElsworthEtAl2019 is the stage of red giants from their oscillations.
-var ElsworthEtAl2019 = Ref{
-	Authors: "Elsworth et al.", Year: 2019,
-	Title: "Insights from the APOKASC determination of the evolutionary state of red-giant stars by consolidation of different methods",
-	Where: "MNRAS 489, 4641",
-}
-
-// CasagrandeEtAl2021 is temperature from Gaia and infrared colours.
-var CasagrandeEtAl2021 = Ref{
-	Authors: "Casagrande et al.", Year: 2021,
-	Title: "The GALAH survey: effective temperature calibration from the InfraRed Flux Method in the Gaia system",
-	Where: "MNRAS 507, 2684", DOI: "10.1093/mnras/stab2304",
-}
-
-// AndraeEtAl2018 is the bolometric correction in Gaia's G.
-var AndraeEtAl2018 = Ref{
-	Authors: "Andrae et al.", Year: 2018,
-	Title: "Gaia Data Release 2. First stellar parameters from Apsis",
-	Where: "A&A 616, A8", DOI: "10.1051/0004-6361/201732516",
-}

@@ -46,7 +46,7 @@ var layers = map[string][]string{
 		"astro/..."},
 	"targets/run":     {"targets", "targets/table", "targets/instrument", "astro", "astro/timescale"},
 	"targets/builtin": {"targets", "targets/table"},
-	"targets/roster":  {"targets", "targets/moment", "targets/sweep", "targets/light", "astro/..."},
+	"targets/roster":  {"targets", "targets/moment", "targets/sweep", "targets/light", "targets/stage", "astro/..."},
 	"targets/finding": {"targets", "targets/exposure", "astro/..."},
 	"targets/store":   {},
 	"targets/logbook": {"targets", "targets/store", "targets/table"},

@@ -11,7 +11,6 @@ import (
 	"github.com/spf13/cobra"
 
 	"evenfall/targets/moment"
-	"evenfall/tui/kit"
 )
 
 func listCommand(w world, o *options) *cobra.Command {
@@ -199,7 +198,7 @@ func csvRow(e *jsonTarget, m *moment.Moment) []string {
 	return []string{rank, e.ID, e.Name, e.Kind, num(e.RA), num(e.Dec), num(e.ApparentRA), num(e.ApparentDec),
 		num(e.Az), num(e.Alt), num(e.AltRefracted), num(e.HA), num(e.Parallactic), opt(e.Airmass),
 		fmt.Sprint(e.Rising), num(e.MoonSep), num(e.SunSep), num(e.RVCorrection), num(e.BJD),
-		e.Stage.Best, num(round(kit.StageP(&m.Stage), 4)), e.Expect.Band, opt(e.Expect.Mag), opt(e.Expect.Lo), opt(e.Expect.Hi),
+		e.Stage.Best, num(round(m.Stage.Sureness(), 4)), e.Expect.Band, opt(e.Expect.Mag), opt(e.Expect.Lo), opt(e.Expect.Hi),
 		num(e.Expect.Level), opt(e.Expect.SB), e.EndsBy, window, e.BestUTC, opt(e.BestAirmass),
 		strings.Join(codes, " "), open, strings.Join(e.Unconfirmed, " ")}
 }

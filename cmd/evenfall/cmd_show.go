@@ -3,7 +3,6 @@ package main
 import (
 	"fmt"
 	"io"
-	"sort"
 	"strings"
 	"time"
 
@@ -12,6 +11,7 @@ import (
 	"evenfall/astro"
 	"evenfall/targets"
 	"evenfall/targets/moment"
+	"evenfall/targets/stage"
 	"evenfall/tui/kit"
 )
 
@@ -52,7 +52,10 @@ func runShow(w world, o *options, name string) error {
 	if o.handover {
 		i = 0
 	}
-	v := view{s, &s.targets[i], &s.prepared[i], &s.moments[i]}
+	v := view{s: s, t: &s.targets[i], p: &s.prepared[i], m: &s.moments[i]}
+	if !o.handover {
+		v.study = v.p.Study(s.models)
+	}
 	switch {
 	case o.handover && o.format == "json":
 		err = printJSON(w.out, v.handOverShape())
@@ -82,6 +85,8 @@ type view struct {
 	t *targets.Target
 	p *moment.Prepared
 	m *moment.Moment
+
+	study stage.Study
 }
 
 func (v view) handOver() []string {
@@ -121,6 +126,8 @@ type jsonShow struct {
 	Night         string   `json:"night"`
 	jsonTarget
 	Derived  map[string]jsonDerived `json:"derived"`
+	Notes    []string               `json:"stage_notes,omitempty"`
+	Decide   []string               `json:"stage_decided_by,omitempty"`
 	Events   []jsonEvent            `json:"events"`
 	HandOver []string               `json:"handover"`
 	Listed   []jsonListed           `json:"listed"`
@@ -144,16 +151,6 @@ func (v view) events() []jsonEvent {
 	return out
 }
 
-// jsonDerived is a quantity of the star itself.
-type jsonDerived struct {
-	Value  float64  `json:"value"`
-	Lo     *float64 `json:"lo"`
-	Hi     *float64 `json:"hi"`
-	Level  float64  `json:"level"`
-	Method string   `json:"method"`
-	Source string   `json:"source"`
-}
-
 func (v view) showShape() (jsonShow, error) {
 	listed, err := v.listed()
 	if err != nil {
@@ -162,38 +159,12 @@ func (v view) showShape() (jsonShow, error) {
 	out := jsonShow{
 		Demonstration: v.s.demo, Site: siteShape(v.s.site), At: stamp(v.m.At), Night: v.s.night.Date.String(),
 		jsonTarget: targetShape(v.t, v.p, v.m), HandOver: v.handOver(), Listed: listed, Derived: v.derived(), Events: v.events(),
+		Notes: v.study.Notes, Decide: v.study.Decide,
 	}
-	for _, st := range moment.Steps(&v.s.scene, v.p, v.m) {
+	for _, st := range moment.Steps(&v.s.scene, v.p, v.m, &v.study) {
 		out.Steps = append(out.Steps, jsonStep(st))
 	}
 	return out, nil
-}
-
-// derivedLevel is the probability of intervals of derived quantities.
-const derivedLevel = 0.68
-
-// derived returns what the list itself states of the star, as intervals of one
-// sigma where it gives errors.
-func (v view) derived() map[string]jsonDerived {
-	out := map[string]jsonDerived{}
-	put := func(name, column string, q targets.Measure) {
-		if !q.Known {
-			return
-		}
-		d := jsonDerived{Value: q.Value, Level: derivedLevel, Method: "as listed", Source: v.t.Source}
-		if v.t.IsUnconfirmed(column) {
-			d.Method = "as listed, unconfirmed"
-		}
-		if q.Err > 0 {
-			d.Lo, d.Hi = rounded(q.Value-q.Err, 6), rounded(q.Value+q.Err, 6)
-		}
-		out[name] = d
-	}
-	put("teff_k", "teff_k", v.t.Physics.TeffK)
-	put("logg", "logg", v.t.Physics.LogG)
-	put("feh", "feh", v.t.Physics.FeH)
-	put("dist_pc", "dist_pc", v.t.Physics.DistPc)
-	return out
 }
 
 // text prints the view for people.
@@ -219,12 +190,13 @@ func (v view) text(w io.Writer) error {
 	v.skyText(&b)
 	v.nightText(&b)
 	v.stageText(&b)
+	v.studyText(&b)
 	v.lightText(&b)
 	if err := v.listText(&b); err != nil {
 		return err
 	}
 	b.WriteString("\nworkings\n")
-	for _, st := range moment.Steps(&v.s.scene, v.p, v.m) {
+	for _, st := range moment.Steps(&v.s.scene, v.p, v.m, &v.study) {
 		fmt.Fprintf(&b, "  %s: %s\n    %s\n    from %s\n    source: %s\n", st.What, st.Result, st.Formula, st.Inputs, st.Source)
 	}
 	_, err := io.WriteString(w, b.String())
@@ -272,37 +244,6 @@ func (v view) nightText(b *strings.Builder) {
 	}
 	for _, block := range m.BlockedBy {
 		fmt.Fprintf(b, "  blocked: %s\n", block.Words)
-	}
-}
-
-func (v view) stageText(b *strings.Builder) {
-	st := &v.m.Stage
-	fmt.Fprintf(b, "\nwhat it is: %s\n ", st.Best)
-	type one struct {
-		code targets.Stage
-		p    float64
-	}
-	var list []one
-	for c, p := range st.P {
-		list = append(list, one{c, p})
-	}
-	sort.Slice(list, func(i, j int) bool {
-		if list[i].p != list[j].p {
-			return list[i].p > list[j].p
-		}
-		return list[i].code < list[j].code
-	})
-	for _, e := range list {
-		if e.p >= 0.005 {
-			fmt.Fprintf(b, " %s %.0f %%", e.code, 100*e.p)
-		}
-	}
-	b.WriteString("\n")
-	for _, e := range st.Evidence {
-		fmt.Fprintf(b, "  %+.1f  %s (%s)\n", e.Log10Odds, e.What, e.Source)
-	}
-	if len(st.Evidence) > 0 {
-		b.WriteString("  (log10 of the odds for it; source)\n")
 	}
 }
 

@@ -8,6 +8,7 @@ import (
 	"github.com/spf13/cobra"
 
 	"evenfall/targets/builtin"
+	"evenfall/targets/stage"
 )
 
 func versionCommand(w world) *cobra.Command {
@@ -31,6 +32,7 @@ func versionCommand(w world) *cobra.Command {
 			for _, e := range builtin.Editions() {
 				fmt.Fprintln(w.out, e)
 			}
+			fmt.Fprintln(w.out, stage.Edition)
 			return nil
 		},
 	}

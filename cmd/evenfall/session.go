@@ -143,6 +143,7 @@ type session struct {
 	scene      moment.Scene
 	moments    []moment.Moment
 	order      []int
+	models     moment.Models
 }
 
 // openSession reads everything a call needs and works out every target's
@@ -323,13 +324,13 @@ func (s *session) nightOf(date astro.Date) (*moment.Night, error) {
 // compute prepares the targets and works out each one's moment.
 func (s *session) compute(o *options) {
 	s.scene = moment.NewScene(s.night, s.at)
-	models := moment.NewModels()
+	s.models = moment.NewModels()
 	byTarget, wishes := s.magnitudesByTarget(), s.wishes()
 	n := len(s.targets)
 	s.prepared, s.wants = make([]moment.Prepared, n), make([]moment.Want, n)
 	s.courses, s.moments = make([]moment.Course, n), make([]moment.Moment, n)
 	for i := range s.targets {
-		s.prepared[i] = moment.Prepare(s.targets[i], byTarget[i], models)
+		s.prepared[i] = moment.Prepare(s.targets[i], byTarget[i], s.models)
 		s.wants[i] = s.want(o, wishes, s.night.Date, i, s.targets[i].Kind)
 		s.courses[i] = moment.Tonight(s.night, &s.prepared[i], s.wants[i])
 		s.moments[i] = moment.Of(&s.scene, &s.prepared[i], &s.courses[i], s.wants[i])

@@ -67,6 +67,10 @@ func Prepare(t targets.Target, mags []targets.Magnitude, m Models) Prepared {
 	return p
 }
 
+// Study works out what a target is made of, with the models that it was
+// prepared with.
+func (p *Prepared) Study(m Models) stage.Study { return m.Stage.Study(p.Target, &p.Verdict) }
+
 // StarOf turns a listed place into one that can be computed with.
 func StarOf(t *targets.Target) frame.Star {
 	return frame.NewStar(frame.Catalogue{

@@ -145,10 +145,12 @@ func TestHandOver(t *testing.T) {
 func TestSteps(t *testing.T) {
 	n, stars := testNight(t, targets.DefaultLimits()), testStars(t)
 	s := NewScene(n, testInstant(t, "2026-12-02T04:00:00Z"))
+	models := NewModels()
 	for i := range stars {
 		c := Tonight(n, &stars[i], Want{})
 		m := Of(&s, &stars[i], &c, Want{})
-		for _, st := range Steps(&s, &stars[i], &m) {
+		study := stars[i].Study(models)
+		for _, st := range Steps(&s, &stars[i], &m, &study) {
 			if st.What == "" || st.Formula == "" || st.Inputs == "" || st.Result == "" || st.Source == "" {
 				t.Errorf("%s: a step lacks a part: %+v", stars[i].Target.Name, st)
 			}

@@ -4,6 +4,7 @@ import (
 	"fmt"
 
 	"evenfall/astro/cite"
+	"evenfall/targets/stage"
 )
 
 // Step is one figure with its working: what it is, the formula, what went in,
@@ -11,11 +12,12 @@ import (
 type Step struct{ What, Formula, Inputs, Result, Source string }
 
 // Steps returns the workings of a moment's figures, in the order in which one
-// leads to the next.
+// leads to the next; those of the study of what the target is come before its
+// brightness.
 //
 // Checked: TestSteps: each has all five parts, and the results are those of
 // the moment.
-func Steps(s *Scene, p *Prepared, m *Moment) []Step {
+func Steps(s *Scene, p *Prepared, m *Moment, st *stage.Study) []Step {
 	pl := &p.Target.Place
 	steps := []Step{
 		{"position brought to the moment", "u + (T - T0) (mu + rv plx u), made a unit vector",
@@ -55,8 +57,11 @@ func Steps(s *Scene, p *Prepared, m *Moment) []Step {
 			fmt.Sprintf("topocentric Moon az %.2f alt %+.2f deg", s.Moon.Place.Az.Deg(), s.Moon.Place.Alt.Deg()),
 			fmt.Sprintf("%.3f deg", m.MoonSep.Deg()), cite.Meeus1998.String()},
 	)
-	for _, st := range m.Expect.Steps {
-		steps = append(steps, Step(st))
+	for _, x := range st.Steps {
+		steps = append(steps, Step(x))
+	}
+	for _, x := range m.Expect.Steps {
+		steps = append(steps, Step(x))
 	}
 	return steps
 }

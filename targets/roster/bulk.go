@@ -249,13 +249,14 @@ func (r *Roster) quickPasses(ask *Ask, s *Snapshot, i int) bool {
 		m.Left = timeOf(q.hours)
 	}
 	for _, c := range f.conds {
+		if c.column == "stage" || c.column == "p" || stageNamed(c.column) != "" {
+			m.Stage = r.Judged(i).verdict()
+		}
 		switch c.column {
 		case "sun", "ha", "ra", "dec":
 			m.Place = s.Scene.Frame.Horizontal(&r.stars[i])
 			m.RA, m.Dec = m.Place.ICRS.LonLat()
 			m.SunSep = astro.Separation(m.Place.Dir, s.Scene.Sun.Dir)
-		case "stage":
-			m.Stage.Best = r.Stage(i)
 		case "mag":
 			if v := r.listed(int32(i)); !math.IsInf(v, 1) {
 				m.Expect = light.Forecast{Known: true, Mag: astro.Mags(v)}

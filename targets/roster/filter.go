@@ -30,7 +30,7 @@ var operators = []string{">=", "<=", "!=", ">", "<", "="}
 var textColumns = []string{"kind", "stage", "ends", "mark"}
 
 // numberColumns are figures of the moment; bands of magnitudes come on top.
-var numberColumns = []string{"alt", "x", "moon", "sun", "ha", "ra", "dec", "mag", "sb", "left", "best", "bestx", "period"}
+var numberColumns = []string{"alt", "x", "moon", "sun", "ha", "ra", "dec", "mag", "sb", "left", "best", "bestx", "period", "p"}
 
 // ParseFilter reads a line such as
 //
@@ -43,7 +43,9 @@ var numberColumns = []string{"alt", "x", "moon", "sun", "ha", "ra", "dec", "mag"
 //  1. Figures: alt deg, x airmass, moon and sun deg, ha h, ra and dec deg, mag
 //     expected, sb mag/arcsec2, left min, best UTC hour, bestx airmass then,
 //     period d; mark=yes the marked; a band of
-//     magnitudes means the expected one in it, nebulae answer with sb.
+//     magnitudes means the expected one in it, nebulae answer with sb; p the
+//     probability of the likeliest stage, and the code of a stage, such as
+//     RGB, its own, 0 to 1.
 func ParseFilter(line string) (Filter, error) {
 	var f Filter
 	for _, word := range strings.Fields(line) {
@@ -63,17 +65,19 @@ func ParseFilter(line string) (Filter, error) {
 				return Filter{}, fmt.Errorf("%s: %s is compared with = or !=", word, low)
 			}
 			c.column = low
-		case slices.Contains(numberColumns, low) && !isBand(column), isBand(column):
+		case slices.Contains(numberColumns, low) && !isBand(column), isBand(column), stageNamed(column) != "":
 			v, err := strconv.ParseFloat(text, 64)
 			if err != nil {
 				return Filter{}, fmt.Errorf("%s: write a number after %s", word, op)
 			}
 			c.value = v
-			if !isBand(column) {
+			if code := stageNamed(column); code != "" {
+				c.column = string(code)
+			} else if !isBand(column) {
 				c.column = low
 			}
 		default:
-			return Filter{}, fmt.Errorf("%s: no column %s; there are %s, and bands such as V", word, column,
+			return Filter{}, fmt.Errorf("%s: no column %s; there are %s, bands such as V and stages such as WD", word, column,
 				strings.Join(append(slices.Clone(textColumns), numberColumns...), " "))
 		}
 		f.conds = append(f.conds, c)
@@ -180,6 +184,8 @@ func (c *condition) figure(t *targets.Target, m *moment.Moment) (float64, bool) 
 		return float64(t.Hour()) + float64(t.Minute())/60, true
 	case "bestx":
 		return float64(m.Course.BestAirmass), m.Course.Best != nil
+	case "p":
+		return m.Stage.Sureness(), true
 	case "period":
 		return t.Var.PeriodD.Value, t.Var.PeriodD.Known
 	case "mag":
@@ -189,6 +195,9 @@ func (c *condition) figure(t *targets.Target, m *moment.Moment) (float64, bool) 
 			return 0, false
 		}
 		return m.Expect.SB.Value.MagArcsec2(), true
+	}
+	if code := targets.Stage(c.column); stageNamed(c.column) == code {
+		return m.Stage.P[code], true
 	}
 	if m.Expect.SB != nil {
 		return m.Expect.SB.Value.MagArcsec2(), true

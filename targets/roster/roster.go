@@ -44,7 +44,7 @@ type Roster struct {
 
 	mu       sync.Mutex
 	prepared []*moment.Prepared
-	best     []string                   // likeliest stages of long lists, judged when asked for
+	judged   []*Judged                  // stages of long lists, judged when asked for
 	nights   map[*moment.Night]*nightly // a night made anew, for other conditions, is another one
 }
 
@@ -69,7 +69,7 @@ func New(entries []Entry, models moment.Models, wants Wants) *Roster {
 	r := &Roster{entries: entries, models: models, wants: wants, nights: map[*moment.Night]*nightly{}}
 	r.stars = make([]frame.Star, len(entries))
 	r.search = make([]string, len(entries))
-	r.prepared, r.best = make([]*moment.Prepared, len(entries)), make([]string, len(entries))
+	r.prepared, r.judged = make([]*moment.Prepared, len(entries)), make([]*Judged, len(entries))
 	order := make([]int32, len(entries))
 	for i := range entries {
 		t := &entries[i].Target
@@ -144,25 +144,6 @@ func (r *Roster) night(n *moment.Night) *nightly {
 
 // Want returns what a target is wanted with in a night.
 func (r *Roster) Want(n *moment.Night, i int) moment.Want { return r.wants(n, i, &r.entries[i]) }
-
-// Stage returns the likeliest stage of a target, without keeping all that its
-// judgement holds.
-func (r *Roster) Stage(i int) string {
-	r.mu.Lock()
-	known, p := r.best[i], r.prepared[i]
-	r.mu.Unlock()
-	switch {
-	case known != "":
-		return known
-	case p != nil:
-		return p.Verdict.Best
-	}
-	v := r.models.Stage.Judge(r.entries[i].Target)
-	r.mu.Lock()
-	defer r.mu.Unlock()
-	r.best[i] = v.Best
-	return v.Best
-}
 
 // Course returns a target's night, worked out when first asked for.
 func (r *Roster) Course(n *moment.Night, i int) *moment.Course {

@@ -1,22 +1,19 @@
 // Package stage judges at what stage of its life a star is, as probabilities
-// over the stage codes with the evidence for them. What is here is the
-// judgement for poor data: kind, variability type, spectral type, and where
-// the star stands among the well-known loci of the diagram. It corrects no
-// parallax and knows no tracks; it fills in nothing that a list lacks.
+// over the stage codes with the evidence for them, and works out what it is
+// made of: distance, temperature, luminosity, radius, mass, age. Parallax and
+// colours place a star on the diagram; tracks say who lives there, measured
+// loci sort the clump from the giant branch, the list's own words weigh in, and
+// a place that contradicts them widens the answer. It fills in nothing that a
+// list lacks, and reads no file and no clock.
 package stage
 
 import (
+	"cmp"
 	"math"
-	"sort"
+	"slices"
 
 	"evenfall/targets"
 )
-
-// Models is what judging draws on; later the grid of tracks lives here.
-type Models struct{ floor float64 }
-
-// NewModels makes the models.
-func NewModels() *Models { return &Models{floor: 1e-5} }
 
 // Threshold is the probability that makes a stage the answer.
 const Threshold = 0.6
@@ -38,6 +35,8 @@ type factor struct {
 	what, source string
 	weight       map[targets.Stage]float64
 	rest         float64
+	prior        bool // it says how many there are of each stage, too
+	luminous     bool // it is of luminous giants
 }
 
 func (f *factor) of(s targets.Stage) float64 {
@@ -49,14 +48,15 @@ func (f *factor) of(s targets.Stage) float64 {
 
 // Judge weighs everything that a list says of a target.
 //
-//	p(stage) ~ product over the evidence of its likelihood in the stage
+//	p(stage) ~ how many there are x product over the evidence of its likelihood in the stage
 //
 // Given:
 //   - t: any of its data may be missing or absurd.
 //
 // Returns:
 //   - probabilities that sum to 1 within 1e-12, the evidence with its log10
-//     odds for the likeliest stage against the rest, and what is missing.
+//     odds for the likeliest stage against the rest, what is missing, and the
+//     place on the diagram.
 //
 // Notes:
 //  1. Contradictory evidence widens the probabilities, and a line names the
@@ -64,37 +64,41 @@ func (f *factor) of(s targets.Stage) float64 {
 //
 // Source: methods cited in each line of evidence.
 //
-// Checked: TestJudgeShares, TestJudgeBuiltin, FuzzJudge.
+// Checked: TestJudgeShares, TestJudgeBuiltin, TestKeplerGiants, FuzzJudge.
 func (m *Models) Judge(t targets.Target) Verdict {
-	var v Verdict
-	factors := listed(&t)
-	star := lookUp(&t)
-	v.Missing = star.missing
-	byList := m.combine(factors)
-	if f, ok := star.factor(); ok {
-		byPlace := m.combine([]factor{f})
-		if clash := contradiction(byList, byPlace, star); clash != nil {
-			factors = append(factors, f)
-			v.P = average(m.combine(factors), byList, byPlace)
+	s := m.sight(&t, false)
+	words := listed(&t, s)
+	place := m.placed(&t, s, words)
+	v := Verdict{Missing: s.missing, Place: s.place}
+	all := append(slices.Clone(words), place...)
+	byWords := m.combine(words)
+	if len(place) > 0 {
+		byPlace := m.combine(withoutPriors(place))
+		if clash := contradiction(byWords, byPlace, s); clash != nil {
+			v.P = average(m.combine(all), byWords, byPlace)
 			v.Evidence = append(v.Evidence, *clash)
-		} else {
-			factors = append(factors, f)
 		}
 	}
 	if v.P == nil {
-		v.P = m.combine(factors)
+		v.P = m.combine(all)
 	}
 	top := likeliest(v.P)
 	v.Best = answer(v.P, top)
-	for i := range factors {
-		if e, ok := m.weigh(factors, i, top); ok {
+	for i := range all {
+		if e, ok := m.weigh(all, i, top); ok {
 			v.Evidence = append(v.Evidence, e)
 		}
 	}
-	sort.SliceStable(v.Evidence, func(a, b int) bool {
-		return math.Abs(v.Evidence[a].Log10Odds) > math.Abs(v.Evidence[b].Log10Odds)
+	slices.SortStableFunc(v.Evidence, func(a, b targets.Evidence) int {
+		return cmp.Compare(math.Abs(b.Log10Odds), math.Abs(a.Log10Odds))
 	})
+	m.weighMass(&v, s, s.post, top)
 	return v
+}
+
+// withoutPriors leaves out what says how many there are of each stage.
+func withoutPriors(list []factor) []factor {
+	return slices.DeleteFunc(slices.Clone(list), func(f factor) bool { return f.prior })
 }
 
 // combine multiplies the factors and makes the result sum to 1.
@@ -148,13 +152,17 @@ func likeliest(p map[targets.Stage]float64) targets.Stage {
 // answer names the judgement.
 func answer(p map[targets.Stage]float64, top targets.Stage) string {
 	switch {
-	case p[top] >= Threshold:
+	case reaches(p[top]):
 		return string(top)
-	case p[targets.RGB]+p[targets.EAGB] >= Threshold:
+	case reaches(p[targets.RGB] + p[targets.EAGB]):
 		return targets.Merged
 	}
 	return targets.Undecided
 }
+
+// reaches tells whether a probability is the threshold or more, to the
+// thousandth that anybody reads.
+func reaches(p float64) bool { return math.Round(1000*p) >= 1000*Threshold }
 
 // weigh returns how strongly one factor speaks for a stage against the rest,
 // given all the others.
@@ -173,4 +181,17 @@ func (m *Models) weigh(factors []factor, i int, top targets.Stage) (targets.Evid
 	}
 	odds := math.Log10(math.Max(factors[i].of(top), 1e-12) / (num / den))
 	return targets.Evidence{What: factors[i].what, Log10Odds: math.Max(-9, math.Min(9, odds)), Source: factors[i].source}, true
+}
+
+// Sureness returns the probability of the answer given, 0 to 1: of both stages
+// where two are merged, of the likeliest where it is undecided.
+func (v *Verdict) Sureness() float64 {
+	if v.Best == targets.Merged {
+		return v.P[targets.RGB] + v.P[targets.EAGB]
+	}
+	most := 0.0
+	for _, p := range v.P {
+		most = math.Max(most, p)
+	}
+	return most
 }

@@ -3,7 +3,6 @@ package stage
 import (
 	"fmt"
 	"math"
-	"slices"
 
 	"evenfall/astro/cite"
 	"evenfall/targets"
@@ -11,88 +10,12 @@ import (
 
 // Extinction for true E(B-V).
 //
-// Source: [cite.CasagrandeVandenBerg2018] for Gaia; 3.1 in V by convention;
-// K from the infrared law of [cite.CardelliEtAl1989].
+// Source: 3.1 in V by convention; K from the infrared law of
+// [cite.CardelliEtAl1989].
 const (
 	extinctionV = 3.1
-	extinctionG = 2.740
 	extinctionK = 0.353
-	reddenBPRP  = 1.339
 )
-
-// enough is how many times its error a parallax must be to say how bright a
-// star is; below, the distance is anyone's guess without a prior.
-const enough = 5
-
-// star is where a target stands on the diagram, as far as its list tells.
-type star struct {
-	band    targets.Band // K, G or V
-	abs, sd float64      // absolute magnitude there and its error
-	bprp    float64      // dereddened BP-RP
-	colour  bool
-	known   bool
-	missing []string
-}
-
-// lookUp places a target on the diagram.
-func lookUp(t *targets.Target) star {
-	var s star
-	if t.Kind == targets.Interacting {
-		return s // the light may be the companion's, or the disc's
-	}
-	plx := t.Place.Plx
-	switch {
-	case !finite(plx):
-		s.missing = append(s.missing, "no parallax: how luminous it is says nothing about the stage")
-		return s
-	case plx.Value <= 0:
-		s.missing = append(s.missing, "parallax not positive: no luminosity from it")
-		return s
-	case plx.Err <= 0:
-		s.missing = append(s.missing, "no error of the parallax: 2 % assumed")
-		plx.Err = 0.02 * plx.Value
-	case plx.Value < enough*plx.Err:
-		s.missing = append(s.missing, fmt.Sprintf("parallax only %.1f times its error: no luminosity from it", plx.Value/plx.Err))
-		return s
-	}
-	ebv := excess(t)
-	for _, b := range []struct {
-		band targets.Band
-		a    float64
-	}{{"K", extinctionK}, {"G", extinctionG}, {"V", extinctionV}} {
-		m := t.Mags[b.band]
-		if !finite(m) {
-			continue
-		}
-		s.band, s.known = b.band, true
-		s.abs = m.Value + 5*math.Log10(plx.Value) - 10 - b.a*ebv
-		s.sd = math.Hypot(2.17*plx.Err/plx.Value, math.Max(m.Err, 0.05))
-		break
-	}
-	if !s.known {
-		s.missing = append(s.missing, "no magnitude in K, G or V: no luminosity")
-	}
-	if bp, rp := t.Mags["BP"], t.Mags["RP"]; finite(bp) && finite(rp) {
-		s.bprp, s.colour = bp.Value-rp.Value-reddenBPRP*ebv, true
-	}
-	return s
-}
-
-// finite tells whether a measure is a number of ordinary size.
-func finite(m targets.Measure) bool {
-	return m.Known && math.Abs(m.Value) < 1e6 && !(math.Abs(m.Err) >= 1e6) && !math.IsNaN(m.Err)
-}
-
-// excess returns the colour excess that the list gives, 0 where it gives none.
-func excess(t *targets.Target) float64 {
-	switch p := &t.Physics; {
-	case finite(p.EBV):
-		return math.Max(p.EBV.Value, 0)
-	case finite(p.AV):
-		return math.Max(p.AV.Value, 0) / extinctionV
-	}
-	return 0
-}
 
 // locus is where stars of a stage stand in one band: a level with a spread.
 type locus struct {
@@ -122,48 +45,58 @@ var loci = map[targets.Band][]locus{
 	},
 }
 
-// factor returns what the place on the diagram says.
-func (s *star) factor() (factor, bool) {
-	if !s.known {
-		return factor{}, false
-	}
-	f := factor{weight: shares{}, rest: 1e-4, source: cite.HawkinsEtAl2017.String() + " for the clump; other loci common practice, no source"}
-	f.what = fmt.Sprintf("absolute magnitude M_%s = %.2f +- %.2f", s.band, s.abs, s.sd)
-	whiteDwarf := s.colour && s.band == "G" && s.bprp < 1.7 && s.abs > 9.5+2.9*s.bprp
-	most := 0.0
-	for _, l := range loci[s.band] {
-		sd := math.Hypot(l.sigma, s.sd)
-		d := (s.abs - l.mean) / sd
-		w := math.Exp(-d*d/2) / sd
-		if whiteDwarf && !slices.Contains([]targets.Stage{targets.Dwarf, targets.ACC, targets.CSPN}, l.stage) {
-			w *= 0.01
+// locus returns what the absolute magnitude alone says, in K, G or V; for a
+// star without a temperature.
+func (s *sight) locus() (factor, bool) {
+	for _, band := range []targets.Band{"K", "G", "V"} {
+		m, ok := s.abs[band]
+		if !ok || s.farErr > farthestErr {
+			continue
 		}
-		f.weight[l.stage] = math.Max(w, 1e-5)
-		most = math.Max(most, f.weight[l.stage])
+		f := factor{weight: shares{}, rest: 1e-4, source: cite.HawkinsEtAl2017.String() + " for the clump; other loci common practice, no source",
+			what: fmt.Sprintf("absolute magnitude M_%s = %.2f +- %.2f", band, m.Value, m.Err)}
+		most := 0.0
+		for _, l := range loci[band] {
+			sd := math.Hypot(l.sigma, math.Max(m.Err, 0.05))
+			d := (m.Value - l.mean) / sd
+			f.weight[l.stage] = math.Max(math.Exp(-d*d/2)/sd, 1e-5)
+			most = math.Max(most, f.weight[l.stage])
+		}
+		for k := range f.weight {
+			f.weight[k] /= most
+		}
+		return f, true
 	}
-	for k := range f.weight {
-		f.weight[k] /= most
-	}
-	if whiteDwarf {
-		f.what += fmt.Sprintf(" at BP-RP = %.2f: below the main sequence", s.bprp)
-	}
-	return f, true
+	return factor{}, false
 }
 
 // contradiction names two ways of knowing that exclude each other: all that
-// the list calls the target against its brightness at its distance.
-func contradiction(byList, byPlace map[targets.Stage]float64, s star) *targets.Evidence {
+// the list calls the target against its place on the diagram.
+func contradiction(byWords, byPlace map[targets.Stage]float64, s *sight) *targets.Evidence {
 	overlap := 0.0
 	for _, code := range targets.Stages {
-		overlap += math.Min(byList[code], byPlace[code])
+		overlap += math.Min(byWords[code], byPlace[code])
 	}
 	const hardly = 0.03
 	if overlap > hardly {
 		return nil
 	}
 	return &targets.Evidence{
-		What: fmt.Sprintf("contradiction: the list says %s, but M_%s = %.1f says %s; identification, parallax or magnitude may be wrong",
-			likeliest(byList), s.band, s.abs, likeliest(byPlace)),
+		What: fmt.Sprintf("contradiction: the list's words say %s, but %s says %s; identification, parallax or magnitude may be wrong",
+			likeliest(byWords), s.placeWords(), likeliest(byPlace)),
 		Source: "the list's own values",
 	}
+}
+
+// placeWords says where the target stands.
+func (s *sight) placeWords() string {
+	if s.place.HROK {
+		return fmt.Sprintf("%.0f K at log L = %.2f", s.teff.Value, s.logL.Value)
+	}
+	for _, band := range []targets.Band{"K", "G", "V"} {
+		if m, ok := s.abs[band]; ok {
+			return fmt.Sprintf("M_%s = %.1f", band, m.Value)
+		}
+	}
+	return "its place"
 }

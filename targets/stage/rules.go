@@ -2,10 +2,10 @@ package stage
 
 import (
 	"fmt"
+	"math"
 	"regexp"
 	"strings"
 
-	"evenfall/astro/cite"
 	"evenfall/targets"
 )
 
@@ -17,23 +17,22 @@ const (
 
 type shares = map[targets.Stage]float64
 
-// kindShares are the shares of the stages among what lists call by a kind.
-// Giants: shares of time spent above 10 Lsun and below 5500 K (red-giant
-// branch 45 %, core helium burning 53 %, early AGB 1.6 %, thermal pulses
-// 0.4 %), with a share for the subgiants and the supergiants that lists mix in.
-var kindShares = map[targets.Kind]struct {
-	shares shares
-	source string
-}{
-	targets.Giant: {shares{targets.SG: 0.06, targets.RGB: 0.42, targets.RC: 0.44, targets.EAGB: 0.04, targets.TPAGB: 0.02,
-		targets.HB: 0.005, targets.PAGB: 0.004, targets.RSG: 0.006, targets.MS: 0.005}, ""},
-	targets.LPV: {shares{targets.TPAGB: 0.80, targets.EAGB: 0.09, targets.RGB: 0.09, targets.RSG: 0.01, targets.PAGB: 0.01, targets.ACC: 0.003}, practice},
-	targets.PostAGB: {shares{targets.PAGB: 0.92, targets.TPAGB: 0.03, targets.CSPN: 0.02, targets.RSG: 0.02, targets.HB: 0.01},
-		practice},
-	targets.PN:          {shares{targets.Neb: 0.96, targets.CSPN: 0.02, targets.ACC: 0.01, targets.PAGB: 0.01}, practice},
-	targets.WD:          {shares{targets.Dwarf: 0.96, targets.SDB: 0.02, targets.ACC: 0.01, targets.CSPN: 0.005, targets.MS: 0.005}, practice},
-	targets.Interacting: {shares{targets.ACC: 0.90, targets.Dwarf: 0.07, targets.SDB: 0.01, targets.MS: 0.01, targets.RGB: 0.01}, practice},
+// kindShares are the shares of the stages among what lists call by a kind that
+// stands for one or few stages.
+var kindShares = map[targets.Kind]shares{
+	targets.PostAGB:     {targets.PAGB: 0.92, targets.TPAGB: 0.03, targets.CSPN: 0.02, targets.RSG: 0.02, targets.HB: 0.01},
+	targets.PN:          {targets.Neb: 0.96, targets.CSPN: 0.02, targets.ACC: 0.01, targets.PAGB: 0.01},
+	targets.WD:          {targets.Dwarf: 0.96, targets.SDB: 0.02, targets.ACC: 0.01, targets.CSPN: 0.005, targets.MS: 0.005},
+	targets.Interacting: {targets.ACC: 0.90, targets.Dwarf: 0.07, targets.SDB: 0.01, targets.MS: 0.01, targets.RGB: 0.01},
 }
+
+// lpvKind is what being called a long-period variable says.
+var lpvKind = amongLuminous(shares{targets.TPAGB: 0.80, targets.EAGB: 0.09, targets.RGB: 0.09, targets.RSG: 0.01, targets.PAGB: 0.001})
+
+// giantKind is what being called a giant says of the stage: which stages lists
+// call so, not how many of each there are.
+var giantKind = shares{targets.RGB: 1, targets.RC: 1, targets.EAGB: 1, targets.TPAGB: 1, targets.SG: 0.3, targets.HB: 0.3,
+	targets.RSG: 0.5, targets.PAGB: 0.1, targets.MS: 0.01}
 
 // rule is evidence that a pattern in a text gives.
 type rule struct {
@@ -42,6 +41,35 @@ type rule struct {
 	weight  shares
 	rest    float64
 	source  string
+	says    saying
+}
+
+// saying is what the weights of a rule are.
+type saying int
+
+const (
+	likelihood saying = iota // how often stars of each stage look so
+	ofLuminous               // the same, from shares among luminous giants: see [amongLuminous]
+	selects                  // shares of the stages among stars so called: a prior of its own
+)
+
+// luminousShares are the shares of time near the tip of the giant branch, where
+// the giants are that vary much.
+var luminousShares = shares{targets.RGB: 0.80, targets.EAGB: 0.13, targets.TPAGB: 0.06, targets.RSG: 0.01, targets.PAGB: 0.002}
+
+// amongLuminous turns shares among such giants into likelihoods, so that the
+// place on the diagram can bring in how many there are.
+func amongLuminous(of shares) shares {
+	out := shares{}
+	most := 0.0
+	for s, p := range of {
+		out[s] = p / math.Max(luminousShares[s], 0.002)
+		most = math.Max(most, out[s])
+	}
+	for s := range out {
+		out[s] /= most
+	}
+	return out
 }
 
 func match(p string) *regexp.Regexp { return regexp.MustCompile(p) }
@@ -50,77 +78,89 @@ func match(p string) *regexp.Regexp { return regexp.MustCompile(p) }
 // counts. Semiregulars are split by period in [variabilityOf].
 var variability = []rule{
 	{match(`ZAND|\bN[ABCRL]?(\b|:|\+)|^UG|\bNL|^AM(/|$)|XM|XP|^CV|WD PULSAR`), "variable of type %s: accretes from, or lives beside, a companion",
-		shares{targets.ACC: 1}, 0.02, practice},
+		shares{targets.ACC: 1}, 0.02, practice, selects},
 	{match(`^EA?/(D|WD)`), "eclipsing binary with a white dwarf, type %s: detached, not accreting",
-		shares{targets.Dwarf: 1, targets.ACC: 0.02}, 0.005, practice},
-	{match(`^M(\b|:|\+)`), "Mira, type %s", shares{targets.TPAGB: 0.97, targets.EAGB: 0.01, targets.RSG: 0.01, targets.PAGB: 0.005}, 0.001, practice},
-	{match(`^(SRC|LC)(?:$|[^:])`), "supergiant variable, type %s", shares{targets.RSG: 0.85, targets.TPAGB: 0.08, targets.EAGB: 0.07}, 0.01, practice},
-	{match(`^SRD`), "yellow semiregular, type %s", shares{targets.PAGB: 0.4, targets.RGB: 0.2, targets.EAGB: 0.2, targets.RC: 0.1, targets.HB: 0.1}, 0.02, practice},
-	{match(`^(L|LB|LC:)(\b|:|$)`), "slow irregular variable, type %s", shares{targets.TPAGB: 0.4, targets.EAGB: 0.3, targets.RGB: 0.3}, 0.01, practice},
-	{match(`^RV`), "RV Tauri star, type %s", shares{targets.PAGB: 1}, 0.03, practice},
+		shares{targets.Dwarf: 1, targets.ACC: 0.02}, 0.005, practice, selects},
+	{match(`^M(\b|:|\+)`), "Mira, type %s", amongLuminous(shares{targets.TPAGB: 0.97, targets.EAGB: 0.01, targets.RSG: 0.01, targets.PAGB: 0.0003}), 0.0001, practice, ofLuminous},
+	{match(`^(SRC|LC)(?:$|[^:])`), "supergiant variable, type %s", shares{targets.RSG: 0.85, targets.TPAGB: 0.08, targets.EAGB: 0.07}, 0.01, practice, selects},
+	{match(`^SRD`), "yellow semiregular, type %s", shares{targets.PAGB: 0.4, targets.RGB: 0.2, targets.EAGB: 0.2, targets.RC: 0.1, targets.HB: 0.1}, 0.02, practice, selects},
+	{match(`^(L|LB|LC:)(\b|:|$)`), "slow irregular variable, type %s", amongLuminous(shares{targets.TPAGB: 0.4, targets.EAGB: 0.3, targets.RGB: 0.3}), 0.001, practice, ofLuminous},
+	{match(`^RV`), "RV Tauri star, type %s", shares{targets.PAGB: 1}, 0.03, practice, selects},
 	{match(`^RCB`), "R Coronae Borealis star, type %s: hydrogen gone, after the AGB or after a merger",
-		shares{targets.PAGB: 1, targets.TPAGB: 0.1}, 0.01, practice},
-	{match(`^RR`), "RR Lyrae star, type %s", shares{targets.HB: 1}, 0.002, practice},
-	{match(`^ZZ|^V777|^GWVIR`), "pulsating white dwarf, type %s", shares{targets.Dwarf: 1, targets.ACC: 0.3, targets.CSPN: 0.02}, 0.01, practice},
-	{match(`^RPHS|^V361HYA|^V1093HER`), "pulsating hot subdwarf, type %s", shares{targets.SDB: 1}, 0.01, practice},
+		shares{targets.PAGB: 1, targets.TPAGB: 0.1}, 0.01, practice, selects},
+	{match(`^RR`), "RR Lyrae star, type %s", shares{targets.HB: 1}, 0.002, practice, selects},
+	{match(`^ZZ|^V777|^GWVIR`), "pulsating white dwarf, type %s", shares{targets.Dwarf: 1, targets.ACC: 0.3, targets.CSPN: 0.02}, 0.01, practice, selects},
+	{match(`^RPHS|^V361HYA|^V1093HER`), "pulsating hot subdwarf, type %s", shares{targets.SDB: 1}, 0.01, practice, selects},
 }
 
 // spectra lists what the spectral type says; the first that fits counts.
 var spectra = []rule{
-	{match(`^sd[OB]`), "hot subdwarf spectrum %s", shares{targets.SDB: 1}, 0.02, practice},
-	{match(`^sdA|^.*HB`), "spectrum %s of the blue horizontal branch", shares{targets.HB: 1}, 0.05, practice},
-	{match(`^D[ABCOQZX]`), "white dwarf spectrum %s", shares{targets.Dwarf: 1, targets.ACC: 0.4, targets.CSPN: 0.1}, 0.01, practice},
-	{match(`^\[?W[CO]|^Of?\(`), "spectrum %s of a central star", shares{targets.CSPN: 1, targets.Neb: 1, targets.Dwarf: 0.2}, 0.05, practice},
-	{match(`^(C|N)[-\d,]|^C$|^C-[NJ]`), "carbon star, spectrum %s", shares{targets.TPAGB: 1, targets.PAGB: 0.1}, 0.01, practice},
+	{match(`^sd[OB]`), "hot subdwarf spectrum %s", shares{targets.SDB: 1}, 0.02, practice, selects},
+	{match(`^sdA|^.*HB`), "spectrum %s of the blue horizontal branch", shares{targets.HB: 1}, 0.05, practice, selects},
+	{match(`^D[ABCOQZX]`), "white dwarf spectrum %s", shares{targets.Dwarf: 1, targets.ACC: 0.4, targets.CSPN: 0.1}, 0.01, practice, selects},
+	{match(`^\[?W[CO]|^Of?\(`), "spectrum %s of a central star", shares{targets.CSPN: 1, targets.Neb: 1, targets.Dwarf: 0.2}, 0.05, practice, selects},
+	{match(`^(C|N)[-\d,]|^C$|^C-[NJ]`), "carbon star, spectrum %s", shares{targets.TPAGB: 1, targets.PAGB: 0.1}, 0.005, practice, ofLuminous},
 	{match(`^S[\d-]|^M\d*S|^MS|^S$`), "S star, spectrum %s: third dredge-up, or mass from a companion that had it",
-		shares{targets.TPAGB: 1}, 0.02, practice},
+		shares{targets.TPAGB: 1}, 0.01, practice, ofLuminous},
 	{match(`^[FGKAB][\d.]*.*I(a|b|ab|I)?[^IV]*:Ba|Ba\d`), "barium star, spectrum %s: polluted by a companion that is a white dwarf now",
-		shares{targets.RGB: 1, targets.RC: 1, targets.EAGB: 0.6}, 0.1, practice},
-	{match(`^[KM][^I]*I(a|ab|b)`), "supergiant class, spectrum %s", shares{targets.RSG: 1, targets.TPAGB: 0.1, targets.PAGB: 0.1}, 0.01, practice},
-	{match(`^[BAFG][^I]*I(a|ab|b|\b)`), "high luminosity at an early type, spectrum %s", shares{targets.PAGB: 1, targets.RSG: 0.3}, 0.03, practice},
-	{match(`^[FGK][\d.+-]*III-IV`), "between giant and subgiant, spectrum %s", shares{targets.SG: 1, targets.RGB: 1, targets.RC: 0.4}, 0.1, practice},
-	{match(`^[FGK][\d.+-]*IV`), "subgiant class, spectrum %s", shares{targets.SG: 1, targets.MS: 0.1, targets.RGB: 0.05, targets.RC: 0.02}, 0.01, practice},
-	{match(`^[FGKM][\d.+-]*V`), "dwarf class, spectrum %s", shares{targets.MS: 1, targets.SG: 0.5, targets.ACC: 0.2}, 0.02, practice},
-	{match(`^M([5-9]|10)`), "late M giant, spectrum %s", shares{targets.TPAGB: 1, targets.EAGB: 0.4, targets.RGB: 0.15, targets.RSG: 0.1, targets.ACC: 0.3}, 0.005, practice},
-	{match(`^M`), "M giant, spectrum %s: above the clump", shares{targets.RGB: 1, targets.EAGB: 1, targets.TPAGB: 0.15, targets.RSG: 0.2, targets.ACC: 0.2}, 0.005, practice},
-	{match(`^[GK].*III`), "giant class, spectrum %s", shares{targets.RGB: 1, targets.RC: 1, targets.EAGB: 0.6, targets.SG: 0.1, targets.TPAGB: 0.01}, 0.01, practice},
+		shares{targets.RGB: 1, targets.RC: 1, targets.EAGB: 0.6}, 0.1, practice, likelihood},
+	{match(`^[KM][^I]*I(a|ab|b)`), "supergiant class, spectrum %s", shares{targets.RSG: 1, targets.TPAGB: 0.1, targets.PAGB: 0.1}, 0.01, practice, selects},
+	{match(`^[BAFG][^I]*I(a|ab|b|\b)`), "high luminosity at an early type, spectrum %s", shares{targets.PAGB: 1, targets.RSG: 0.3}, 0.03, practice, selects},
+	{match(`^[FGK][\d.+-]*III-IV`), "between giant and subgiant, spectrum %s", shares{targets.SG: 1, targets.RGB: 1, targets.RC: 0.4}, 0.1, practice, likelihood},
+	{match(`^[FGK][\d.+-]*IV`), "subgiant class, spectrum %s", shares{targets.SG: 1, targets.MS: 0.1, targets.RGB: 0.05, targets.RC: 0.02}, 0.01, practice, likelihood},
+	{match(`^[FGKM][\d.+-]*V`), "dwarf class, spectrum %s", shares{targets.MS: 1, targets.SG: 0.5, targets.ACC: 0.2}, 0.02, practice, likelihood},
+	{match(`^M([5-9]|10)`), "late M giant, spectrum %s", shares{targets.TPAGB: 1, targets.EAGB: 0.4, targets.RGB: 0.15, targets.RSG: 0.1, targets.ACC: 0.3}, 0.005, practice, ofLuminous},
+	{match(`^M`), "M giant, spectrum %s: above the clump", shares{targets.RGB: 1, targets.EAGB: 1, targets.TPAGB: 0.15, targets.RSG: 0.2, targets.ACC: 0.2}, 0.005, practice, ofLuminous},
+	{match(`^[GK].*III`), "giant class, spectrum %s", shares{targets.RGB: 1, targets.RC: 1, targets.EAGB: 0.6, targets.SG: 0.1, targets.TPAGB: 0.01}, 0.01, practice, likelihood},
 }
 
 // longSemiregular and shortSemiregular are the shares among semiregulars of a
 // period over and under 60 d.
 var (
-	longSemiregular  = shares{targets.TPAGB: 0.6, targets.EAGB: 0.2, targets.RGB: 0.2}
-	shortSemiregular = shares{targets.RGB: 0.5, targets.EAGB: 0.25, targets.TPAGB: 0.25}
+	longSemiregular  = amongLuminous(shares{targets.TPAGB: 0.6, targets.EAGB: 0.2, targets.RGB: 0.2})
+	shortSemiregular = amongLuminous(shares{targets.RGB: 0.5, targets.EAGB: 0.25, targets.TPAGB: 0.25})
 )
 
 const semiregularSplitD = 60
 
-// listed gathers what the catalogue's own words say.
-func listed(t *targets.Target) []factor {
+// listed gathers what the catalogue's own words say, the kind apart.
+func listed(t *targets.Target, s *sight) []factor {
 	var out []factor
-	if k, ok := kindShares[t.Kind]; ok {
-		f := factor{what: "listed as " + string(t.Kind), source: k.source, weight: k.shares, rest: 1e-4}
-		if f.source == "" {
-			f.source = cite.HurleyPolsTout2000.String() + ", shares of time"
+	for _, of := range []func(*targets.Target) (factor, bool){kindOf, variabilityOf, spectrumOf, infraredOf} {
+		if f, ok := of(t); ok {
+			out = append(out, f)
 		}
-		if t.KindInferred {
-			f.what, f.rest = "looks like "+string(t.Kind)+" (kind inferred)", 0.02
+	}
+	if s.fit == nil && !s.place.HROK { // else the place on the diagram says it better
+		for _, of := range []func(*targets.Target) (factor, bool){gravityOf, temperatureOf} {
+			if f, ok := of(t); ok {
+				out = append(out, f)
+			}
 		}
-		out = append(out, f)
-	}
-	if f, ok := variabilityOf(t); ok {
-		out = append(out, f)
-	}
-	if f, ok := spectrumOf(t); ok {
-		out = append(out, f)
-	}
-	if f, ok := gravityOf(t); ok {
-		out = append(out, f)
-	}
-	if f, ok := temperatureOf(t); ok {
-		out = append(out, f)
 	}
 	return out
+}
+
+// kindOf is what the kind says.
+func kindOf(t *targets.Target) (factor, bool) {
+	f := factor{what: "listed as " + string(t.Kind), source: practice, rest: 1e-4}
+	if t.KindInferred {
+		f.what, f.rest = "looks like "+string(t.Kind)+" (kind inferred)", 0.02
+	}
+	switch t.Kind {
+	case targets.Giant:
+		f.weight = giantKind
+		return f, true
+	case targets.LPV:
+		if _, ok := variabilityOf(t); ok {
+			return factor{}, false // the type says it more finely
+		}
+		f.weight, f.luminous = lpvKind, true
+		return f, true
+	}
+	k, ok := kindShares[t.Kind]
+	f.weight, f.prior = k, true
+	return f, ok
 }
 
 func variabilityOf(t *targets.Target) (factor, bool) {
@@ -129,7 +169,7 @@ func variabilityOf(t *targets.Target) (factor, bool) {
 		return factor{}, false
 	}
 	if match(`^SR[AB]?(\b|:|$)`).MatchString(v) {
-		f := factor{what: "semiregular, type " + t.Var.Type, weight: longSemiregular, rest: 0.001, source: practice}
+		f := factor{what: "semiregular, type " + t.Var.Type, weight: longSemiregular, rest: 0.001, source: practice, luminous: true}
 		if p := t.Var.PeriodD; p.Known && p.Value < semiregularSplitD {
 			f.weight = shortSemiregular
 		}
@@ -147,13 +187,18 @@ func spectrumOf(t *targets.Target) (factor, bool) {
 	if sp == "" || strings.HasPrefix(strings.ToLower(sp), "pec") || (strings.Contains(sp, "+") && t.Kind == targets.Interacting) {
 		return factor{}, false
 	}
-	return first(spectra, sp, sp)
+	f, ok := first(spectra, sp, sp)
+	if v := strings.ToUpper(t.Var.Type); strings.HasPrefix(v, "RCB") && f.luminous {
+		return factor{}, false // carbon is what such stars are made of
+	}
+	return f, ok
 }
 
 func first(rules []rule, text, shown string) (factor, bool) {
 	for _, r := range rules {
 		if r.pattern.MatchString(text) {
-			return factor{what: fmt.Sprintf(r.what, shown), source: r.source, weight: r.weight, rest: r.rest}, true
+			f := factor{what: fmt.Sprintf(r.what, shown), source: r.source, weight: r.weight, rest: r.rest, prior: r.says == selects, luminous: r.says == ofLuminous}
+			return f, true
 		}
 	}
 	return factor{}, false

@@ -146,3 +146,35 @@ func BenchmarkJudge(b *testing.B) {
 		m.Judge(tg)
 	}
 }
+
+// Budget: 200 microseconds a star once the models are made.
+func BenchmarkJudgeGiant(b *testing.B) {
+	m := NewModels()
+	tg := targets.Target{Name: "x", Kind: targets.Giant, Physics: targets.Physics{SpType: "K0III", FeH: targets.KnownErr(-0.1, 0.1), EBV: targets.Known(0.05)},
+		Place: targets.Place{Plx: targets.KnownErr(2, 0.05), PlxFrom: "gaia_dr3"},
+		Mags:  map[targets.Band]targets.Measure{"G": targets.Known(9.2), "BP": targets.Known(9.8), "RP": targets.Known(8.5), "K": targets.Known(6.9)}}
+	m.Judge(tg)
+	for b.Loop() {
+		m.Judge(tg)
+	}
+}
+
+func BenchmarkJudgeDwarf(b *testing.B) {
+	m := NewModels()
+	tg := targets.Target{Name: "x", Kind: targets.WD, Place: targets.Place{Plx: targets.KnownErr(10, 0.1), PlxFrom: "gaia_dr3"},
+		Mags: map[targets.Band]targets.Measure{"G": targets.Known(17.17), "BP": targets.Known(17.2), "RP": targets.Known(17.06)}}
+	m.Judge(tg)
+	for b.Loop() {
+		m.Judge(tg)
+	}
+}
+
+func BenchmarkJudgePoor(b *testing.B) {
+	m := NewModels()
+	tg := targets.Target{Name: "x", Place: targets.Place{Plx: targets.KnownErr(0.2, 0.3), PlxFrom: "gaia_dr3"},
+		Mags: map[targets.Band]targets.Measure{"G": targets.Known(15.17), "BP": targets.Known(15.7), "RP": targets.Known(14.06)}}
+	m.Judge(tg)
+	for b.Loop() {
+		m.Judge(tg)
+	}
+}

@@ -152,7 +152,7 @@ func (s Screen) Refresh(w *kit.World) (kit.Screen, kit.Job) {
 		}
 	}
 	sc := w.Snap.Scene
-	r := roster.New([]roster.Entry{{Target: t, Want: moment.Want{Band: w.Band, Level: w.Level, Weight: 1}}}, moment.NewModels(), nil)
+	r := roster.New([]roster.Entry{{Target: t, Want: moment.Want{Band: w.Band, Level: w.Level, Weight: 1}}}, w.Snap.Roster.Models(), nil)
 	return s, kit.Work{Name: "placing it", Run: func(context.Context) (kit.Result, error) {
 		m := r.Moment(&sc, 0)
 		return &Look{y, m, kit.StageWord(&m.Stage)}, nil

@@ -65,22 +65,35 @@ func StageWord(v *stage.Verdict) string {
 	case "":
 		return ""
 	}
-	return fmt.Sprintf("%-5s %2.0f", word, math.Min(100*StageP(v), 99))
+	return fmt.Sprintf("%-5s %2.0f", word, math.Min(100*v.Sureness(), 99))
 }
 
-// StageP is the probability of the answer given.
-func StageP(v *stage.Verdict) float64 {
-	switch v.Best {
-	case targets.Merged:
-		return v.P[targets.RGB] + v.P[targets.EAGB]
-	case targets.Undecided:
-		most := 0.0
-		for _, p := range v.P {
-			most = math.Max(most, p)
-		}
-		return most
+// QuantityWord is a quantity with its interval and unit, to as many places as
+// the interval deserves.
+func QuantityWord(q *stage.Quantity) string {
+	known := !math.IsNaN(q.Lo) && !math.IsNaN(q.Hi)
+	width := math.Abs(q.Value) / 100
+	if known && q.Hi > q.Lo {
+		width = q.Hi - q.Lo
 	}
-	return v.P[targets.Stage(v.Best)]
+	places := 0
+	if width > 0 && !math.IsInf(width, 0) {
+		places = min(max(1-int(math.Floor(math.Log10(width))), 0), 6)
+	}
+	num := func(v float64) string {
+		if a := math.Abs(v); a >= 1e6 || a > 0 && a < 1e-4 {
+			return fmt.Sprintf("%.3g", v)
+		}
+		return fmt.Sprintf("%.*f", places, v)
+	}
+	s := num(q.Value)
+	if known {
+		s += "  " + num(q.Lo) + ".." + num(q.Hi)
+	}
+	if q.Unit != "" {
+		s += " " + q.Unit
+	}
+	return s
 }
 
 // ExpectWord is the expected brightness: band, value, interval.

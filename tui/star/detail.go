@@ -11,6 +11,7 @@ import (
 	"evenfall/astro"
 	"evenfall/targets"
 	"evenfall/targets/moment"
+	"evenfall/targets/stage"
 	"evenfall/targets/table"
 	"evenfall/tui/kit"
 )
@@ -77,18 +78,20 @@ func (w *writer) dim(format string, a ...any) {
 }
 
 // known writes down everything known of a star, what decides first.
-func known(sc *moment.Scene, p *moment.Prepared, m *moment.Moment) ([]Line, error) {
+func known(sc *moment.Scene, p *moment.Prepared, m *moment.Moment, st *stage.Study) ([]Line, error) {
 	var w writer
-	w.missing(m)
-	w.stage(m)
+	w.stage(m, st)
 	w.light(p, m)
+	w.madeOf(st)
+	w.missing(m)
 	w.night(m)
 	w.sky(m)
+	w.evidence(m)
 	err := w.listed(&p.Target)
 	w.head("workings")
-	for _, st := range moment.Steps(sc, p, m) {
-		w.say("%s: %s", st.What, st.Result)
-		w.dim("  %s; from %s; source: %s", st.Formula, st.Inputs, st.Source)
+	for _, x := range moment.Steps(sc, p, m, st) {
+		w.say("%s: %s", x.What, x.Result)
+		w.dim("  %s; from %s; source: %s", x.Formula, x.Inputs, x.Source)
 	}
 	return w.lines, err
 }
@@ -103,28 +106,54 @@ func (w *writer) missing(m *moment.Moment) {
 	}
 }
 
-func (w *writer) stage(m *moment.Moment) {
-	w.head("what it is; the evidence with log10 of its odds")
-	type one struct {
-		code targets.Stage
-		p    float64
-	}
-	var list []one
-	for c, p := range m.Stage.P {
-		if p >= 0.005 {
-			list = append(list, one{c, p})
+// strongest is how many reasons stand beside the probabilities; the others come
+// further down.
+const strongest = 2
+
+func (w *writer) stage(m *moment.Moment, st *stage.Study) {
+	w.head("what it is")
+	codes := slices.Clone(targets.Stages[:])
+	slices.SortStableFunc(codes, func(a, b targets.Stage) int { return cmp.Compare(m.Stage.P[b], m.Stage.P[a]) })
+	var parts []string
+	for _, c := range codes {
+		if p := m.Stage.P[c]; p >= 0.005 {
+			parts = append(parts, fmt.Sprintf("%s %.0f %%", c, math.Min(100*p, 99)))
 		}
 	}
-	slices.SortFunc(list, func(a, b one) int {
-		return cmp.Or(cmp.Compare(b.p, a.p), strings.Compare(string(a.code), string(b.code)))
-	})
-	var parts []string
-	for _, e := range list {
-		parts = append(parts, fmt.Sprintf("%s %.0f %%", e.code, math.Min(100*e.p, 99)))
-	}
 	w.say("%s", strings.Join(parts, "  "))
+	for i, e := range m.Stage.Evidence {
+		if i < strongest {
+			w.say("%+.1f %s", e.Log10Odds, e.What)
+		}
+	}
+	for _, d := range st.Decide {
+		w.say("would settle it: %s", d)
+	}
+}
+
+// evidence lists every reason with its source.
+func (w *writer) evidence(m *moment.Moment) {
+	w.head("evidence, log10 of the odds for the likeliest stage")
 	for _, e := range m.Stage.Evidence {
 		w.say("%+.1f %s [%s]", e.Log10Odds, e.What, e.Source)
+	}
+}
+
+// madeOf lists the physical quantities with their intervals.
+func (w *writer) madeOf(st *stage.Study) {
+	if len(st.Quantities)+len(st.Notes) == 0 {
+		return
+	}
+	w.head(fmt.Sprintf("what it is made of, %.0f %% intervals", 100*stage.Level))
+	for i := range st.Quantities {
+		q := &st.Quantities[i]
+		w.say("%s %s", q.Words, kit.QuantityWord(q))
+		if !st.SharesMethod(i) {
+			w.dim("  %s [%s]", q.Method, q.Source)
+		}
+	}
+	for _, n := range st.Notes {
+		w.say("%s", n)
 	}
 }
 

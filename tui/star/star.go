@@ -105,7 +105,8 @@ func (s Screen) Refresh(w *kit.World) (kit.Screen, kit.Job) {
 		d.HandOver = handOver.Lines(&p.Target, &m, p.Drift)
 		d.Curve = moment.Curve(sc.Night, p, kit.Stretch(sc.Night))
 		var err error
-		d.Known, err = known(&sc, p, &m)
+		st := r.Study(row)
+		d.Known, err = known(&sc, p, &m, &st)
 		return d, err
 	}}
 }

@@ -34,6 +34,7 @@ type Grid struct {
 	recipe Recipe
 	levels []level
 	total  float64
+	shares map[targets.Stage]float64
 }
 
 // level is the grid in cells of one size.
@@ -81,6 +82,10 @@ func NewGrid(r Recipe) (*Grid, error) {
 		}
 	}
 	g := &Grid{recipe: r, total: s.total}
+	g.shares = map[targets.Stage]float64{}
+	for i := range s.all {
+		g.shares[stages[s.all[i].code]] += s.all[i].w / g.total
+	}
 	fine := s.all
 	for _, size := range [][2]int{{1, 1}, {4, 1}, {16, 1}} {
 		fine = merge(fine, size[0], size[1])
@@ -148,8 +153,7 @@ func (s *sower) node(k int) error {
 	if err != nil {
 		return err
 	}
-	x := (r.FeH[k] - r.MeanFeH) / r.SigFeH
-	share := math.Exp(-x*x/2) * r.width(k)
+	share := r.share(k)
 	s.base = len(s.all)
 	w := walk{f: f, eta: r.Eta, fine: 1, until: r.ToMyr}
 	sow := func(from, to float64, n int) {

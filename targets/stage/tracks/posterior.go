@@ -29,6 +29,9 @@ type Posterior struct {
 	// Chi2 is that of the nearest star of the population; infinite where P is
 	// nil. Above some 9 the star is off the tracks.
 	Chi2 float64
+
+	area   float64 // 2 pi times both errors, square dex
+	metals float64 // part of the population of its metallicity
 }
 
 // Given is mass and age if the star is in a stage, or whatever its stage:
@@ -94,7 +97,9 @@ func (g *Grid) Posterior(s Seen) Posterior {
 		}
 	}
 	q.add(v)
-	return q.answer(g.total)
+	out := q.answer(g.total)
+	out.area, out.metals = 2*math.Pi*sT*sL, q.metals(&g.recipe)
+	return out
 }
 
 // sharper takes off an error what cells larger than the finest blur.

@@ -1,0 +1,84 @@
+package main
+
+import (
+	"cmp"
+	"fmt"
+	"math"
+	"slices"
+	"strings"
+
+	"evenfall/targets"
+	"evenfall/targets/stage"
+	"evenfall/tui/kit"
+)
+
+// jsonDerived is a quantity of the star itself.
+type jsonDerived struct {
+	Value  float64  `json:"value"`
+	Lo     *float64 `json:"lo"`
+	Hi     *float64 `json:"hi"`
+	Level  float64  `json:"level"`
+	Method string   `json:"method"`
+	Source string   `json:"source"`
+}
+
+// figures keeps a number to so many significant figures.
+func figures(v float64, n int) float64 {
+	if v == 0 || math.IsNaN(v) || math.IsInf(v, 0) {
+		return v
+	}
+	return round(v, n-1-int(math.Floor(math.Log10(math.Abs(v)))))
+}
+
+// derivedFigures is how many significant figures derived quantities carry.
+const derivedFigures = 6
+
+// derived returns the quantities of the star by their keys.
+func (v view) derived() map[string]jsonDerived {
+	out := map[string]jsonDerived{}
+	for _, q := range v.study.Quantities {
+		out[q.Key] = jsonDerived{Value: figures(q.Value, derivedFigures), Lo: rounded(figures(q.Lo, derivedFigures), 12),
+			Hi: rounded(figures(q.Hi, derivedFigures), 12), Level: stage.Level, Method: q.Method, Source: q.Source}
+	}
+	return out
+}
+
+func (v view) stageText(b *strings.Builder) {
+	st := &v.m.Stage
+	fmt.Fprintf(b, "\nwhat it is: %s\n ", st.Best)
+	codes := slices.Clone(targets.Stages[:])
+	slices.SortStableFunc(codes, func(x, y targets.Stage) int { return cmp.Compare(st.P[y], st.P[x]) })
+	for _, c := range codes {
+		if st.P[c] >= 0.005 {
+			fmt.Fprintf(b, " %s %.0f %%", c, 100*st.P[c])
+		}
+	}
+	b.WriteString("\n")
+	for _, e := range st.Evidence {
+		fmt.Fprintf(b, "  %+.1f  %s (%s)\n", e.Log10Odds, e.What, e.Source)
+	}
+	if len(st.Evidence) > 0 {
+		b.WriteString("  (log10 of the odds for it; source)\n")
+	}
+	for _, d := range v.study.Decide {
+		fmt.Fprintf(b, "  would settle it: %s\n", d)
+	}
+}
+
+// studyText prints what the target is made of.
+func (v view) studyText(b *strings.Builder) {
+	if len(v.study.Quantities)+len(v.study.Notes) == 0 {
+		return
+	}
+	fmt.Fprintf(b, "\nwhat it is made of, with %.0f %% intervals\n", 100*stage.Level)
+	for i := range v.study.Quantities {
+		q := &v.study.Quantities[i]
+		fmt.Fprintf(b, "  %-34s %s\n", q.Words, kit.QuantityWord(q))
+		if !v.study.SharesMethod(i) {
+			fmt.Fprintf(b, "      %s (%s)\n", q.Method, q.Source)
+		}
+	}
+	for _, n := range v.study.Notes {
+		fmt.Fprintf(b, "  note: %s\n", n)
+	}
+}
