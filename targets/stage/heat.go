@@ -9,6 +9,7 @@ import (
 
 	"evenfall/astro/cite"
 	"evenfall/astro/degenerate"
+	"evenfall/astro/nebular"
 	"evenfall/astro/stellar"
 	"evenfall/targets"
 )
@@ -28,6 +29,7 @@ const (
 	bcgHottestK         = 8000.0
 	bcgCoolestK         = 3300.0
 	bcvCoolestK         = 3300.0
+	bcvHottestK         = 50000.0
 	miraBCK, miraBCKErr = 3.0, 0.15
 	modulusPerRelative  = 5 / math.Ln10
 	miraMeanErr         = 0.1 // mag, of a K magnitude that may not be the mean
@@ -206,6 +208,11 @@ func (s *sight) byMagnitude(t *targets.Target, way func(logL, err float64, metho
 	v, ok := s.abs["V"]
 	if g, okG := s.abs["G"]; !ok && okG && tk > bcgHottestK {
 		v, ok = stellar.Measured(g.Value+hotGvsV, math.Hypot(g.Err, hotGvsV)), true
+	}
+	if ok && tk > bcvHottestK {
+		if bc, err := nebular.HotBC(tk); err == nil {
+			way(0.4*(stellar.MbolSun-v.Value-bc), math.Hypot(0.4*v.Err, 0.4*6.84*te/tk/math.Ln10), "V magnitude, parallax and hot bolometric correction, an extrapolation", cite.VaccaEtAl1996.String())
+		}
 	}
 	if ok && tk >= bcvCoolestK {
 		f := func(k float64) (float64, error) { return stellar.LogLFromV(v.Value, k) }

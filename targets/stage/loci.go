@@ -70,13 +70,22 @@ func (s *sight) locus() (factor, bool) {
 	return factor{}, false
 }
 
+// hotEnd are the stages that pass into one another at the end: which of them a
+// star is called is no contradiction.
+var hotEnd = map[targets.Stage]bool{targets.CSPN: true, targets.Dwarf: true}
+
 // contradiction names two ways of knowing that exclude each other: all that
 // the list calls the target against its place on the diagram.
 func contradiction(byWords, byPlace map[targets.Stage]float64, s *sight) *targets.Evidence {
-	overlap := 0.0
+	overlap, endWords, endPlace := 0.0, 0.0, 0.0
 	for _, code := range targets.Stages {
+		if hotEnd[code] {
+			endWords, endPlace = endWords+byWords[code], endPlace+byPlace[code]
+			continue
+		}
 		overlap += math.Min(byWords[code], byPlace[code])
 	}
+	overlap += math.Min(endWords, endPlace)
 	const hardly = 0.03
 	if overlap > hardly {
 		return nil

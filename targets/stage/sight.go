@@ -50,6 +50,8 @@ type sight struct {
 	logGSource string
 	seismic    stellar.Seismic
 	dwarf      bool               // below the main sequence, by the cut for white dwarfs
+	absV       stellar.Measure    // of a nebula's central star
+	gas        *gas               // a nebula without its dust; nil: no nebula
 	fit        *degenerate.Answer // of white-dwarf models; nil: none
 	post       *tracks.Posterior  // of the tracks at the place; nil: not asked
 }
@@ -75,11 +77,12 @@ const (
 // sight works out what the diagram asks for.
 func (m *Models) sight(t *targets.Target, keep bool) *sight {
 	s := &sight{keep: keep, abs: map[targets.Band]stellar.Measure{}, feh: measured(t.Physics.FeH, listedFeHErr)}
-	if t.Kind == targets.PN {
-		s.place.Why = "a nebula: its central star stands elsewhere than its light"
-	}
 	s.far(t)
 	s.redden(t)
+	if t.Kind == targets.PN {
+		s.centralStar(t)
+		return s
+	}
 	s.magnitudes(t)
 	s.below(t)
 	if s.asDwarf(m, t); s.fit == nil {
@@ -202,7 +205,7 @@ func (s *sight) set(d stellar.Distances, how, source string) {
 	s.distance, s.distanceOK, s.distanceBy, s.distanceOf = d, true, how, source
 	s.farErr = math.Log10(d.Q84/d.Q16) / 2
 	if s.keep {
-		s.step("distance", "median of p(r | plx) ~ r^2 exp(-r/L) exp(-(plx-1/r)^2/2s^2)", fmt.Sprintf("plx %.4f +- %.4f mas; %s", d.PlxMas, d.ErrMas, how),
+		s.step("distance", "median of p(r | plx) ~ r^2 exp(-r/L) exp(-(plx-1/r)^2/2s^2), or as listed", fmt.Sprintf("plx %.4f +- %.4f mas; %s", d.PlxMas, d.ErrMas, how),
 			fmt.Sprintf("%.1f pc, 68 %%: %.1f to %.1f", 1000*d.Q50, 1000*d.Q16, 1000*d.Q84), source)
 	}
 }
@@ -218,13 +221,28 @@ func (s *sight) farOtherwise(t *targets.Target, why string) {
 		if e <= 0 {
 			e = unsaid * d.Value
 		}
-		plx := 1000 / d.Value
-		if dist, err := stellar.Distance(stellar.DistancePrior{PlxMas: plx, ErrMas: plx * e / d.Value, ScaleKpc: stellar.SkyScaleKpc}); err == nil {
-			s.set(dist, "listed distance", "the list")
-			return
-		}
+		s.set(around(d.Value/1000, math.Min(e, 0.9*d.Value)/1000), "as listed", "the list")
+		return
 	}
 	s.lack("%s: how luminous it is is not known from it", why)
+}
+
+// around is a distance known to be d, with one sigma e, kpc.
+func around(d, e float64) stellar.Distances {
+	const nodes, reach = 21, 2.5
+	out := stellar.Distances{PlxMas: 1 / d, ErrMas: e / d / d, Q05: math.Max(d-1.645*e, 0.05*d), Q16: d - e, Q50: d, Q84: d + e, Q95: d + 1.645*e, ModeKpc: d}
+	sum := 0.0
+	for i := range nodes {
+		z := reach * (2*float64(i)/(nodes-1) - 1)
+		if r := d + z*e; r > 0.02*d {
+			out.R, out.W = append(out.R, r), append(out.W, math.Exp(-z*z/2))
+			sum += math.Exp(-z * z / 2)
+		}
+	}
+	for i := range out.W {
+		out.W[i] /= sum
+	}
+	return out
 }
 
 // farByPeriod takes the distance of a Mira from its period and its mean K.
