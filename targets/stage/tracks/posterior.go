@@ -64,8 +64,8 @@ const (
 //     number is not finite or an error negative.
 //
 // Notes:
-//  1. Cells far smaller than the errors are taken together; a probability changes
-//     by at most 0.03.
+//  1. Cells far smaller than the errors are taken together; where the star is
+//     on the tracks, a probability changes by at most 0.03.
 //  2. Stages that no single star passes through, and binaries, have no part in
 //     it: the caller keeps some probability for what is none of these.
 //

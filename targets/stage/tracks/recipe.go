@@ -4,7 +4,7 @@ import "math"
 
 // Edition identifies the recipe of the population grid and the corrections to
 // the tracks; it changes when either does, and with it every judgement.
-const Edition = "tracks 1 (Hurley, Pols & Tout 2000; 6 metallicities, wind 0.4, 12 Gyr of stars; giants as measured in the Kepler field)"
+const Edition = "tracks 1 (Hurley, Pols & Tout 2000, radii of giants read between model metallicities; wind 0.4; 12 Gyr of stars; giants moved to measured ones)"
 
 // Recipe says which stars a population grid is made of.
 type Recipe struct {
@@ -92,7 +92,7 @@ const (
 	clumpTrack  = 1.891
 	clumpStars  = 1.739
 	clumpWidth  = 3.0
-	clumpFade   = 0.3  // Msun below the flash mass over which the map fades
+	clumpFade   = 0.5  // Msun above the flash mass over which the map fades
 	clumpCool   = 3.74 // log temperature at which the map begins to fade,
 	clumpHot    = 3.85 // and has faded
 )
@@ -117,9 +117,9 @@ func smooth(x, a, b float64) float64 {
 //  1. The first is measured at log L 1.2 to 2.3; it fades over 0.7 dex to
 //     either side, and the early asymptotic giant branch moves along, as it
 //     lies beside the giant branch for the same reason.
-//  2. The second holds for stars that ignite helium in a flash and fades over
-//     the 0.3 solar masses below the flash mass, and between 5500 and 7080 K.
-//     The secondary clump stays where the tracks have it.
+//  2. The second holds for stars that ignite helium in a flash; it fades over
+//     the 0.5 solar masses above the flash mass, where nothing was measured,
+//     and between 5500 and 7080 K.
 //
 // Source: as for the constants.
 //
@@ -131,8 +131,8 @@ func (f *Formulas) correct(p *Point, feH, effective float64) (logL, logT float64
 		w := smooth(logL, giantLow-giantFade, giantLow) * smooth(logL, giantHigh+giantFade, giantHigh)
 		shift := giantShift + giantMetal*effective - giantSlope*(feH-effective)
 		logT += w * (shift + giantRise*(clamp(logL, giantLow, giantHigh)-giantMiddle))
-	case PhaseClump, PhaseHB:
-		w := smooth(p.Mass, f.mHeF, f.mHeF-clumpFade) * smooth(logT, clumpHot, clumpCool)
+	case PhaseClump, PhaseHB, PhaseSecondClump:
+		w := smooth(p.Mass, f.mHeF+clumpFade, f.mHeF) * smooth(logT, clumpHot, clumpCool)
 		logL += w * (clumpStars + (logL-clumpTrack)/clumpWidth - logL)
 		logT += w * (clumpShift + clumpMetal*effective - clumpSlope*(feH-effective))
 	}
