@@ -39,7 +39,7 @@ type Formulas struct {
 	coreB, coreI           float64 // C_B, C_I of the core masses
 	hookLum, hookRad       float64 // depth of the hook at a33, and dR at 2 Msun
 	below, above           *Formulas
-	mix                    float64 // share of above in the radii of giants; see newSmooth
+	mix                    float64 // share of above in the radii of giants; see NewSmoothFormulas
 }
 
 // NewFormulas evaluates the coefficients for one metallicity.

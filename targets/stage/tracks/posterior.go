@@ -89,16 +89,21 @@ func (g *Grid) Posterior(s Seen) Posterior {
 	}
 	v := g.level(sT, sL)
 	q := query{t: window{s.LogT, sharper(sT, cellT, v.foldT)}, l: window{s.LogL, sharper(sL, cellL, v.foldL)}}
+	var chi2 [mostNodes]float64
+	least := math.Inf(1)
 	for k, feH := range g.recipe.FeH {
-		q.node[k] = 1
 		if s.HasFeH {
 			x := (s.FeH - feH) / math.Max(s.FeHErr, grainFeH*g.recipe.width(k))
-			q.node[k] = math.Exp(-x * x / 2)
+			chi2[k] = x * x
 		}
+		least = math.Min(least, chi2[k])
+	}
+	for k := range g.recipe.FeH {
+		q.node[k] = math.Exp((least - chi2[k]) / 2)
 	}
 	q.add(v)
-	out := q.answer(g.total)
-	out.area, out.metals = 2*math.Pi*sT*sL, q.metals(&g.recipe)
+	out := q.answer(g.total, least)
+	out.area, out.metals = 2*math.Pi*sT*sL, q.metals(&g.recipe)*math.Exp(-least/2)
 	return out
 }
 
@@ -188,7 +193,9 @@ func firstFrom(row []cell, t uint16) int {
 	return lo
 }
 
-func (q *query) answer(total float64) Posterior {
+// answer reads what was gathered; least is the chi² that the metallicity adds to
+// every star.
+func (q *query) answer(total, least float64) Posterior {
 	out := Posterior{Chi2: math.Inf(1)}
 	sum := 0.0
 	for _, p := range q.p {
@@ -198,7 +205,7 @@ func (q *query) answer(total float64) Posterior {
 		return out
 	}
 	out.P, out.ByStage = make(map[targets.Stage]float64, codes), make(map[targets.Stage]Given, codes)
-	out.Weight, out.Chi2 = sum/total, math.Max(0, -2*math.Log(q.best))
+	out.Weight, out.Chi2 = sum/total*math.Exp(-least/2), math.Max(0, least-2*math.Log(q.best))
 	var age, mass [bins]float64
 	for i, p := range q.p {
 		if p <= 0 {

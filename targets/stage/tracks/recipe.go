@@ -62,9 +62,15 @@ func born(m float64) float64 {
 	return pow(m, -2.3)
 }
 
-// metals returns Z for [Fe/H], within the range of the formulas, and the
+// Metals returns Z for [Fe/H], within the range of the formulas, and the
 // [Fe/H] that it stands for.
-func metals(feH float64) (z, effective float64) {
+//
+//	Z = 0.02 10^[Fe/H], between 0.0001 and 0.03
+//
+// Source: [cite.HurleyPolsTout2000], whose Sun has Z = 0.02.
+//
+// Checked: TestMetals.
+func Metals(feH float64) (z, effective float64) {
 	z = clamp(0.02*pow10(feH), LeastZ, MostZ)
 	return z, math.Log10(z / 0.02)
 }

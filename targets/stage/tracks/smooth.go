@@ -2,21 +2,24 @@ package tracks
 
 import "math"
 
-// newSmooth is [NewFormulas] with the radii of giants read between the
-// metallicities of the models that the formulas were fitted to.
+// NewSmoothFormulas is [NewFormulas] with the radii of giants read between the
+// metallicities of the models that the formulas were fitted to. The corrected
+// grid is made of these.
 //
 //	log R = (1 - x) log R(Z1) + x log R(Z2),  x = log(Z/Z1) / log(Z2/Z1)
+//
+// Given, Returns: as for [NewFormulas].
 //
 // Notes:
 //  1. At those seven metallicities the giant branch of the published fit cools
 //     steadily by 0.055 dex of temperature per dex of Z; between them its
-//     coefficients swing, by up to +0.02 dex at Z = 0.005 and -0.04 at 0.0025.
+//     coefficients swing, by up to +0.03 dex at Z = 0.005 and -0.05 at 0.0025.
 //
 // Source: [cite.HurleyPolsTout2000] for what is read; the reading between is
 // ours.
 //
 // Checked: TestSmooth.
-func newSmooth(z float64) (*Formulas, error) {
+func NewSmoothFormulas(z float64) (*Formulas, error) {
 	f, err := NewFormulas(z)
 	if err != nil {
 		return nil, err
