@@ -52,7 +52,7 @@ func mustGrid(r tracks.Recipe) *tracks.Grid {
 }
 
 func mustFormulas(z float64) *tracks.Formulas {
-	f, err := tracks.NewFormulas(z)
+	f, err := tracks.NewSmoothFormulas(z)
 	if err != nil {
 		panic("stage: " + err.Error())
 	}
