@@ -58,6 +58,7 @@ var layers = map[string][]string{
 	"tui/kit":         {"targets/...", "astro/..."},
 	"tui/term":        {},
 	"tui/next":        {"tui/kit", "targets/...", "astro/..."},
+	"tui/diagram":     {"tui/kit", "targets/...", "astro/..."},
 	"tui/star":        {"tui/kit", "targets/...", "astro/..."},
 	"tui/entry":       {"tui/kit", "targets/...", "astro/..."},
 	"tui/plain":       {"tui/kit", "targets/...", "astro/..."},
@@ -65,7 +66,7 @@ var layers = map[string][]string{
 	"tui/log":         {"tui/kit", "targets/...", "astro/..."},
 	"tui/weather":     {"tui/kit", "targets/...", "astro/..."},
 	"tui/check":       {"tui/desk", "tui/kit", "targets/...", "astro/..."},
-	"tui/desk":        {"tui/kit", "tui/next", "tui/star", "tui/entry", "tui/plain", "tui/help", "tui/log", "tui/weather", "targets/...", "astro/..."},
+	"tui/desk":        {"tui/kit", "tui/next", "tui/star", "tui/diagram", "tui/entry", "tui/plain", "tui/help", "tui/log", "tui/weather", "targets/...", "astro/..."},
 	"cmd/evenfall":    {"tui/...", "targets/...", "astro/..."},
 }
 

@@ -11,6 +11,7 @@ import (
 	"evenfall/targets"
 	"evenfall/targets/logbook"
 	"evenfall/targets/roster"
+	"evenfall/tui/diagram"
 	"evenfall/tui/entry"
 	"evenfall/tui/help"
 	"evenfall/tui/kit"
@@ -80,7 +81,7 @@ func (d *Desk) now() asked { return asked{d.filter, d.w.Filter, d.w.Sort, d.w.Sh
 // anchors are the actions after which the star that is selected is the user's
 // own choice, though it was never moved to.
 var anchors = map[kit.Action]bool{
-	kit.OpenStar: true, kit.MarkStar: true, kit.CopyLines: true, kit.SortList: true, kit.ReverseSort: true, kit.RankAnew: true, kit.BackToNow: true,
+	kit.OpenStar: true, kit.OpenDiagram: true, kit.MarkStar: true, kit.CopyLines: true, kit.SortList: true, kit.ReverseSort: true, kit.RankAnew: true, kit.BackToNow: true,
 	kit.MinuteLess: true, kit.MinuteMore: true, kit.TenLess: true, kit.TenMore: true, kit.HourLess: true, kit.HourMore: true, kit.NightLess: true, kit.NightMore: true,
 }
 
@@ -95,7 +96,7 @@ func New(src Source, now time.Time) (*Desk, []Task) {
 	d.w = kit.World{Look: src.Look, Site: src.Site, Title: src.Title, Demo: src.Demo, Zone: src.Zone, HandOver: src.HandOver,
 		Band: src.Band, Level: src.Level, Fixed: src.Fixed, Selected: -1, Place: -1, Wall: now, Shown: now, Live: true,
 		Marks: map[int]bool{}, Width: 80, Height: 24, Ticks: src.Every > 0,
-		Book: src.Book, Observer: src.Observer, Requests: src.Requests, Limits: src.Limits, ClockWords: src.ClockWords}
+		Book: src.Book, Observer: src.Observer, Requests: src.Requests, Limits: src.Limits, ClockWords: src.ClockWords, Lives: src.Lives}
 	if !src.Start.IsZero() {
 		d.w.Shown, d.w.Live = src.Start, false
 	}
@@ -222,6 +223,8 @@ func (d *Desk) common(a kit.Action) ([]Task, bool) {
 		d.screens = append(d.screens, d.entry)
 	case kit.CopyLines:
 		return d.copy(), true
+	case kit.OpenDiagram:
+		d.open(kit.OnDiagram)
 	case kit.ShowHelp:
 		d.screens = append(d.screens, help.New(d.up().Title(), d.last))
 	case kit.ChangeTheme:
@@ -258,6 +261,23 @@ func (d *Desk) leave() {
 		}
 	}
 	d.done = true
+}
+
+// open puts a screen of the selected star on top, or goes back to where it is
+// up already, so that going to and fro between two makes no pile of them.
+func (d *Desk) open(title string) {
+	for i, s := range d.screens {
+		if s.Title() == title {
+			d.screens = d.screens[:i+1]
+			return
+		}
+	}
+	switch title {
+	case kit.OnStar:
+		d.screens = append(d.screens, star.New())
+	case kit.OnDiagram:
+		d.screens = append(d.screens, diagram.New())
+	}
 }
 
 func (d *Desk) close() {
@@ -308,9 +328,7 @@ func (d *Desk) do(job kit.Job) []Task {
 		d.anchor = j.Row
 		d.selectRow(j.Row)
 	case kit.Open:
-		if j.Screen == kit.OnStar {
-			d.screens = append(d.screens, star.New())
-		}
+		d.open(j.Screen)
 	case kit.Close:
 		d.close()
 	case kit.Toggle:

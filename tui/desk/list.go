@@ -110,6 +110,8 @@ func (d *Desk) Apply(result any) []Task {
 		}
 		if f, ok := r.result.(kit.Failed); ok && !errors.Is(f.Err, context.Canceled) {
 			d.say(f.Name+": "+f.Err.Error(), true)
+		} else if !ok && r.screen == d.up().Title() {
+			return d.follow() // some work goes on from here
 		}
 	case added:
 		d.works--
@@ -321,10 +323,10 @@ func (d *Desk) Tick(now time.Time) []Task {
 	}
 	tasks := d.Beat(now)
 	if !d.w.Live {
-		return tasks
+		return append(tasks, d.rest()...)
 	}
 	d.w.Shown = now
-	return append(tasks, d.tickList(now)...)
+	return append(append(tasks, d.tickList(now)...), d.rest()...)
 }
 
 // Beat brings to the disk what is half typed, tries again what it refused,
@@ -333,6 +335,14 @@ func (d *Desk) Tick(now time.Time) []Task {
 func (d *Desk) Beat(now time.Time) []Task {
 	d.bells(now)
 	return append(append(d.retry(now), d.poll()...), d.keep()...)
+}
+
+// rest gives the screen that is up its say as time goes by, if it wants it.
+func (d *Desk) rest() []Task {
+	if _, ok := d.up().(kit.Rests); ok {
+		return d.follow()
+	}
+	return nil
 }
 
 // steppedBack is how far back the clock must jump to be spoken of.

@@ -12,7 +12,6 @@ import (
 	"evenfall/targets/roster"
 	"evenfall/tui/kit"
 	"evenfall/tui/log"
-	"evenfall/tui/star"
 )
 
 // state is where a session stands, to come back to after a dropped link.
@@ -32,7 +31,7 @@ type state struct {
 func (d *Desk) State() string {
 	s := state{Screen: d.up().Title(), Filter: d.w.Filter, Sort: d.w.Sort, Observer: d.w.Observer, Setup: d.setup.String(), Theme: d.w.Look.Theme}
 	switch s.Screen { // where a line or an answer is asked for is no place to come back to
-	case kit.OnStar, kit.OnLog, kit.OnEntry, kit.OnWeather:
+	case kit.OnStar, kit.OnDiagram, kit.OnLog, kit.OnEntry, kit.OnWeather:
 	default:
 		s.Screen = kit.OnNext
 	}
@@ -93,8 +92,8 @@ func (d *Desk) comeBack() {
 		}
 	}
 	switch s.Screen {
-	case kit.OnStar:
-		d.screens = append(d.screens, star.New())
+	case kit.OnStar, kit.OnDiagram:
+		d.open(s.Screen)
 	case kit.OnLog:
 		d.screens = append(d.screens, log.New())
 	case kit.OnEntry:

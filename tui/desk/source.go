@@ -60,6 +60,9 @@ type Source struct {
 	// Notices are said once, at the start.
 	Notices []string
 	Look    *kit.Look
+	// Lives is where the diagram has its figures from; nil: the roster's own
+	// judgement.
+	Lives kit.Lives
 }
 
 // Task is work for the background. What Run returns goes to Apply.

@@ -58,6 +58,15 @@ const (
 	GradePoor   Action = "poor"
 	VoidEntry   Action = "void"
 	Finish      Action = "finish"
+	OpenDiagram Action = "diagram"
+	OtherAxes   Action = "other axes"
+	NearLeft    Action = "nearest on the left"
+	NearRight   Action = "nearest on the right"
+	NearUp      Action = "nearest above"
+	NearDown    Action = "nearest below"
+	ZoomIn      Action = "zoom in"
+	ZoomOut     Action = "zoom out"
+	ZoomAll     Action = "zoom to all"
 )
 
 // Binding is one row of the table of keys: it makes the handler, the footer,
@@ -82,11 +91,14 @@ const (
 	OnSort    = "sort"
 	OnLog     = "log"
 	OnWeather = "conditions"
+	OnDiagram = "diagram"
 )
 
 var (
 	lists = []string{OnNext, OnStar, OnHelp, OnCopy, OnLog}
-	work  = []string{OnNext, OnStar, OnLog}
+	work  = []string{OnNext, OnStar, OnDiagram, OnLog}
+	stars = []string{OnNext, OnStar, OnDiagram}
+	all   = []string{OnNext, OnStar, OnDiagram, OnHelp, OnCopy, OnLog}
 )
 
 // Bindings is the table of keys. Every movement has a letter; no key needs
@@ -99,18 +111,27 @@ var Bindings = []Binding{
 	{HalfUp, []string{"u", "pgup"}, "u, page up", "", "half a page up", lists},
 	{First, []string{"g", "home"}, "g, home", "", "to the first line", lists},
 	{Last, []string{"G", "end"}, "G, end", "", "to the last line", lists},
-	{OpenStar, []string{"enter"}, "enter", "star", "look at the selected star closely", []string{OnNext}},
+	{OpenStar, []string{"enter"}, "enter", "star", "look at the selected star closely", []string{OnNext, OnDiagram}},
 	{FilterList, []string{"/"}, "/", "filter", "filter by words and conditions: lep kind=wd alt>35 V<16 stage=TPAGB", []string{OnNext}},
 	{SortList, []string{"s"}, "s", "sort", "order by a column, named by a letter", []string{OnNext}},
 	{ReverseSort, []string{"S"}, "S", "", "reverse the order", []string{OnNext}},
 	{RankAnew, []string{"r"}, "r", "", "put the list into the order that holds now; it waits while you type", []string{OnNext}},
-	{MarkStar, []string{"m"}, "m", "mark", "mark or unmark the star; / mark=yes lists the marked", []string{OnNext, OnStar}},
+	{MarkStar, []string{"m"}, "m", "mark", "mark or unmark the star; / mark=yes lists the marked", stars},
 	{TakeStep, []string{"t"}, "t", "take", "the loop's next step: slew to the selected star, acquire, expose, accept and log", work},
-	{OpenLog, []string{"l"}, "l", "log", "the log of the night and what is owed", []string{OnNext, OnStar}},
-	{AddStar, []string{"a"}, "a", "add", "type or paste a new target", []string{OnNext, OnStar}},
-	{CopyLines, []string{"c"}, "c", "copy", "send the hand-over lines to the clipboard and show them plainly", []string{OnNext, OnStar}},
-	{NextStar, []string{"."}, ".", ". , stars", "the next star of the list", []string{OnStar}},
-	{PriorStar, []string{","}, ",", "", "the star before", []string{OnStar}},
+	{OpenLog, []string{"l"}, "l", "log", "the log of the night and what is owed", stars},
+	{AddStar, []string{"a"}, "a", "add", "type or paste a new target", stars},
+	{CopyLines, []string{"c"}, "c", "copy", "send the hand-over lines to the clipboard and show them plainly", stars},
+	{NextStar, []string{"."}, ".", ". , stars", "the next star of the list", []string{OnStar, OnDiagram}},
+	{PriorStar, []string{","}, ",", "", "the star before", []string{OnStar, OnDiagram}},
+	{NearLeft, []string{"left", "("}, "left, (", "", "the nearest star on the left: hotter, bluer", []string{OnDiagram}},
+	{NearRight, []string{"right", ")"}, "right, )", "", "the nearest on the right: cooler, redder", []string{OnDiagram}},
+	{NearUp, []string{"k", "up"}, "k, up", "", "the nearest above: more luminous", []string{OnDiagram}},
+	{NearDown, []string{"j", "down"}, "j, down", "", "the nearest below: fainter", []string{OnDiagram}},
+	{OtherAxes, []string{"h"}, "h", "axes", "luminosity against temperature, or absolute magnitude against colour", []string{OnDiagram}},
+	{ZoomIn, []string{"+", "="}, "+", "+ - 0 zoom", "twice as large, around the selected star", []string{OnDiagram}},
+	{ZoomOut, []string{"-"}, "-", "", "half as large", []string{OnDiagram}},
+	{ZoomAll, []string{"0"}, "0", "", "the whole diagram", []string{OnDiagram}},
+	{OpenDiagram, []string{"h"}, "h", "HR", "the Hertzsprung-Russell diagram: where in their lives the stars of the list stand", []string{OnNext, OnStar}},
 	{TenLess, []string{"["}, "[", "[ ] time", "10 minutes earlier; the time shown is then one of your own", []string{OnNext, OnStar}},
 	{TenMore, []string{"]"}, "]", "", "10 minutes later", []string{OnNext, OnStar}},
 	{MinuteLess, []string{"-"}, "-", "", "1 minute earlier", []string{OnNext, OnStar}},
@@ -133,10 +154,10 @@ var Bindings = []Binding{
 	{VoidEntry, []string{"0"}, "0", "void", "void: the entry stays and does not count (asks)", []string{OnLog}},
 	{BellSwitch, []string{"b"}, "b", "", "bell at the end of an exposure, before events and limits: on, off", work},
 	{ClockOffset, []string{"i"}, "i", "", "how many seconds the instrument's clock is ahead; logged with each take", work},
-	{ChangeTheme, []string{"v"}, "v", "", "theme: dark, red for night vision, plain", []string{OnNext, OnStar, OnHelp, OnCopy, OnLog}},
-	{ShowHelp, []string{"?"}, "?", "help", "the keys and signs of this screen", []string{OnNext, OnStar, OnCopy, OnLog}},
-	{Back, []string{"esc", "backspace"}, "esc", "", "dismiss a message, else back; nothing typed is lost", lists},
-	{Leave, []string{"q"}, "q", "leave", "leave this screen, from the list the program; asks once (y) if something is half typed", lists},
+	{ChangeTheme, []string{"v"}, "v", "", "theme: dark, red for night vision, plain", all},
+	{ShowHelp, []string{"?"}, "?", "help", "the keys and signs of this screen", []string{OnNext, OnStar, OnDiagram, OnCopy, OnLog}},
+	{Back, []string{"esc", "backspace"}, "esc", "", "dismiss a message, else back; nothing typed is lost", all},
+	{Leave, []string{"q"}, "q", "leave", "leave this screen, from the list the program; asks once (y) if something is half typed", all},
 
 	{NextField, []string{"enter", "down", "tab"}, "enter, tab, down", "next field", "the next field; on the last one enter adds the target, or saves", []string{OnEntry, OnWeather}},
 	{PriorField, []string{"up", "shift+tab"}, "up", "", "the field before", []string{OnEntry, OnWeather}},
@@ -204,7 +225,7 @@ func Footer(screen string, width int) string {
 
 var footers = func() map[string][]string {
 	out := map[string][]string{}
-	for _, screen := range []string{OnNext, OnStar, OnEntry, OnCopy, OnHelp, OnField, OnLog, OnWeather} {
+	for _, screen := range []string{OnNext, OnStar, OnEntry, OnCopy, OnHelp, OnField, OnLog, OnWeather, OnDiagram} {
 		for _, b := range KeysOn(screen) {
 			switch {
 			case b.Short == "":

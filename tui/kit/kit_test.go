@@ -8,7 +8,7 @@ import (
 	"pgregory.net/rapid"
 )
 
-var screensOfTable = []string{OnNext, OnStar, OnEntry, OnCopy, OnHelp, OnField}
+var screensOfTable = []string{OnNext, OnStar, OnEntry, OnCopy, OnHelp, OnField, OnDiagram}
 
 // On no screen does a key mean two things; every binding says what it does;
 // movement has letters; nothing needs alt, a function key, or a ctrl key that

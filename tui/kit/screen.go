@@ -51,7 +51,8 @@ type World struct {
 	Silent     bool     // no bell
 	ClockWords string   // whether the clock is kept right
 
-	Ticks bool // the clock goes on by itself, not only with keys
+	Lives Lives // judgements and lines of lives, for the diagram; nil: the roster's own
+	Ticks bool  // the clock goes on by itself, not only with keys
 }
 
 // Entry returns the selected target; nil: there is none.
@@ -108,6 +109,10 @@ type Paster interface {
 type Shows interface {
 	Rows(w *World) []int32
 }
+
+// Rests is a screen that does some work only once the user rests on a star: it
+// is refreshed each second too.
+type Rests interface{ Rests() }
 
 // Holder is a screen that may hold something half typed.
 type Holder interface{ HalfTyped() bool }
