@@ -128,7 +128,8 @@ var Site = astro.Site{Name: "test site", Lat: astro.Deg(-29.26), Lon: astro.Deg(
 // Start is the moment at which they begin.
 var Start = time.Date(2026, 12, 2, 4, 0, 0, 0, time.UTC)
 
-// Source is the built-in list, every n-th star of it, at the test site.
+// Source is the built-in list, every n-th star of it, at the test site; the
+// places on the diagram are invented.
 func Source(t testing.TB, every int) desk.Source {
 	t.Helper()
 	stars, err := builtin.Stars()
@@ -140,7 +141,7 @@ func Source(t testing.TB, every int) desk.Source {
 		list = append(list, roster.Entry{Target: stars[i], Want: moment.Want{Weight: 1, Level: 0.8}})
 	}
 	return desk.Source{Site: Site, Zone: time.UTC, Level: 0.8, Roster: roster.New(list, moment.NewModels(), nil), Every: time.Second,
-		Look: kit.Numbered(kit.ASCII), Limits: targets.DefaultLimits(),
+		Look: kit.Numbered(kit.ASCII), Limits: targets.DefaultLimits(), Lives: Lives{},
 		Night: nights()}
 }
 

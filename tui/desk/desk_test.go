@@ -36,6 +36,10 @@ var scenes = []struct {
 	{"own_time", []string{"}", "}", ">"}},
 	{"star", []string{"j", "j", "enter"}},
 	{"star_below", []string{"G", "enter", "d"}},
+	{"diagram", []string{"j", "m", "j", "j", "h"}},
+	{"diagram_colour", []string{"j", "j", "j", "h", "h"}},
+	{"diagram_zoomed", []string{"G", "h", ",", "m", "+", "+", "left"}},
+	{"diagram_not_placed", []string{"g", "h"}},
 	{"entry", []string{"a", "T", "1", "enter", "0", "5", " ", "3", "4", " ", "3", "1", " ", "-", "2", "2", " ", "0", "0", " ", "5", "2", "enter", "w", "d"}},
 	{"plain", []string{"c"}},
 	{"help", []string{"?"}},
@@ -517,7 +521,8 @@ func BenchmarkView(b *testing.B) {
 		name string
 		keys []string
 		w, h int
-	}{{"next/80x24", nil, 80, 24}, {"next/200x60", nil, 200, 60}, {"star/80x24", []string{"enter"}, 80, 24}, {"entry/80x24", []string{"a", "x"}, 80, 24}, {"help/80x24", []string{"?"}, 80, 24}} {
+	}{{"next/80x24", nil, 80, 24}, {"next/200x60", nil, 200, 60}, {"star/80x24", []string{"enter"}, 80, 24}, {"entry/80x24", []string{"a", "x"}, 80, 24}, {"help/80x24", []string{"?"}, 80, 24},
+		{"diagram/80x24", []string{"j", "h"}, 80, 24}, {"diagram/200x60", []string{"j", "h"}, 200, 60}} {
 		b.Run(s.name, func(b *testing.B) {
 			src := check.Source(b, 1)
 			src.Look = kit.NewLook(kit.DarkTheme, kit.Colours256, kit.Braille)

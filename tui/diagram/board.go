@@ -35,7 +35,8 @@ func (b *board) free(col, row int) bool {
 	return col >= 0 && row >= 0 && col < b.cols && row < b.rows && !b.taken[row*b.cols+col]
 }
 
-// write puts text where it covers nothing and stands free on both sides.
+// write puts text where it covers no letter and no track and stands free of
+// dots on both sides.
 func (b *board) write(col, row int, ink kit.Role, text string) bool {
 	if col < 0 || col+len(text) > b.cols {
 		return false
@@ -45,7 +46,7 @@ func (b *board) write(col, row int, ink kit.Role, text string) bool {
 			return false
 		}
 	}
-	b.canvas.Text(col, row, ink, text)
+	b.canvas.Text(col-1, row, ink, " "+text+" ")
 	for c := col; c < col+len(text); c++ {
 		b.taken[row*b.cols+c] = true
 	}

@@ -28,6 +28,7 @@ const widthToHeight = 2.2
 func near(a *axes, w window, spots []spot, from int, x, y float64, dir kit.Action) int {
 	best, least := -1, math.Inf(1)
 	fx, fy := w.frac(x, y)
+	back := dir == kit.NearLeft || dir == kit.NearUp
 	for i := range spots {
 		px, py, ok := a.place(&spots[i].v.Place)
 		if !ok || i == from {
@@ -39,7 +40,7 @@ func near(a *axes, w window, spots []spot, from int, x, y float64, dir kit.Actio
 			along, across = math.Hypot(along, across), 0
 		}
 		if along == 0 && across == 0 && from >= 0 {
-			if (i > from) != (dir == kit.NearRight || dir == kit.NearDown) {
+			if (i < from) != back {
 				continue
 			}
 			// the next of those in one place, before all others
@@ -52,7 +53,7 @@ func near(a *axes, w window, spots []spot, from int, x, y float64, dir kit.Actio
 		if across > along { // out of the cone: only where nothing is in it
 			cost += 1e3
 		}
-		if cost < least {
+		if cost < least || cost == least && back { // so that all in one place are come by
 			best, least = i, cost
 		}
 	}

@@ -10,7 +10,7 @@ import (
 func (s Screen) panel(w *kit.World, sel *spot, width int) []words {
 	var out []words
 	say := func(role kit.Role, text string) {
-		for _, line := range kit.Wrap(text, width, 2) {
+		for _, line := range kit.Break(text, width, 2) {
 			out = append(out, words{{role, line}})
 		}
 	}

@@ -74,12 +74,13 @@ func lifeName(c *stage.Curve) string {
 	return "life of " + c.Name
 }
 
-// The rows from which on the lives of other stars have room.
-const roomForLives = 26
+// roomForLives tells whether the lives of other stars have room: as sparse as
+// their dots are, without fine ones they are dust on a small screen.
+func (b *board) roomForLives() bool { return b.rows >= 44 || b.rows >= 26 && b.glyphs == kit.Braille }
 
 // strokes is every how many dots a line has one, with dots as fine as braille
 // and without.
-var strokes = map[stage.Sort][2]int{stage.ZeroAge: {2, 1}, stage.Life: {5, 9}, stage.Cooling: {3, 4}, stage.Strip: {4, 7}, stage.ClumpBox: {1, 1}}
+var strokes = map[stage.Sort][2]int{stage.ZeroAge: {2, 1}, stage.Life: {5, 6}, stage.Cooling: {3, 1}, stage.Strip: {4, 2}, stage.ClumpBox: {1, 1}}
 
 // lines draws all lines but the track.
 func (b *board) lines(curves []stage.Curve, but int) {
@@ -89,7 +90,7 @@ func (b *board) lines(curves []stage.Curve, but int) {
 	}
 	for i := range curves {
 		c := &curves[i]
-		if i == but || c.Sort == stage.Life && b.rows < roomForLives {
+		if i == but || c.Sort == stage.Life && !b.roomForLives() {
 			continue
 		}
 		ink := kit.Dim
@@ -244,7 +245,7 @@ func (b *board) names(curves []stage.Curve, but int) {
 	for _, want := range []stage.Sort{stage.ZeroAge, stage.ClumpBox, stage.Cooling, stage.Strip, stage.Life} {
 		for i := range curves {
 			c := &curves[i]
-			if i == but || c.Sort != want || c.Sort == stage.Life && b.rows < roomForLives {
+			if i == but || c.Sort != want || c.Sort == stage.Life && !b.roomForLives() {
 				continue
 			}
 			key := string(rune('0'+int(c.Sort))) + c.Name
@@ -269,7 +270,7 @@ func (b *board) name(c *stage.Curve) bool {
 		}
 	})
 	ends := [2][2]int{last, first}
-	if c.Sort == stage.Strip { // strips are open above
+	if c.Sort == stage.Strip || c.Sort == stage.ZeroAge { // strips are open above, and there it is less crowded
 		ends = [2][2]int{first, last}
 		if first[1] > last[1] {
 			ends = [2][2]int{last, first}

@@ -36,9 +36,17 @@ func trackOf(v *stage.Verdict) track {
 		t.feh = int16(math.Round(v.FeH / fehStep))
 	}
 	if lost[v.Best] {
-		t.best = v.Best
+		t.best = kernel(v.Best)
 	}
 	return t
+}
+
+// kernel puts a planetary nebula down to the star within.
+func kernel(best string) string {
+	if best == string(targets.Neb) {
+		return string(targets.CSPN)
+	}
+	return best
 }
 
 func (t track) massMsun() float64 { return math.Pow(10, float64(t.mass)*massStep) }
@@ -82,7 +90,7 @@ func (t track) pick(curves []stage.Curve) int {
 func (t track) massOn(c *stage.Curve) float64 {
 	for k := range c.Points {
 		p := &c.Points[k]
-		if t.best == "" || string(p.Stage) == t.best || c.Sort == stage.Cooling {
+		if t.best == "" || kernel(string(p.Stage)) == t.best || c.Sort == stage.Cooling {
 			return p.MassMsun
 		}
 	}

@@ -32,6 +32,9 @@ func layoutOf(width, height int) layout {
 	if width >= withPanel {
 		l.below, l.panel = 0, min(max(width*3/10, 36), 56)
 	}
+	l.header = min(l.header, height)
+	l.below = min(l.below, height-l.header)
+	l.axis = min(l.axis, height-l.header-l.below)
 	l.cols = max(width-l.labels-1-l.panel, 0)
 	l.rows = max(height-l.header-l.below-l.axis, 0)
 	return l
@@ -43,7 +46,9 @@ func (s Screen) View(w *kit.World, width, height int) string {
 	l := layoutOf(width, height)
 	kit.Header(w, p, l.header)
 	if w.Snap == nil {
-		p.Put(kit.Dim, "working out the list ...").Line()
+		if height > l.header {
+			p.Put(kit.Dim, "working out the list ...").Line()
+		}
 		p.Fill(height)
 		return p.String()
 	}
@@ -234,7 +239,11 @@ func (pic *picture) room(over map[int][]kit.Over, col, row, n int) (r, c int, ok
 		return 0, 0, false
 	}
 	least := math.MaxInt
-	for rank, at := range [][2]int{{row, right + 2}, {row, left - 1 - n}, {row - 1, col + 2}, {row + 1, col + 2}, {row - 1, col - 1 - n}, {row + 1, col - 1 - n}} {
+	places := [][2]int{{row, right + 2}, {row, left - 1 - n}}
+	for by := 1; by <= 3; by++ {
+		places = append(places, [2]int{row - by, col + 2}, [2]int{row + by, col + 2}, [2]int{row - by, col - 1 - n}, [2]int{row + by, col - 1 - n})
+	}
+	for rank, at := range places {
 		if at[1] < 0 || at[1]+n > pic.key.cols || at[0] < 0 || at[0] >= pic.key.rows {
 			continue
 		}

@@ -40,7 +40,7 @@ func short(v float64) string {
 	switch a := math.Abs(v); {
 	case math.IsNaN(v) || math.IsInf(v, 0):
 		return "?"
-	case a >= 1e7 || a < 1e-4 && a > 0:
+	case a >= 1e7 || a < 1e-3 && a > 0:
 		return strings.Replace(strings.Replace(strconv.FormatFloat(v, 'e', 1, 64), "e+0", "e", 1), "e-0", "e-", 1)
 	case a >= 100:
 		unit := math.Pow(10, math.Floor(math.Log10(a))-2)
