@@ -39,7 +39,7 @@ var scenes = []struct {
 	{"diagram", []string{"j", "m", "j", "j", "h"}},
 	{"diagram_colour", []string{"j", "j", "j", "h", "h"}},
 	{"diagram_zoomed", []string{"G", "h", ",", "m", "+", "+", "left"}},
-	{"diagram_not_placed", []string{"g", "h"}},
+	{"diagram_not_placed", strings.Fields(strings.Repeat("j ", 14) + "h")},
 	{"entry", []string{"a", "T", "1", "enter", "0", "5", " ", "3", "4", " ", "3", "1", " ", "-", "2", "2", " ", "0", "0", " ", "5", "2", "enter", "w", "d"}},
 	{"plain", []string{"c"}},
 	{"help", []string{"?"}},

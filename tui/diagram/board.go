@@ -78,7 +78,7 @@ func (b *board) walk(points []stage.Point, visit func(x, y, point int, broken bo
 			continue
 		}
 		if x0, y0, x1, y1, ok := clip(lastX, lastY, x, y, w, h); ok {
-			n := int(math.Max(math.Abs(x1-x0), math.Abs(y1-y0))) + 1
+			n := int(math.Max(math.Abs(x1-x0), math.Abs(y1-y0))) + 2 // none is jumped over by rounding
 			for k := 0; k <= n; k++ {
 				f := float64(k) / float64(n)
 				dx, dy := min(int(x0+f*(x1-x0)), 2*b.cols-1), min(int(y0+f*(y1-y0)), 4*b.rows-1)

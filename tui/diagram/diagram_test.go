@@ -93,7 +93,7 @@ func press(t interface{ Fatal(...any) }, s Screen, w *kit.World, keys ...string)
 func view(s Screen, w *kit.World) string {
 	l := layoutOf(w.Width, w.Body())
 	p := kit.NewPen(w.Look, w.Width)
-	s.plot(p, l, overlay(s.pic, s.selected(w), name(w, s.selected(w))), func(int) { p.Line() })
+	s.plot(p, l, overlay(s.pic, s.selected(w), s.name(w, s.selected(w))), func(int) { p.Line() })
 	for _, line := range s.below(w, s.selected(w), w.Width, 2) {
 		for _, piece := range line {
 			p.Put(piece.role, piece.text)

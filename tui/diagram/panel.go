@@ -35,6 +35,11 @@ func (s Screen) panel(w *kit.World, sel *spot, width int) []words {
 		}
 	}
 	gap()
+	if sel != nil {
+		if n := s.company(sel); n > 0 {
+			say(kit.Text, fmt.Sprintf("+%d: that many more in its cell", n))
+		}
+	}
 	for _, p := range s.notes(sel) {
 		say(p.role, p.text)
 	}

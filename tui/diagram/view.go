@@ -2,6 +2,8 @@ package diagram
 
 import (
 	"math"
+	"strconv"
+	"strings"
 
 	"evenfall/tui/kit"
 )
@@ -74,7 +76,7 @@ func (s Screen) View(w *kit.World, width, height int) string {
 			beside(line)
 		}
 	} else {
-		s.plot(p, l, overlay(s.pic, sel, name(w, sel)), beside)
+		s.plot(p, l, overlay(s.pic, sel, s.name(w, sel)), beside)
 	}
 	for _, line := range s.below(w, sel, width, l.below) {
 		for _, piece := range line {
@@ -98,9 +100,9 @@ func (s Screen) plot(p *kit.Pen, l layout, over map[int][]kit.Over, beside func(
 	}
 	for row := range l.rows {
 		if labels[row] != "" {
-			p.Right(kit.Dim, l.labels-1, labels[row]).Put(kit.Dim, "+")
+			p.Right(kit.Text, l.labels-1, labels[row]).Put(kit.Text, "+")
 		} else {
-			p.To(l.labels-1).Put(kit.Dim, "|")
+			p.To(l.labels-1).Put(kit.Text, "|")
 		}
 		pic.raster.Row(p, row, over[row])
 		beside(row)
@@ -125,11 +127,11 @@ func (s Screen) plot(p *kit.Pen, l layout, over map[int][]kit.Over, beside func(
 		}
 	}
 	if l.axis > 1 {
-		p.To(l.labels-1).Put(kit.Dim, "+"+string(rule))
+		p.To(l.labels-1).Put(kit.Text, "+"+string(rule))
 		beside(l.rows)
 	}
 	if l.axis > 0 {
-		p.To(l.labels).Put(kit.Dim, string(numbers))
+		p.To(l.labels).Put(kit.Text, string(numbers))
 		beside(l.rows + l.axis - 1)
 	}
 }
@@ -143,14 +145,18 @@ func cellOf(v, from, to float64, cells int) int {
 	return min(int(f*float64(cells)), cells-1)
 }
 
-// name is what stands beside the selected star.
-func name(w *kit.World, sel *spot) string {
+// name is what stands beside the selected star: its name, and how many more
+// there are in its cell.
+func (s Screen) name(w *kit.World, sel *spot) string {
 	if sel == nil || w.Entry() == nil {
 		return ""
 	}
 	text := ascii(w.Entry().Target.Name)
 	if w.Marks[w.Selected] {
 		text = "* " + text
+	}
+	if n := s.company(sel); n > 0 {
+		text += " +" + strconv.Itoa(n)
 	}
 	return text
 }
@@ -211,22 +217,27 @@ func overlay(pic *picture, sel *spot, name string) map[int][]kit.Over {
 	}
 	over[row] = append(over[row], kit.Over{Column: col - 1, Ink: kit.Selected, Text: "[" + string(sel.sign) + "]"})
 	if r, c, fits := pic.room(over, col, row, len(name)); fits {
-		over[r] = append(over[r], kit.Over{Column: c, Ink: kit.Selected, Text: name})
+		blank := strings.Repeat(" ", len(name)+2) // so that nothing runs into it
+		over[r] = append(over[r], kit.Over{Column: c - 1, Text: blank}, kit.Over{Column: c, Ink: kit.Selected, Text: name})
 	}
 	return over
 }
 
-// extent returns the cells that an error bar covers, and whether its ends are
-// within the window.
+// extent returns the cells of which an error bar reaches the middle, and
+// whether its ends are within the window.
 func extent(lo, hi, from, to float64, cells int) (a, b int, endA, endB bool) {
 	fa, fb := (lo-from)/(to-from), (hi-from)/(to-from)
 	if fa > fb {
 		fa, fb = fb, fa
 	}
 	endA, endB = fa >= 0, fb < 1
-	limit := func(f float64) int { return int(math.Max(0, math.Min(f*float64(cells), float64(cells-1)))) }
-	return limit(fa), limit(fb), endA, endB
+	limit := func(cell float64) int { return int(math.Max(0, math.Min(cell, float64(cells-1)))) }
+	return limit(math.Ceil(fa*float64(cells) - 0.5)), limit(math.Floor(fb*float64(cells) - 0.5)), endA, endB
 }
+
+// offRow is what it costs a name to stand on another row than its star, where
+// a hidden cell costs 10: another row is another line to send.
+const offRow = 25
 
 // room finds a place for the name: beside the star, beyond its error bars,
 // above or below, where it hides the fewest letters and pieces of the track.
@@ -257,6 +268,9 @@ func (pic *picture) room(over map[int][]kit.Over, col, row, n int) (r, c int, ok
 			if at[0] != row && o.Column+len(o.Text) > at[1]-1 && o.Column <= at[1]+n {
 				hides += 20
 			}
+		}
+		if at[0] != row {
+			rank += offRow
 		}
 		if cost := 10*hides + rank; cost < least {
 			least, r, c, ok = cost, at[0], at[1], true

@@ -159,9 +159,6 @@ func (s Screen) notes(sel *spot) []piece {
 		default:
 			say(kit.Dim, "no track for it")
 		}
-		if n := s.company(sel); n > 0 {
-			say(kit.Text, "%d more in its cell", n)
-		}
 	}
 	out = append(out, s.left()...)
 	if s.zoom > 0 {
@@ -172,6 +169,9 @@ func (s Screen) notes(sel *spot) []piece {
 
 // company is how many other stars stand in the selected one's cell.
 func (s Screen) company(sel *spot) int {
+	if s.pic == nil {
+		return 0
+	}
 	k := &s.pic.key
 	x, y, ok := pairs[k.axes].place(&sel.v.Place)
 	if !ok {

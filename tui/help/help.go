@@ -61,7 +61,7 @@ var signs = []string{
 	"night strip: s Sun up, c civil, n nautical, a astronomical twilight, . dark, m dark with the Moon up, | the moment shown, figures: hours UTC",
 	"star: = should, - can be taken, b best; the curve is its airmass, 1 at the top",
 	"diagram: m main sequence, s subgiant, g red giant, c clump, h horizontal branch, e t early and pulsing AGB, p past it, n k nebula and kernel,",
-	"  b subdwarf, w white dwarf, r massive, a accretes, ? undecided; a capital: several; [ ] the selected star with 68 % bars; the track follows when you rest on it",
+	"  b subdwarf, w white dwarf, r massive, a accretes, ? undecided; a capital: several; [ ] the selected star with 68 % bars, +3: three more in its cell; the track follows when you rest on it",
 	"filter: words that must occur, and conditions such as kind=wd alt>35 x<1.5 V<16 stage=TPAGB moon>60 left>90 mark=yes; = != < <= > >=",
 	"  columns: kind stage ends mark alt x moon sun ha ra dec mag sb left best bestx period, and bands of magnitudes",
 	"NOT NOW: the moment shown is one of your own; n goes back to the clock",

@@ -63,8 +63,8 @@ func (p *Pen) cells(list []canvasCell) {
 		}
 		cell := &list[i]
 		if cell.blank() {
-			if p.on != "" && p.on == p.look.start[Selected] { // no underlined blanks
-				p.turn("")
+			if p.on != "" && p.on == p.look.start[Selected] && (cell.char == 0 || cell.ink != Selected) {
+				p.turn("") // no underlined blanks but within a name
 			}
 			p.b.WriteByte(' ')
 			p.used++
