@@ -139,11 +139,25 @@ func (b *board) line(points []stage.Point, every int, ink kit.Role) {
 
 // step is a cell that the track goes through.
 type step struct {
-	col, row     int
-	x, y         int // where it enters, in dots
-	last         bool
-	point        int
-	firstOfStage bool
+	col, row int
+	x, y     int  // where it enters, in dots
+	last     bool // before a gap
+	point    int  // of the line, to which it leads
+}
+
+// thinned leaves out the cells that a track merely cuts the corner of.
+func thinned(steps []step) []step {
+	out := steps[:0]
+	for _, s := range steps {
+		if n := len(out); n >= 2 && !out[n-1].last && !out[n-2].last {
+			dc, dr := s.col-out[n-2].col, s.row-out[n-2].row
+			if dc*dc == 1 && dr*dr == 1 {
+				out = out[:n-1]
+			}
+		}
+		out = append(out, s)
+	}
+	return out
 }
 
 // trail draws the track of the selected star: a double line of dots, or signs
@@ -164,6 +178,9 @@ func (b *board) trail(points []stage.Point) []step {
 			steps = append(steps, step{col: x / 2, row: y / 4, x: x, y: y, point: point})
 		}
 	})
+	if b.glyphs != kit.Braille {
+		steps = thinned(steps)
+	}
 	for i := range steps {
 		b.taken[steps[i].row*b.cols+steps[i].col] = true
 		if b.glyphs != kit.Braille {

@@ -276,5 +276,8 @@ func (b *board) name(c *stage.Curve) bool {
 			ends = [2][2]int{last, first}
 		}
 	}
+	if c.Sort == stage.Life { // all lives end among the white dwarfs
+		ends = [2][2]int{first, first}
+	}
 	return seen && (b.beside(ends[0][0], ends[0][1], kit.Dim, c.Name) || b.beside(ends[1][0], ends[1][1], kit.Dim, c.Name))
 }

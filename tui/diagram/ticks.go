@@ -31,6 +31,7 @@ var (
 	evenDivisions = []division{{step: 0.01}, {step: 0.02}, {step: 0.05}, {step: 0.1}, {step: 0.2}, {step: 0.5}, {step: 1}, {step: 2}, {step: 5}, {step: 10}}
 	logDivisions  = []division{
 		{step: 0.01, decades: 1}, {step: 0.02, decades: 1}, {step: 0.05, decades: 1}, {step: 0.1, decades: 1}, {step: 0.2, decades: 1}, {step: 0.5, decades: 1},
+		{mantissas: []float64{1, 1.2, 1.5, 2, 2.5, 3, 4, 5, 6, 8}, decades: 1}, {mantissas: []float64{1, 1.5, 2, 3, 5, 7}, decades: 1},
 		{mantissas: []float64{1, 2, 3, 5, 7}, decades: 1}, {mantissas: []float64{1, 2, 5}, decades: 1}, {mantissas: []float64{1, 3}, decades: 1},
 		{mantissas: []float64{1}, decades: 1}, {mantissas: []float64{1}, decades: 2}, {mantissas: []float64{1}, decades: 4},
 	}

@@ -92,14 +92,16 @@ func (s Screen) below(w *kit.World, sel *spot, width, lines int) []words {
 	for _, p := range first {
 		used += len(p.text)
 	}
-	add := func(role kit.Role, text string) {
-		if used+3+len(text) <= width {
-			first, used = append(first, piece{role, "   " + text}), used+3+len(text)
+	add := func(role kit.Role, text string) bool {
+		if used+3+len(text) > width {
+			return false
 		}
+		first, used = append(first, piece{role, "   " + text}), used+3+len(text)
+		return true
 	}
 	if sel != nil {
-		if why := s.missing(sel); why != "" {
-			add(kit.Warn, why)
+		if why := s.missing(sel); why != "" && !add(kit.Warn, why) && !add(kit.Warn, "not placed: "+whyNot(sel.v)) {
+			add(kit.Warn, "not placed")
 		}
 		for _, f := range figures(&sel.v.Place, s.axes) {
 			add(kit.Text, f)
