@@ -21,6 +21,7 @@ type line struct {
 // Shape of the table of a line.
 const (
 	pointsPerKernel = 3.0
+	kernelOfGroup   = 0.5  // distances nearer than this in magnitude go together
 	kernelsWide     = 10.0 // how far it goes beyond the outermost distance
 	kernelOfSpread  = 16.0 // the kernel is never less than the spread over this
 	kernelOfGap     = 0.29 // nor, about, than this much of the gap: 1/√12, as if it were filled evenly
@@ -77,21 +78,26 @@ func (l *line) tabulate(distances []Distance, mu, ci []float64, kernel, common f
 	l.lnH, l.colour = make([]float64, points), make([]float64, points)
 	l.weight, l.lnWeight = make([]float64, points), make([]float64, points)
 	sum, first, second := make([]float64, points), make([]float64, points), make([]float64, points)
-	for k, d := range distances {
-		own := math.Hypot(kernel, kernelOfGap*gapAt(mu, k))
+	for _, g := range groups(distances, mu, ci, kernel) {
+		own := math.Sqrt(kernel*kernel + g.variance)
 		slope := common / (own * own)
 		// What the magnitude tells of the reddening is taken off the colour's error.
 		left := l.colourErr*l.colourErr - common*slope
 		reach := kernelsWide * own
-		from := max(0, int((mu[k]-reach-lo)*l.perMag))
-		upto := min(points-1, int((mu[k]+reach-lo)*l.perMag)+1)
+		from := max(0, int((g.mag-reach-lo)*l.perMag))
+		upto := min(points-1, int((g.mag+reach-lo)*l.perMag)+1)
+		// The normal density step by step: each ratio is the last times a constant.
+		x, step := (lo+float64(from)/l.perMag-g.mag)/own, 1/(l.perMag*own)
+		w := g.weight / own * math.Exp(-x*x/2)
+		ratio, bend := math.Exp(-step*(x+step/2)), math.Exp(-step*step)
+		c, perPoint := g.colour+slope*x*own-l.colourMiddle, slope*step*own
 		for p := from; p <= upto; p++ {
-			dm := lo + float64(p)/l.perMag - mu[k]
-			w := d.Weight / own * math.Exp(-dm*dm/(2*own*own))
-			c := ci[k] + slope*dm - l.colourMiddle
 			sum[p] += w
 			first[p] += w * c
 			second[p] += w * (c*c + left)
+			w *= ratio
+			ratio *= bend
+			c += perPoint
 		}
 	}
 	top := 0.0
@@ -111,13 +117,34 @@ func (l *line) tabulate(distances []Distance, mu, ci []float64, kernel, common f
 	}
 }
 
-// gapAt is the mean distance of a point from its neighbours.
-func gapAt(x []float64, k int) float64 {
-	a, b := max(0, k-1), min(len(x)-1, k+1)
-	if a == b {
-		return 0
+// group is several near distances taken as one.
+type group struct{ weight, mag, colour, variance float64 }
+
+// groups joins neighbours that the kernel cannot tell apart, and gives each
+// group the variance that it fills.
+func groups(distances []Distance, mu, ci []float64, kernel float64) []group {
+	out := make([]group, 0, 64)
+	for a := 0; a < len(mu); {
+		var g group
+		b := a
+		for ; b < len(mu) && mu[a]-mu[b] <= kernelOfGroup*kernel; b++ {
+			w := distances[b].Weight
+			g.weight += w
+			g.mag += w * mu[b]
+			g.colour += w * ci[b]
+		}
+		g.mag, g.colour = g.mag/g.weight, g.colour/g.weight
+		before, after := max(0, a-1), min(len(mu)-1, b)
+		gap := (mu[before] - mu[after]) / float64(max(1, after-before)) * kernelOfGap
+		for k := a; k < b; k++ {
+			d := mu[k] - g.mag
+			g.variance += distances[k].Weight / g.weight * d * d
+		}
+		g.variance += gap * gap
+		out = append(out, g)
+		a = b
 	}
-	return math.Abs(x[b]-x[a]) / float64(b-a)
+	return out
 }
 
 // reach returns the magnitudes over which the line is less than so many sigma

@@ -7,7 +7,7 @@ import (
 )
 
 // ignored is how far below the best, in the logarithm, a cell no longer counts.
-const ignored = 14.0
+const ignored = 11.0
 
 // answer turns the weights of the cells into intervals.
 func (p *problem) answer() Answer {

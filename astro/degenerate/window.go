@@ -52,7 +52,7 @@ func (p *problem) window(sigmas float64) bool {
 // How coarse the cells may be taken: a step may change no datum by more than
 // this many of its sigmas.
 const (
-	largestStep  = 0.6
+	largestStep  = 0.9
 	largestSteps = 8
 )
 
@@ -114,6 +114,9 @@ func stepsFor(square float64) int {
 func (p *problem) weigh() {
 	g := p.g
 	p.best, p.minChi2 = math.Inf(-1), math.Inf(1)
+	if p.cells == nil {
+		p.cells = make([]cell, 0, 1024)
+	}
 	mags, colours, gravities := g.cell[p.q], g.cell[qColour], g.cell[qLogG]
 	for i := upTo(p.rowFrom, p.stepT); i < p.rowUpto; i += p.stepT {
 		if p.from[i] >= p.upto[i] {
@@ -154,7 +157,9 @@ func (p *problem) weigh() {
 				p.best, p.bestRow = ln, i
 			}
 			p.minChi2 = math.Min(p.minChi2, chi2)
-			p.cells = append(p.cells, cell{int32(i), int32(j), ln})
+			if ln >= p.best-ignored {
+				p.cells = append(p.cells, cell{int32(i), int32(j), ln})
+			}
 		}
 	}
 }
