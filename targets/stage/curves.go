@@ -13,13 +13,16 @@ import (
 
 // Masses, Msun, and ages, yr, that the curves are drawn for.
 var (
-	coolingMasses = []float64{0.4, 0.6, 0.8, 1.0, 1.2}
+	coolingMasses = []float64{0.4, 0.6, 1.0}
 	coolingMarks  = []struct {
 		yr   float64
 		mark string
 	}{{1e7, "10 Myr"}, {1e8, "100 Myr"}, {1e9, "1 Gyr"}, {3e9, "3 Gyr"}, {1e10, "10 Gyr"}}
 	usualLives = []float64{1, 2, 5}
 )
+
+// markedMass is the mass whose cooling line carries ages.
+const markedMass = 0.6
 
 // Curves returns the lines that the judgement rests on, for drawing: the
 // zero-age main sequence, the red clump, lives of some masses, cooling lines
@@ -139,7 +142,7 @@ func (m *Models) cooling(mass float64) Curve {
 		}
 		p := Point{LogT: logT, LogL: math.Log10(q.LumLsun), Colour: q.BPRPMag, AbsG: q.MGMag, AgeYr: q.CoolingAgeYr, MassMsun: mass, Stage: targets.Dwarf}
 		for _, age := range coolingMarks {
-			if last > 0 && last < age.yr && p.AgeYr >= age.yr {
+			if mass == markedMass && last > 0 && last < age.yr && p.AgeYr >= age.yr {
 				p.Mark = age.mark
 			}
 		}

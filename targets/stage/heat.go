@@ -248,12 +248,26 @@ func (s *sight) intoPlace(t *targets.Target) {
 		s.place.LogT = interval(stellar.Measured(math.Log10(s.teff.Value), s.teff.Err/s.teff.Value/math.Ln10))
 		s.place.LogL = interval(s.logL)
 	}
-	if s.place.Why == "" && !s.place.HROK && !s.place.CMDOK {
-		s.place.Why = strings.Join(s.missing, "; ")
+	s.place.Why = cmp.Or(s.place.Why, s.whyNot(t))
+}
+
+// whyNot says why a target has no place on one of the diagrams.
+func (s *sight) whyNot(t *targets.Target) string {
+	switch {
+	case s.place.HROK && s.place.CMDOK:
+		return ""
+	case t.Kind == targets.Interacting:
+		return "two stars and what flows between them"
+	case !s.distanceOK && !s.place.HROK:
+		return "no parallax"
+	case s.place.HROK:
+		return "no G, BP and RP with a distance"
+	case !s.teff.Known:
+		return "no temperature, and no colour that gives one"
+	case s.farErr > farthestErr:
+		return "the parallax says too little"
 	}
-	if t.Kind == targets.Interacting && s.place.Why == "" {
-		s.place.Why = "two stars and what flows between them: one place on the diagram stands for none of them"
-	}
+	return "no magnitude that gives a luminosity"
 }
 
 // below tells whether a target stands below the main sequence, where white

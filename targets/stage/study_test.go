@@ -187,7 +187,7 @@ func TestCurves(t *testing.T) {
 			}
 		}
 	}
-	if sorts[ZeroAge] != 1 || sorts[ClumpBox] != 1 || sorts[Life] < 3 || sorts[Cooling] < 4 || sorts[Strip] < 4 {
+	if sorts[ZeroAge] != 1 || sorts[ClumpBox] != 1 || sorts[Life] < 3 || sorts[Cooling] < 3 || sorts[Strip] < 4 {
 		t.Errorf("sorts of curves: %v", sorts)
 	}
 }
