@@ -37,7 +37,7 @@ var layers = map[string][]string{
 	"targets":              {"astro"},
 	"targets/table":        {"targets", "astro"},
 	"targets/instrument":   {"targets", "astro"},
-	"targets/stage":        {"targets", "astro/..."},
+	"targets/stage":        {"targets", "targets/stage/tracks", "astro/..."},
 	"targets/light":        {"targets", "targets/stage", "astro/..."},
 	"targets/exposure":     {"targets", "targets/instrument", "targets/light", "astro/..."},
 	"targets/sweep":        {"targets", "astro/..."},
