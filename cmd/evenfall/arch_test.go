@@ -68,6 +68,8 @@ var layers = map[string][]string{
 	"tui/check":       {"tui/desk", "tui/kit", "targets/...", "astro/..."},
 	"tui/desk":        {"tui/kit", "tui/next", "tui/star", "tui/diagram", "tui/entry", "tui/plain", "tui/help", "tui/log", "tui/weather", "targets/...", "astro/..."},
 	"cmd/evenfall":    {"tui/...", "targets/...", "astro/..."},
+
+	"targets/light/wander": {"targets", "astro/..."},
 }
 
 // fences confine what touches the world, and what must stay behind a door.
