@@ -51,13 +51,13 @@ const (
 //     matter, and for independent errors: slow drifts make it far too small.
 //  2. BestSigma = sqrt(6/N) s / (pi span A), s the scatter about the sine.
 //
-// Source: [cite.ZechmeisterKuerster2009], equations 4 to 15; false alarm
-// [cite.Baluev2008], equations 5 and 6 with the reduction of chi squared in
-// units of that about the mean; BestSigma [cite.MontgomeryODonoghue1999]. From
-// memory, not checked against the publications.
+// Source: [cite.ZechmeisterKuerster2009]; false alarm [cite.Baluev2008], for
+// powers in units of chi squared about the mean; BestSigma
+// [cite.MontgomeryODonoghue1999]. From memory, not checked against the
+// publications.
 //
 // Checked: TestLombScargle, against [LeastSquares], to 1e-9; TestFalseAlarm,
-// against noise; FuzzLombScargle.
+// against noise; TestFrequencyError; FuzzLombScargle.
 func LombScargle(readings []Reading, band Frequencies) (Periodogram, error) {
 	s, err := newSeries(readings)
 	if err != nil {

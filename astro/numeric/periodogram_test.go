@@ -23,7 +23,7 @@ func uneven(seed uint64, n int, freq, amplitude, noise float64) []Reading {
 
 // The power is what least squares with a constant, a sine and a cosine takes
 // away from chi squared: an independent way to every value, and to the
-// amplitude. Equation 4 of Zechmeister & Kürster 2009.
+// amplitude. Zechmeister & Kürster 2009 define it so.
 func TestLombScargle(t *testing.T) {
 	readings := uneven(7, 40, 0.01, 1, 0.5)
 	p, err := LombScargle(readings, Frequencies{Lo: 0.001, Hi: 0.05, Oversample: 4})

@@ -63,8 +63,10 @@ const (
 //     cycle per root of a cycle.
 //  2. Without magnitudes the catalogue's epoch is carried to each date anew.
 //  3. A change of the period over decades is not in the model.
-//  4. On 60 Miras with 30 recent magnitudes the central value is off by some
-//     0.4 to 0.5 mag rms 10 to 200 days ahead, and 80 % intervals hold 80 to 85 %.
+//  4. On 39 Miras with 30 recent magnitudes the median was off by 0.46 mag rms
+//     10 to 200 days ahead, and 80 % intervals held 80 %; with none, 1.4 mag.
+//  5. Semiregulars, photographic extremes and carbon stars rest on 20 to 57, 57
+//     and 8 stars that were not scored apart.
 //
 // Source: this project's measurement on ASAS-3, [cite.Pojmanski2002].
 //
@@ -250,13 +252,17 @@ func (f Forecast) Words() string {
 	if f.PhaseStatus == PhaseUnknown {
 		s += ", the range only"
 	}
+	age := fmt.Sprintf("%.0f d old", f.AgeLastD)
+	if f.AgeLastD < 0 {
+		age = fmt.Sprintf("%.0f d after this date", -f.AgeLastD)
+	}
 	switch {
 	case f.N+f.NOther == 0:
 		s += "; no magnitudes used"
 	case f.N+f.NOther == 1:
-		s += fmt.Sprintf("; 1 magnitude used, %.0f d old", f.AgeLastD)
+		s += "; 1 magnitude used, " + age
 	default:
-		s += fmt.Sprintf("; %d magnitudes used, the last %.0f d old", f.N+f.NOther, f.AgeLastD)
+		s += fmt.Sprintf("; %d magnitudes used, the last %s", f.N+f.NOther, age)
 	}
 	if !math.IsNaN(f.CyclesSinceEpoch) {
 		s += fmt.Sprintf("; %.1f cycles since the catalogue's maximum", f.CyclesSinceEpoch)

@@ -91,6 +91,8 @@ func (m *model) start(n *node) {
 //   - own: error of the period itself over the period, added in quadrature.
 //
 // Source: this project's measurement on 339 Miras of ASAS-3, [cite.Pojmanski2002].
+//
+// Checked: TestPeriodDensity.
 func periodDensity(x, own float64) float64 {
 	p := func(name string) float64 { return average("Mira", "catalogue_period", name) }
 	core, wide := math.Hypot(p("core_sd_lnP"), own), math.Hypot(p("wide_sd_lnP"), own)
@@ -216,7 +218,7 @@ func (f *Filter) Update(o Obs) error {
 	}
 	f.used = append(f.used, Judged{o, narrow / weight})
 	f.stateJD = o.JD
-	if math.IsNaN(f.firstJD) {
+	if !(f.firstJD <= o.JD) {
 		f.firstJD = o.JD
 	}
 	if !(f.lastJD > o.JD) {

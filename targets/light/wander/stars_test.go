@@ -112,7 +112,8 @@ func near(obs []Obs, jd, within float64) (Obs, bool) {
 }
 
 // crps is the continuous ranked probability score of a forecast, mag:
-// the integral of (F(x) - 1[x >= y])^2. Gneiting & Raftery 2007, equation 20.
+// the integral of (F(x) - 1[x >= y])^2, as [cite.GneitingRaftery2007], from
+// memory.
 func crps(f Forecast, y float64) float64 {
 	lo, hi := f.mix.ends()
 	lo, hi = math.Min(lo, y), math.Max(hi, y)

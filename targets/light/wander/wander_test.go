@@ -54,6 +54,13 @@ func TestPrior(t *testing.T) {
 		check.Near(t, m.driftSD[1], c.driftU1, 0.001, "phase wander, %s", name)
 		check.Near(t, m.driftSD[2], c.w, 1e-9, "fast drift, %s", name)
 		check.Near(t, m.jitter, c.jitter, 1e-9, "jitter, %s", name)
+		slow, tau := 0.274, [2]float64{0.50, 0.21}
+		if c.e.Class == Semiregular {
+			slow, tau = 0.18, [2]float64{0.53, 0.10}
+		}
+		check.Near(t, m.driftSD[0], slow, 1e-9, "slow drift, %s", name)
+		check.Near(t, m.tauD[1]/c.e.PeriodD, tau[0], 1e-9, "its time, %s", name)
+		check.Near(t, m.tauD[2]/c.e.PeriodD, tau[1], 1e-9, "time of the fast drift, %s", name)
 	}
 }
 
@@ -89,6 +96,14 @@ func TestPriorHarmonics(t *testing.T) {
 		check.Near(t, m.tauD[0], 200, 1e-9, "time of the slow drifts, half a period")
 		check.Near(t, m.tauD[2], 84, 1e-9, "time of the fast one, 0.21 of a period")
 	}
+}
+
+// 0.75 N(0, 0.009) + 0.25 N(0, 0.028) by hand, but for the root of 2 pi; a
+// period's own error adds in quadrature.
+func TestPeriodDensity(t *testing.T) {
+	check.Near(t, periodDensity(0, 0), 0.75/0.009+0.25/0.028, 1e-9, "at the listed period")
+	check.Near(t, periodDensity(-0.028, 0), 0.75/0.009*math.Exp(-4.8395062)+0.25/0.028*math.Exp(-0.5), 1e-6, "2.8 per cent off")
+	check.Near(t, periodDensity(0, 0.012), 0.75/0.015+0.25/math.Hypot(0.028, 0.012), 1e-9, "a period found to 1.2 per cent")
 }
 
 func TestRefusals(t *testing.T) {
