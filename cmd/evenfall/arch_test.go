@@ -42,6 +42,8 @@ var layers = map[string][]string{
 	"targets/exposure":     {"targets", "targets/instrument", "targets/light", "astro/..."},
 	"targets/sweep":        {"targets", "astro/..."},
 	"targets/stage/tracks": {"targets", "astro/..."},
+	"astro/bands":          {"astro", "astro/cite", "astro/numeric"},
+	"astro/elements":       {"astro", "astro/cite", "astro/numeric", "astro/timescale", "astro/frame"},
 	"targets/moment": {"targets", "targets/stage", "targets/light", "targets/instrument", "targets/exposure", "targets/sweep",
 		"astro/..."},
 	"targets/run":     {"targets", "targets/table", "targets/instrument", "astro", "astro/timescale"},
