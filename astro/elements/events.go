@@ -246,15 +246,24 @@ func (c *Clock) event(h Happening, cycle float64) (Event, error) {
 		ev.BJDTDB = c.Sight.Date(at, BJDTDB)
 	}
 	if h.Before > 0 || h.After > 0 {
-		if ev.Start, err = c.Sight.Instant(date-h.Before, scale); err != nil {
+		if ev.Start, err = c.near(at, date, -h.Before); err != nil {
 			return Event{}, err
 		}
-		if ev.End, err = c.Sight.Instant(date+h.After, scale); err != nil {
+		if ev.End, err = c.near(at, date, h.After); err != nil {
 			return Event{}, err
 		}
 	}
 	ev.Words = e.words(cycle, ev.Status)
 	return ev, nil
+}
+
+// near returns the instant some days from one whose date is known.
+func (c *Clock) near(at astro.Instant, date, days float64) (astro.Instant, error) {
+	guess, err := shift(at, days)
+	if err != nil {
+		return guess, err
+	}
+	return c.Sight.closeIn(guess, date+days, c.Ephemeris.el.Scale)
 }
 
 // words says what a reader must know of an event's date.

@@ -153,7 +153,7 @@ func (s *Sight) days(t astro.Instant, scale Scale) float64 {
 //  1. Solved by iteration: the light-time changes by 1e-4 of the time, so each
 //     step gains four digits.
 //
-// Checked: TestScales; TestScalesRoundTrip.
+// Checked: TestScales, there and back to 1e-4 s.
 func (s *Sight) Instant(jd float64, scale Scale) (astro.Instant, error) {
 	start := "JD_UTC"
 	if scale == BJDTDB || scale == HJDTT {
@@ -163,15 +163,24 @@ func (s *Sight) Instant(jd float64, scale Scale) (astro.Instant, error) {
 	if err != nil || scale == JDUTC {
 		return at, err
 	}
+	return s.closeIn(at, jd, scale)
+}
+
+// closeEnough is the step, days, after which what is left is below 1e-10 d.
+const closeEnough = 1e-6
+
+// closeIn moves an instant to where the scale reads the date.
+func (s *Sight) closeIn(at astro.Instant, jd float64, scale Scale) (astro.Instant, error) {
 	for range 6 {
 		off := (jd - 2451545) - s.days(at, scale)
 		if math.IsNaN(off) {
 			return astro.Instant{}, fmt.Errorf("time scale %.40q: %w", string(scale), ErrScale)
 		}
+		var err error
 		if at, err = shift(at, off); err != nil {
 			return astro.Instant{}, err
 		}
-		if math.Abs(off) < 1e-10 {
+		if math.Abs(off) < closeEnough {
 			break
 		}
 	}
