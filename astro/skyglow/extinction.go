@@ -17,6 +17,7 @@ const (
 	// not checked against the publication, whose sea-level value they give.
 	aerosolSea, aerosolHeightKm, aerosolAlpha = 0.05, 1.5, 1.3
 	leastAerosol                              = 0.01 // at 1 micrometre, where a measured V asks for less
+	mostExtinction                            = 10.0 // mag per airmass; beyond, no star is seen
 )
 
 // ozoneNm and ozoneA are the absorption of ozone, per atm cm; 0 outside, the
@@ -139,13 +140,18 @@ type AirAbove struct {
 //     measured optical band nearest to it does so. The measured bands
 //     themselves keep what was measured.
 //  2. Oxygen (687, 760 nm) and water bands are left out.
-//  3. Errors: a value that is no number, a measured extinction below 0.
+//  3. Errors: a value that is no number or beyond nature; a measured extinction
+//     outside 0 to 10.
 //
 // Checked: TestExtinctionPublished, TestMeasuredExtinction.
 func NewExtinction(a AirAbove) (*Extinction, error) {
-	for what, v := range map[string]float64{"height": a.HeightM, "ozone": a.OzoneDU, "dust": a.DustMag, "aerosol": a.Aerosol.K + a.Aerosol.Alpha} {
-		if math.IsNaN(v) || math.IsInf(v, 0) || v < -1e3 || v > 1e5 {
-			return nil, fmt.Errorf("the air's %s is %v; give a number", what, v)
+	for _, c := range []struct {
+		what      string
+		v, lo, hi float64
+	}{{"height in m", a.HeightM, -500, 9000}, {"ozone in DU", a.OzoneDU, 0, 1000}, {"dust in mag", a.DustMag, 0, mostExtinction},
+		{"aerosol in mag", a.Aerosol.K, 0, mostExtinction}, {"exponent of aerosol", a.Aerosol.Alpha, -5, 5}} {
+		if !(c.v >= c.lo && c.v <= c.hi) {
+			return nil, fmt.Errorf("the air's %s is %v; give %v to %v", c.what, c.v, c.lo, c.hi)
 		}
 	}
 	e := &Extinction{heightKm: a.HeightM / 1000, ozoneDU: a.OzoneDU, dust: a.DustMag, aerosol: a.Aerosol, measured: map[string]float64{}}
@@ -157,21 +163,17 @@ func NewExtinction(a AirAbove) (*Extinction, error) {
 	}
 	nearest, anchor := math.Inf(1), Band{}
 	for name, k := range a.Measured {
+		if !(k >= 0 && k <= mostExtinction) {
+			return nil, fmt.Errorf("the extinction in %s is %v; write magnitudes per airmass, 0 to %v", name, k, mostExtinction)
+		}
+		e.measured[name] = k
 		b, ok := BandOf(name)
 		if !ok {
-			continue // a band that no sky is known for; its extinction serves by name
-		}
-		if !(k >= 0) || math.IsInf(k, 0) {
-			return nil, fmt.Errorf("the extinction in %s is %v; write magnitudes per airmass, 0 or more", name, k)
+			continue // no sky is known for it, and nothing asks
 		}
 		away := math.Abs(b.micron - fiveMicron[bandV])
 		if !b.infrared && (away < nearest || away == nearest && name < anchor.name) {
 			nearest, anchor = away, b
-		}
-	}
-	for name, k := range a.Measured {
-		if k >= 0 {
-			e.measured[name] = k
 		}
 	}
 	if !anchor.IsZero() {

@@ -411,6 +411,7 @@ func TestSkyProperty(t *testing.T) {
 
 func FuzzSky(f *testing.F) {
 	f.Add(2000.0, 21.5, 0.1, 1.0, 30.0, -20.0, 45.0, 60.0, 500.0, 5.0)
+	f.Add(2000.0, 21.5, 600.075, 8.0, 4.0, -47.0, 45.0, 360.0, 500.0, 5.0)
 	f.Add(math.NaN(), math.Inf(1), -1.0, 0.0, 90.0, 0.0, -90.0, 180.0, 0.0, -1.0)
 	f.Fuzz(func(t *testing.T, height, dark, k, solar, alt, sun, moon, phase, nm, width float64) {
 		s, err := NewSite(Conditions{Air: AirAbove{HeightM: height, Measured: map[string]float64{"V": k}}, Dark: map[string]float64{"V": dark, "g": dark},
