@@ -41,14 +41,17 @@ type Answer struct {
 	Reached bool
 }
 
-// mostFrames is where it is no observation any more.
-const mostFrames = 10_000_000
+// Where it is no observation any more: frames, and seconds in all.
+const (
+	mostFrames = 10_000_000
+	longestS   = 1e9
+)
 
 // Why there is no exposure.
 var (
 	ErrSaturates = errors.New("saturates in the shortest exposure")
 	ErrFloor     = errors.New("the calibration's floor keeps the signal to noise below that, however long")
-	ErrFrames    = errors.New("would take more frames than can be counted")
+	ErrFrames    = errors.New("would take years, or more frames than can be counted")
 	ErrFrameLong = errors.New("one frame cannot be so long")
 	ErrAsk       = errors.New("neither a signal to noise nor a time is wanted")
 )
@@ -139,7 +142,9 @@ func softFrames(r Rates, d Detector, totalS float64) int {
 // Notes:
 //  1. K depends on t and t on K. Both rise together, so going up from K = 1
 //     until K serves its own t ends at the least of both.
-//  2. Of a series (PerFrame) K = 1 in the formula, and the number of frames is
+//  2. With a shutter's step up to 256 frames more are tried, as rounding may
+//     favour them.
+//  3. Of a series (PerFrame) K = 1 in the formula, and the number of frames is
 //     that asked for, or 1.
 //
 // Source: [cite.MerlineHowell1995], solved for time.
@@ -148,7 +153,7 @@ func softFrames(r Rates, d Detector, totalS float64) int {
 // against every number of frames; TestMonotone; TestExamples.
 func Solve(r Rates, d Detector, ask Ask) (Answer, error) {
 	none := Answer{LongestS: math.NaN()}
-	if err := first(r.valid(), d.valid(), within("the wanted S/N", ask.SNR, 0, 1e9), within("the time in s", ask.TotalS, 0, 1e9),
+	if err := first(r.valid(), d.valid(), within("the wanted S/N", ask.SNR, 0, 1e9), within("the time in s", ask.TotalS, 0, 10*longestS),
 		within("frames", float64(ask.Frames), 0, mostFrames)); err != nil {
 		return none, err
 	}
@@ -216,7 +221,7 @@ func timeFor(r Rates, d Detector, snr float64, k int) (float64, error) {
 			t = math.Min(r.ScintCapS, root(capped, q2*load, q2*read))
 		}
 	}
-	if !(t > 0) || math.IsInf(t, 0) {
+	if !(t > 0 && t <= longestS) {
 		return 0, ErrFrames
 	}
 	return t, nil
@@ -304,11 +309,35 @@ func freeFrames(r Rates, d Detector, snr float64) (Exposure, error) {
 			need = k + 1
 		}
 		if need <= k {
-			return Exposure{k, each}, nil
+			return thriftier(r, d, snr, Exposure{k, each}), nil
 		}
 		k = need
 	}
 	return Exposure{}, ErrFrames
+}
+
+// stepTries limits the search of thriftier.
+const stepTries = 256
+
+// thriftier looks for more frames that, rounded up to the shutter's step, take
+// less time in all; without a step there are none, as each frame more costs
+// read noise.
+func thriftier(r Rates, d Detector, snr float64, best Exposure) Exposure {
+	if d.ShutterStepS == 0 {
+		return best
+	}
+	first := best.Frames + 1
+	for k := first; k < first+stepTries; k++ {
+		t, err := timeFor(r, d, snr, k)
+		if err != nil || t >= best.TotalS() {
+			break
+		}
+		e := Exposure{k, d.roundUp(t / float64(k))}
+		if e.TotalS() < best.TotalS()*(1-1e-9) && softFrames(r, d, e.TotalS()) <= k {
+			best = e
+		}
+	}
+	return best
 }
 
 // leastFrames is how many frames, none longer than can be, reach Q.
