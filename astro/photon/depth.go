@@ -44,9 +44,9 @@ func Fainter(r Rates, d Detector, e Exposure, snr float64) (float64, error) {
 //
 // Returns:
 //   - magnitudes fainter than the source, below 0 for a brighter star: the
-//     saturation magnitude is the source's plus that. -Inf where no star can
-//     save the frame, as the sky alone fills it; then every star saturates, and
-//     false. False too where no limit is given.
+//     saturation magnitude is the source's plus that.
+//   - false, with not a number, where no limit is given, and where the sky alone
+//     fills the frame, so that every star saturates.
 //
 // Checked: TestSaturates.
 func Saturates(r Rates, d Detector, eachS float64) (float64, bool) {

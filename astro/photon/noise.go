@@ -94,8 +94,8 @@ const (
 // the source, where nothing else is said. Common practice, no source.
 const backPixels = 10
 
-// errNoSource says that there is nothing to measure.
-var errNoSource = errors.New("the source gives no electrons")
+// ErrNoSource says that there is nothing to measure.
+var ErrNoSource = errors.New("the source gives no electrons")
 
 // valid refuses rates that cannot be; a source of none is one.
 func (r Rates) valid() error {
@@ -202,7 +202,7 @@ func Noise(r Rates, d Detector, e Exposure) (Budget, error) {
 		return Budget{}, err
 	}
 	if !(r.SourceES > 0) {
-		return Budget{}, errNoSource
+		return Budget{}, ErrNoSource
 	}
 	return noise(r, d, e), nil
 }

@@ -158,7 +158,7 @@ func Solve(r Rates, d Detector, ask Ask) (Answer, error) {
 		return none, err
 	}
 	if !(r.SourceES > 0) {
-		return none, errNoSource
+		return none, ErrNoSource
 	}
 	if ask.Per == PerPixel {
 		r.Element = 1

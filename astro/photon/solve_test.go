@@ -228,9 +228,9 @@ func TestNoExposure(t *testing.T) {
 		{Ask{}, func(r *Rates, _ *Detector) { r.PeakES = 1 }, ErrAsk},
 		{Ask{SNR: 10}, func(r *Rates, _ *Detector) { r.PeakES, r.SourceES = 1, 1e-9 }, ErrFrames},
 		{Ask{SNR: 300, Per: PerFrame}, func(r *Rates, d *Detector) { r.PeakES, d.MaxFrameS = 1, 1 }, ErrFrameLong},
-		{Ask{SNR: 10}, func(r *Rates, _ *Detector) { r.SourceES = 0 }, errNoSource},
-		{Ask{SNR: math.NaN()}, func(*Rates, *Detector) {}, errNumber},
-		{Ask{SNR: 10}, func(_ *Rates, d *Detector) { d.DarkES = -1 }, errNumber},
+		{Ask{SNR: 10}, func(r *Rates, _ *Detector) { r.SourceES = 0 }, ErrNoSource},
+		{Ask{SNR: math.NaN()}, func(*Rates, *Detector) {}, ErrRange},
+		{Ask{SNR: 10}, func(_ *Rates, d *Detector) { d.DarkES = -1 }, ErrRange},
 	} {
 		r, d := r, d
 		c.change(&r, &d)

@@ -24,12 +24,12 @@ const (
 	abZeroJansky = 3631.0
 )
 
-// errNumber says that an argument is not a number in its range.
-var errNumber = errors.New("not a number, or beyond its range")
+// ErrRange says that an argument is not a number in its range.
+var ErrRange = errors.New("not a number, or beyond its range")
 
 // fail names what is out of range.
 func fail(what string, v float64, want string) error {
-	return fmt.Errorf("%s is %v; %s: %w", what, v, want, errNumber)
+	return fmt.Errorf("%s is %v; %s: %w", what, v, want, ErrRange)
 }
 
 // positive refuses what is not above 0 and finite.

@@ -32,8 +32,8 @@ var solarSlope = [fives]float64{0.9, 0.9, 0.9, 0.6, 0.2}
 
 // Solar activity, F10.7 in MJy: at its least and span of the slope; bounds.
 const (
-	quietSun, sunSpan      = 0.8, 1.2
-	leastActive, mostActve = 0.7, 2.5
+	quietSun, sunSpan       = 0.8, 1.2
+	leastActive, mostActive = 0.7, 2.5
 )
 
 // The dark values hold this much zodiacal and faint stars' light, in stars of
@@ -104,7 +104,7 @@ func NewSite(c Conditions) (*Site, error) {
 	case active == 0:
 		active = quietSun
 	}
-	active = math.Max(leastActive, math.Min(mostActve, active))
+	active = math.Max(leastActive, math.Min(mostActive, active))
 	s := &Site{ext: ext, moon: weightsOf(ext), scale: map[string]float64{}, lamps: map[string]float64{}, measured: map[string]bool{}}
 	if err := s.lit(c.LightPollution); err != nil {
 		return nil, err
