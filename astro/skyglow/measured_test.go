@@ -67,8 +67,8 @@ func readings(t *testing.T) []reading {
 	return out
 }
 
-// darkest returns the mean measured minus modelled brightness of the darkest
-// share of some readings, and their median difference.
+// darkest returns measured minus modelled brightness where the darkest share of
+// some readings ends, and their median.
 func darkest(some []reading, share float64) (top, median float64) {
 	slices.SortFunc(some, func(a, b reading) int {
 		return cmpFloat(b.measured-b.model, a.measured-a.model)

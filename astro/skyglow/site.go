@@ -86,8 +86,8 @@ type Site struct {
 //  1. A measured dark value is taken as the zenith's at the least solar
 //     activity and high latitudes; what it has above zodiacal and starlight is
 //     airglow, lamps included. One that is darker than those leaves none.
-//  2. Errors: a dark value or lamps outside 5 to 40 mag/arcsec2, or of a band
-//     that has no sky; the air's as [NewExtinction] says.
+//  2. Errors: a dark value or lamps outside 5 to 40 mag/arcsec2; the air's as
+//     [NewExtinction] says. A band that [BandOf] does not know is passed over.
 //
 // Source: [cite.BennEllison1998].
 //
@@ -110,8 +110,8 @@ func NewSite(c Conditions) (*Site, error) {
 		return nil, err
 	}
 	for name, d := range c.Dark {
-		if _, ok := BandOf(name); !ok || !(d >= 5 && d <= 40) {
-			return nil, fmt.Errorf("the dark sky of %v in %q; write mag/arcsec2 of a band U B V R I J H K u g r i z G BP RP", d, name)
+		if !(d >= 5 && d <= 40) {
+			return nil, fmt.Errorf("the dark sky of %v in %q; write mag/arcsec2, 5 to 40", d, name)
 		}
 		s.measured[name] = true
 	}
@@ -143,8 +143,8 @@ func NewSite(c Conditions) (*Site, error) {
 // lit takes over the light of lamps.
 func (s *Site) lit(by map[string]float64) error {
 	for name, m := range by {
-		if _, ok := BandOf(name); name != "" && !ok || !(m >= 5 && m <= 40) {
-			return fmt.Errorf("light pollution of %v in %q; write mag/arcsec2 of a band U B V R I J H K u g r i z G BP RP, or of all", m, name)
+		if !(m >= 5 && m <= 40) {
+			return fmt.Errorf("light pollution of %v in %q; write mag/arcsec2, 5 to 40", m, name)
 		}
 		s.lamps[name] = flux(m)
 	}
@@ -156,8 +156,8 @@ func (s *Site) lit(by map[string]float64) error {
 func (s *Site) rescale(dark map[string]float64) {
 	still := &Sky{site: s, infra: s.infrared}
 	for name, d := range dark {
-		b, _ := BandOf(name)
-		if b.own || b.infrared {
+		b, ok := BandOf(name)
+		if !ok || b.own || b.infrared {
 			continue
 		}
 		p := still.parts(b, look{x: 1, zodiacal: darkZodiacal, stars: darkStars})

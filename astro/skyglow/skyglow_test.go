@@ -289,6 +289,15 @@ func TestMeasuredDark(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
+	for _, bad := range []Conditions{{Dark: map[string]float64{"V": 4}}, {LightPollution: map[string]float64{"": math.NaN()}},
+		{SolarActivity: -1}, {Air: AirAbove{OzoneDU: -1}}} {
+		if _, err := NewSite(bad); err == nil {
+			t.Errorf("no error for %+v", bad)
+		}
+	}
+	if _, err := NewSite(Conditions{Dark: map[string]float64{"W1": 12}, LightPollution: map[string]float64{"W1": 12}}); err != nil {
+		t.Error(err)
+	}
 	still := &Sky{site: s, infra: s.infrared}
 	for name, m := range want {
 		got := still.brightness(band(t, name), look{x: 1, zodiacal: darkZodiacal, stars: darkStars})
