@@ -3,21 +3,6 @@ package cite
 // From magnitudes to electrons: zero points, images of stars, detectors, noise
 // of the air, and the air as a prism.
 
-// BessellEtAl1998 has the zero points of the
-// broad bands.
-var BessellEtAl1998 = Ref{
-	Authors: "Bessell, Castelli & Plez", Year: 1998,
-	Title: "Model atmospheres broad-band colors, bolometric corrections and temperature calibrations for O - M stars",
-	Where: "A&A 333, 231",
-}
-
-// FukugitaEtAl1996 has the bands u g r i z.
-var FukugitaEtAl1996 = Ref{
-	Authors: "Fukugita et al.", Year: 1996,
-	Title: "The Sloan Digital Sky Survey Photometric System",
-	Where: "AJ 111, 1748", DOI: "10.1086/117915",
-}
-
 // BIPM2019 has the constants of Planck and of light.
 var BIPM2019 = Ref{
 	Authors: "BIPM", Year: 2019,

@@ -38,7 +38,7 @@ var layers = map[string][]string{
 	"targets/table":        {"targets", "astro"},
 	"targets/instrument":   {"targets", "astro"},
 	"targets/stage":        {"targets", "targets/stage/tracks", "astro/..."},
-	"targets/light":        {"targets", "targets/stage", "astro/..."},
+	"targets/light":        {"targets", "targets/stage", "targets/light/wander", "astro/..."},
 	"targets/exposure":     {"targets", "targets/instrument", "targets/light", "astro/..."},
 	"targets/sweep":        {"targets", "astro/..."},
 	"targets/stage/tracks": {"targets", "astro/..."},
