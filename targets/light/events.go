@@ -23,6 +23,9 @@ type Event struct {
 	BJDTDB float64 // the same at the barycentre, day
 	SigmaS float64
 	Status string
+	Start  *astro.Instant // ingress, or where a window begins; nil: an instant alone
+	End    *astro.Instant
+	Words  string // what is to be said beside it
 }
 
 // Next returns the next eclipse and the next maximum after an instant, as far
