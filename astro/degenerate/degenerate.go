@@ -94,12 +94,15 @@ func (p Prior) logDensity(massMsun float64) float64 {
 	return math.Log(n(0.72, 0.60, 0.09) + n(0.20, 0.80, 0.18) + n(0.08, 0.42, 0.10))
 }
 
-// Constants of the Sun. Mbol and the temperature are those of the IAU's
-// Resolutions B2 and B3 of 2015.
+// Constants of the Sun.
+//
+// Source: [cite.IAU2015B3]; the bolometric magnitude is that of the tables of
+// models, by which their luminosities are R² T⁴ to 0.1 per cent.
 const (
-	sunMbol  = 4.74
-	sunLogG  = 4.438
-	sunTeffK = 5772.0
+	sunLogG      = 4.438
+	sunTeffK     = 5772.0
+	sunLogT      = 3.761326 // log 5772
+	tableSunMbol = 4.75
 )
 
 // Constants of nature in SI.

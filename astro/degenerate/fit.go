@@ -37,30 +37,32 @@ type Answer struct {
 
 // problem is one fit: what was seen, ready to be compared with a grid.
 type problem struct {
-	g                     *grid
-	q                     quantity // the magnitude in use
-	line                  *line    // nil without a magnitude
-	colour                bool
-	bprp, bprpErr         float64 // where there is no magnitude
-	logT, logTErr         float64 // error 0: not known
-	logG, logGErr         float64
-	prior                 []float64
-	stepT, stepM          int
-	rowFrom, rowUpto      int // of the window
-	from, upto            []int
-	minChi2, best         float64
-	bestRow               int
-	cells                 []cell
-	rowW, rowMW, rowBest  []float64
-	rowChi2               []float64
-	colW                  []float64
-	lowestCol, highestCol int
+	g     *grid
+	q     quantity // the magnitude in use
+	prior []float64
+
+	line          *line // nil without a magnitude
+	colour        bool
+	bprp, bprpErr float64 // of the colour, where there is no magnitude
+	logT, logTErr float64 // error 0: not known
+	logG, logGErr float64
+
+	stepT, stepM     int
+	rowFrom, rowUpto int   // of the window
+	from, upto       []int // its columns in each row
+
+	cells         []cell
+	minChi2, best float64
+	rowW, rowMW   []float64 // weight, and weight times mass, of each step in log Teff
+	rowBest       []float64 // the best likelihood there, as a logarithm
+	colW          []float64 // weight of each step in mass
 }
 
 // cell is one model of the window and its logarithmic probability.
 type cell struct {
 	i, j int32
 	ln   float64
+	chi2 float64
 }
 
 // Fit finds which white-dwarf models explain what was seen of a star.

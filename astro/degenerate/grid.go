@@ -8,6 +8,9 @@ const (
 	gridMass = 0.005
 )
 
+// gridded are the quantities that a fit reads.
+var gridded = [...]quantity{qLogG, qMV, qMG, qColour, qLogAge}
+
 // grid is a table interpolated once, so that a fit only reads it. Rows go by
 // log Teff, in a row by mass; cells off the table are not numbers and lie at
 // the low-mass end of a row.
@@ -33,7 +36,7 @@ func newGrid(s *sheet) *grid {
 	g := &grid{logT0: first * gridLogT, mass0: s.mass[0], magsIncrease: true}
 	g.rows = int(last-first) + 1
 	g.cols = int(math.Round((s.mass[len(s.mass)-1]-s.mass[0])/gridMass)) + 1
-	for q := range quantities {
+	for _, q := range gridded {
 		g.cell[q] = make([]float32, g.rows*g.cols)
 	}
 	g.first = make([]int, g.rows)
@@ -61,7 +64,7 @@ func (g *grid) logTAt(i int) float64 { return g.logT0 + gridLogT*float64(i) }
 func (g *grid) fillRow(s *sheet, i int) {
 	logT := math.Min(g.logTAt(i), s.hi[len(s.hi)-1])
 	nan := float32(math.NaN())
-	for q := range quantities {
+	for _, q := range gridded {
 		c, err := s.across(logT, q)
 		row := g.cell[q][i*g.cols : (i+1)*g.cols]
 		g.first[i] = g.cols

@@ -202,7 +202,7 @@ func (s *sheet) at(logT, massMsun float64) (out [quantities]float64, ok bool) {
 
 // At returns the model star of a temperature and a mass.
 //
-//	R = √(M 10^(4.438 - log g))     L = 10^(0.4 (4.74 - Mbol))     solar units
+//	R = √(M 10^(4.438 - log g))     L = R² (T / 5772 K)⁴     solar units
 //
 // Given:
 //   - teffK: 3000 to 100 000 K, helium from 3500 K.
@@ -215,6 +215,7 @@ func (s *sheet) at(logT, massMsun float64) (out [quantities]float64, ok bool) {
 //  1. Monotone cubics in log Teff for each mass, then in mass; log of the age.
 //     Against the full tables at log g 8, 4500 to 40 000 K: M_G to 0.003 mag,
 //     BP-RP to 0.001.
+//  2. MbolMag is as in the tables, in which the Sun has 4.75, not 4.74.
 //
 // Source: [cite.BedardEtAl2020] and the works named at [NewModels].
 //
@@ -232,12 +233,13 @@ func (m *Models) At(teffK, massMsun float64, c Composition) (Model, error) {
 
 // newModel completes a model from the quantities of the tables.
 func newModel(teffK, massMsun float64, v [quantities]float64) Model {
+	radius := math.Sqrt(massMsun * math.Pow(10, sunLogG-v[qLogG]))
 	return Model{
 		TeffK: teffK, MassMsun: massMsun, LogG: v[qLogG], MbolMag: v[qMbol],
 		MVMag: v[qMV], MGMag: v[qMG], BPRPMag: v[qColour],
 		CoolingAgeYr: math.Pow(10, v[qLogAge]),
-		RadiusRsun:   math.Sqrt(massMsun * math.Pow(10, sunLogG-v[qLogG])),
-		LumLsun:      math.Pow(10, 0.4*(sunMbol-v[qMbol])),
+		RadiusRsun:   radius,
+		LumLsun:      radius * radius * math.Pow(teffK/sunTeffK, 4),
 	}
 }
 

@@ -14,9 +14,9 @@ func (p *problem) answer() Answer {
 	g := p.g
 	rows := (g.rows-1)/p.stepT + 1
 	cols := (g.cols-1)/p.stepM + 1
-	buffer := make([]float64, 4*rows+cols)
-	p.rowW, p.rowMW, p.rowBest, p.rowChi2 = buffer[:rows], buffer[rows:2*rows], buffer[2*rows:3*rows], buffer[3*rows:4*rows]
-	p.colW = buffer[4*rows:]
+	buffer := make([]float64, 3*rows+cols)
+	p.rowW, p.rowMW, p.rowBest = buffer[:rows], buffer[rows:2*rows], buffer[2*rows:3*rows]
+	p.colW = buffer[3*rows:]
 	for k := range rows {
 		p.rowBest[k] = math.Inf(-1)
 	}
@@ -34,14 +34,11 @@ func (p *problem) answer() Answer {
 		p.rowW[i] += w
 		p.rowMW[i] += w * g.massAt(int(c.j))
 		p.colW[j] += w
-		if c.ln > p.rowBest[i] {
-			p.rowBest[i] = c.ln
-			p.rowChi2[i] = -2 * (c.ln - p.prior[c.j])
-		}
+		p.rowBest[i] = math.Max(p.rowBest[i], -c.chi2/2)
 		for k, v := range g.derived(int(c.i), int(c.j)) {
 			lo[k], hi[k] = math.Min(lo[k], v), math.Max(hi[k], v)
 		}
-		kept = append(kept, cell{c.i, c.j, w})
+		kept = append(kept, cell{c.i, c.j, w, c.chi2})
 	}
 	a := Answer{Chi2: p.minChi2, Solutions: p.solutions()}
 	logT := quantiles(p.rowW)
@@ -77,10 +74,11 @@ const (
 func (g *grid) derived(i, j int) [derivedQuantities]float64 {
 	at := i*g.cols + j
 	logG := float64(g.cell[qLogG][at])
+	logR := (float64(g.logMass[j]) + sunLogG - logG) / 2
 	return [derivedQuantities]float64{
 		dLogG:   logG,
-		dLogR:   (float64(g.logMass[j]) + sunLogG - logG) / 2,
-		dLogL:   0.4 * (sunMbol - float64(g.cell[qMbol][at])),
+		dLogR:   logR,
+		dLogL:   2*logR + 4*(g.logTAt(i)-sunLogT),
 		dLogAge: float64(g.cell[qLogAge][at]),
 	}
 }
@@ -150,7 +148,9 @@ const (
 	solutionValley = 0.5
 )
 
-// solutions finds the separate peaks along the temperature.
+// solutions finds the separate peaks of the likelihood along the temperature,
+// without the prior, so that a way to explain the star is listed even where the
+// prior finds it less likely.
 func (p *problem) solutions() []Solution {
 	type peak struct{ row, from, upto int }
 	var peaks []peak
@@ -180,7 +180,7 @@ func (p *problem) solutions() []Solution {
 	}
 	var out []Solution
 	for _, q := range peaks {
-		if p.rowBest[q.row] < p.best-solutionWithin {
+		if p.rowBest[q.row] < -p.minChi2/2-solutionWithin {
 			continue
 		}
 		var w, t, m float64
@@ -189,7 +189,7 @@ func (p *problem) solutions() []Solution {
 			t += p.rowW[k] * p.g.logTAt(k*p.stepT)
 			m += p.rowMW[k]
 		}
-		out = append(out, Solution{math.Pow(10, t/w), m / w, p.rowChi2[q.row], w / total})
+		out = append(out, Solution{math.Pow(10, t/w), m / w, -2 * p.rowBest[q.row], w / total})
 	}
 	return out
 }

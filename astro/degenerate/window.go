@@ -153,12 +153,10 @@ func (p *problem) weigh() {
 				chi2 += d * d
 			}
 			ln -= chi2 / 2
-			if ln > p.best {
-				p.best, p.bestRow = ln, i
-			}
+			p.best = math.Max(p.best, ln)
 			p.minChi2 = math.Min(p.minChi2, chi2)
 			if ln >= p.best-ignored {
-				p.cells = append(p.cells, cell{int32(i), int32(j), ln})
+				p.cells = append(p.cells, cell{int32(i), int32(j), ln, chi2})
 			}
 		}
 	}
