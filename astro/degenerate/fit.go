@@ -101,8 +101,8 @@ type cell struct {
 // Source: models [cite.BedardEtAl2020]; photometric fits as in
 // [cite.GentileFusilloEtAl2021], whose numbers they reproduce.
 //
-// Checked: TestFastAgainstFull,
-// FuzzFit; BenchmarkFit.
+// Checked: TestFitCheckValues, TestFitSaysWhatItMust, TestFitAgainstCatalogue,
+// TestFastAgainstFull, TestPriors, FuzzFit; BenchmarkFit.
 func (m *Models) Fit(s Seen, prior Prior, c Composition) (Answer, error) {
 	if c != Hydrogen && c != Helium || prior != WidePrior && prior != FlatPrior {
 		return Answer{}, ErrNotANumber

@@ -229,6 +229,9 @@ func TestDust(t *testing.T) {
 		t.Error("no distance, no dust")
 	}
 	check.Near(t, Uniform(0.1)(5), 0.31, 1e-12, "E(B-V) 0.1")
+	ag, e := GaiaExtinction(1)
+	check.Near(t, ag, 0.87, 1e-12, "A_G")
+	check.Near(t, e, 0.49*0.87, 1e-12, "E(BP-RP)")
 	if Uniform(-1)(5) != 0 || Uniform(math.NaN())(5) != 0 {
 		t.Error("no reddening, no dust")
 	}

@@ -49,6 +49,21 @@ const (
 	bprpByG = 0.49
 )
 
+// GaiaExtinction returns the extinction in G and the reddening of BP-RP of a hot
+// blue star.
+//
+//	A_G = 0.87 A_V     E(BP-RP) = 0.49 A_G
+//
+// Given:
+//   - avMag: A_V, mag.
+//
+// Source: common practice, no source.
+//
+// Checked: TestDust.
+func GaiaExtinction(avMag float64) (agMag, ebprpMag float64) {
+	return gByV * avMag, bprpByG * gByV * avMag
+}
+
 // Dust returns the extinction law of a layer of dust in the galactic plane.
 //
 //	A_V = 0.5 mag/kpc × 125 pc (1 - exp(-d sin|b| / 125 pc)) / sin|b|
