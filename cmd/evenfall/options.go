@@ -28,6 +28,7 @@ type options struct {
 	theme, glyphs      string
 	tick               string
 	observer           string
+	population         string
 	handover           bool
 	latSet, lonSet     bool
 	elevSet, formatSet bool
@@ -50,6 +51,7 @@ func (o *options) bind(root *cobra.Command) {
 	f.StringArrayVar(&o.magnitudes, "magnitudes", nil, "measured magnitudes `FILE`, added to the run's; repeatable")
 	f.StringVar(&o.band, "band", "", "photometric `BAND` for brightness, e.g. V (default: the best known)")
 	f.Float64Var(&o.level, "level", 0.8, "probability `P` of brightness intervals, between 0 and 1")
+	f.StringVar(&o.population, "population", "", "`disc|field|old`: what giants are taken for before they are looked at (default: run.toml, else field)")
 	f.StringVar(&o.format, "format", "text", "`text|json|csv`")
 	root.PersistentPreRunE = func(cmd *cobra.Command, _ []string) error {
 		o.latSet, o.lonSet = cmd.Flags().Changed("lat"), cmd.Flags().Changed("lon")
@@ -85,6 +87,9 @@ func (o *options) validate() error {
 	}
 	if !(o.level > 0 && o.level < 1) {
 		return usagef("--level %g: a probability lies between 0 and 1; write e.g. 0.8", o.level)
+	}
+	if o.population != "" && !slices.Contains(targets.Populations, targets.Population(o.population)) {
+		return usagef("--population %s: use disc, field or old", quote(o.population))
 	}
 	if o.until != "" && o.night == "" {
 		return usagef("--until ends a range that --night begins; give both")

@@ -142,7 +142,7 @@ func (s *session) source(o *options) desk.Source {
 		return s.want(o, wishes, n.Date, i, e.Target.Kind)
 	}
 	src := desk.Source{Site: s.site, Title: s.title, Demo: s.demo, Zone: s.location(), HandOver: s.handOverFormat(),
-		Band: targets.Band(o.band), Level: o.level, Roster: roster.New(entries, moment.NewModels(), wants),
+		Band: targets.Band(o.band), Level: o.level, Roster: roster.New(entries, s.newModels(o), wants),
 		Night: s.nights(), Fixed: o.at != ""}
 	src.Changed = s.renew
 	if o.night != "" && o.at == "" {

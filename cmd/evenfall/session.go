@@ -321,10 +321,22 @@ func (s *session) nightOf(date astro.Date) (*moment.Night, error) {
 	return n, err
 }
 
+// newModels makes what stages are judged with.
+func (s *session) newModels(o *options) moment.Models {
+	p := targets.PopulationField
+	if s.run != nil {
+		p = s.run.Config.Population
+	}
+	if o.population != "" {
+		p = targets.Population(o.population)
+	}
+	return moment.NewModelsFor(p)
+}
+
 // compute prepares the targets and works out each one's moment.
 func (s *session) compute(o *options) {
 	s.scene = moment.NewScene(s.night, s.at)
-	s.models = moment.NewModels()
+	s.models = s.newModels(o)
 	byTarget, wishes := s.magnitudesByTarget(), s.wishes()
 	n := len(s.targets)
 	s.prepared, s.wants = make([]moment.Prepared, n), make([]moment.Want, n)

@@ -19,8 +19,11 @@ import (
 // Models is what judging and forecasting draw on; made once, shared by all.
 type Models struct{ Stage *stage.Models }
 
-// NewModels makes the models.
-func NewModels() Models { return Models{Stage: stage.NewModels()} }
+// NewModels makes the models, for giants of the field.
+func NewModels() Models { return NewModelsFor(targets.PopulationField) }
+
+// NewModelsFor makes the models for a population of giants.
+func NewModelsFor(p targets.Population) Models { return Models{Stage: stage.NewModelsFor(p)} }
 
 // Prepared is a target with everything that does not depend on the night.
 type Prepared struct {

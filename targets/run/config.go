@@ -25,6 +25,7 @@ type Config struct {
 	Upkeep      Upkeep
 	Defaults    map[targets.Kind]Default
 	HandOver    HandOver
+	Population  targets.Population // that giants are taken for
 }
 
 // Sky is what is known of the sky of the site; measured values take precedence
@@ -98,6 +99,7 @@ func ParseConfig(data []byte, name string) (*Config, []*table.Error) {
 	t.upkeep(root, c)
 	t.defaults(root, c)
 	t.handOver(root, c)
+	t.population(root, c)
 	t.leftovers(root)
 	if !placed {
 		return nil, t.problems

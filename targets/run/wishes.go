@@ -30,6 +30,18 @@ func (t *tree) upkeep(root *block, c *Config) {
 	}
 }
 
+// population reads [stage].
+func (t *tree) population(root *block, c *Config) {
+	var names []string
+	for _, p := range targets.Populations {
+		names = append(names, string(p))
+	}
+	b, _ := t.sub(root, "stage")
+	word := string(targets.PopulationField)
+	t.word(b, "population", &word, word, names...)
+	c.Population = targets.Population(word)
+}
+
 // defaults reads [defaults.KIND].
 func (t *tree) defaults(root *block, c *Config) {
 	c.Defaults = map[targets.Kind]Default{}

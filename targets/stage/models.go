@@ -13,7 +13,7 @@ import (
 // when first asked for.
 type Models struct {
 	floor      float64
-	population Population
+	population targets.Population
 	grid       func() *tracks.Grid // of the disc
 	oldGrid    func() *tracks.Grid // of thick disc and halo, for metal-poor stars
 	dwarfs     func() *degenerate.Models
@@ -26,11 +26,11 @@ type Models struct {
 const Edition = tracks.Edition
 
 // NewModels makes the models for giants of the field.
-func NewModels() *Models { return NewModelsFor(Field) }
+func NewModels() *Models { return NewModelsFor(targets.PopulationField) }
 
 // NewModelsFor makes the models for a population; of the three only the share
 // of giants of the branch differs.
-func NewModelsFor(p Population) *Models {
+func NewModelsFor(p targets.Population) *Models {
 	m := &Models{floor: 1e-5, population: p, dwarfs: sync.OnceValue(degenerate.NewModels)}
 	m.grid = sync.OnceValue(func() *tracks.Grid { return mustGrid(tracks.Disc()) })
 	m.oldGrid = sync.OnceValue(func() *tracks.Grid { return mustGrid(tracks.Old()) })

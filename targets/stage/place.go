@@ -101,15 +101,15 @@ func (m *Models) onDiagram(t *targets.Target, s *sight, prior bool) []factor {
 	}
 	// the tracks say how many of both there are, the loci which of the two
 	density[targets.RC], density[targets.RGB] = both/2/number[targets.RC], both/2/number[targets.RGB]
-	evidence, share := g.clumpOdds(m.population.branchPerClump())
+	evidence, share := g.clumpOdds(branchPerClump(m.population))
 	if g.by == byTemperature && !s.feh.Known {
-		evidence, share = g.overMetals(m.population.branchPerClump())
+		evidence, share = g.overMetals(branchPerClump(m.population))
 	}
 	scale := 2 / (math.Exp(evidence+share) + 1)
 	return append(out, where,
 		factor{what: g.words(teffK, s.feh), source: "fitted to " + cite.ElsworthEtAl2019.String(), rest: 1,
 			weight: shares{targets.RC: scale * math.Exp(evidence), targets.RGB: scale}},
-		factor{what: fmt.Sprintf("%s: %.2f giants of the branch a magnitude for each of the clump", m.population, m.population.branchPerClump()),
+		factor{what: fmt.Sprintf("%s: %.2f giants of the branch a magnitude for each of the clump", m.population.Words(), branchPerClump(m.population)),
 			source: cite.HurleyPolsTout2000.String(), rest: 1, prior: true,
 			weight: shares{targets.RC: math.Exp(share), targets.RGB: 1}})
 }

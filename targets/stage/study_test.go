@@ -66,7 +66,7 @@ func TestStudyGiant(t *testing.T) {
 		t.Errorf("mass %+v", q)
 	}
 	// a giant of the old populations is likelier to be of the branch
-	old := NewModelsFor(Old).Judge(tg)
+	old := NewModelsFor(targets.PopulationOld).Judge(tg)
 	if !(old.P[targets.RC] < v.P[targets.RC]) {
 		t.Errorf("p(RC) %.3f among old stars, %.3f in the field", old.P[targets.RC], v.P[targets.RC])
 	}
