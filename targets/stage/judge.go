@@ -68,6 +68,9 @@ func (f *factor) of(s targets.Stage) float64 {
 func (m *Models) Judge(t targets.Target) Verdict {
 	s := m.sight(&t, false)
 	words := listed(&t, s)
+	if f, ok := m.inCluster(&t, s); ok {
+		words = append(words, f)
+	}
 	place := m.placed(&t, s, words)
 	v := Verdict{Missing: s.missing, Place: s.place}
 	all := append(slices.Clone(words), place...)

@@ -19,6 +19,7 @@ type Models struct {
 	dwarfs     func() *degenerate.Models
 	solar      func() *tracks.Formulas
 	limit      func() float64
+	clusters   func() map[string]generation
 	number     func() shares // stars of each stage for each one of the clump
 }
 
@@ -36,6 +37,7 @@ func NewModelsFor(p targets.Population) *Models {
 	m.oldGrid = sync.OnceValue(func() *tracks.Grid { return mustGrid(tracks.Old()) })
 	m.solar = sync.OnceValue(func() *tracks.Formulas { return mustFormulas(solarZ) })
 	m.limit = sync.OnceValue(func() float64 { return degenerate.LimitingMass(2) })
+	m.clusters = sync.OnceValue(m.generations)
 	m.number = sync.OnceValue(m.count)
 	return m
 }

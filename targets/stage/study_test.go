@@ -244,3 +244,31 @@ func TestAbsurdColumns(t *testing.T) {
 		}
 	}
 }
+
+// A giant of a cluster as old as 1.5 Gyr is likelier in the clump than one of
+// the field, and one of 4 Gyr is not: giants above the flash mass climb the
+// branch fast. Members of an unknown cluster are judged as the field is.
+func TestCluster(t *testing.T) {
+	m := NewModels()
+	giant := func(cluster string) targets.Target {
+		return targets.Target{Name: "x", Kind: targets.Giant, Place: targets.Place{Plx: targets.KnownErr(2, 0.02), PlxFrom: "corrected"},
+			Physics: targets.Physics{EBV: targets.Known(0.05), TeffK: targets.KnownErr(4700, 80), FeH: targets.KnownErr(0, 0.05), Cluster: cluster},
+			Mags:    map[targets.Band]targets.Measure{"G": targets.Known(9.2), "K": targets.Known(7.0)}}
+	}
+	field, _ := studied(t, m, giant(""))
+	young, _ := studied(t, m, giant("NGC 6811"))
+	old, _ := studied(t, m, giant("M 67"))
+	other, _ := studied(t, m, giant("nowhere"))
+	if !(young.P[targets.RC] > field.P[targets.RC]) || !(old.P[targets.RC] < young.P[targets.RC]) || other.P[targets.RC] != field.P[targets.RC] {
+		t.Errorf("p(RC): field %.3f, 1 Gyr %.3f, 4 Gyr %.3f, unknown cluster %.3f", field.P[targets.RC], young.P[targets.RC], old.P[targets.RC], other.P[targets.RC])
+	}
+	for name, want := range map[string]float64{"m67": 1.4, "hyades": 2.6, "pleiades": 5} { // turn-off giants, common practice, no source
+		check.Near(t, m.clusters()[name].turnoff, want, 0.2*want, "mass of the giants of %s", name)
+	}
+	// white dwarfs of the Hyades come from some 3 solar masses: common practice, no source
+	dwarf := targets.Target{Name: "d", Kind: targets.WD, Physics: targets.Physics{Cluster: "Hyades", TeffK: targets.KnownErr(20000, 300), LogG: targets.KnownErr(8.1, 0.05)}}
+	_, st := studied(t, m, dwarf)
+	if q, ok := st.Get("progenitor_cluster_msun"); !ok || q.Value < 2.4 || q.Value > 3.5 || q.Lo >= q.Hi {
+		t.Errorf("progenitor in the Hyades: %+v", q)
+	}
+}

@@ -38,6 +38,7 @@ func (m *Models) ofDwarf(t *targets.Target, s *sight, st *Study) {
 	m.redshift(fit, st)
 	m.cold(fit, st)
 	m.progenitor(fit, st)
+	m.ofCluster(t, fit.CoolingAgeYr.Mid/1e9, st)
 	m.pulsation(t, fit, st)
 	if x, ok := degenerate.ParseSpectrum(t.Physics.SpType); ok {
 		st.Notes = append(st.Notes, "spectrum "+t.Physics.SpType+": "+x.Words)
