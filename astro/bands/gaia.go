@@ -60,10 +60,13 @@ func (r *relation) at(x float64) (value, slope float64) {
 	return value, slope
 }
 
+// rounding is what the difference of two magnitudes may miss its colour by.
+const rounding = 1e-9
+
 // holds tells whether the relation may be used at a colour, and if not why.
 func (r *relation) holds(b Band, c float64, lum Luminosity) *Refusal {
 	switch {
-	case !(c >= r.lo && c <= r.hi):
+	case !(c >= r.lo-rounding && c <= r.hi+rounding):
 		return &Refusal{Reason: OutsideRange, Want: b,
 			Words: fmt.Sprintf("BP-RP %.2f is outside %.4g to %.4g, where the relation for %s holds", c, r.lo, r.hi, b)}
 	case lum == WhiteDwarf && !(b == V || b == G):
