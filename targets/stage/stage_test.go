@@ -118,12 +118,19 @@ func TestClump(t *testing.T) {
 func FuzzJudge(f *testing.F) {
 	f.Add("wd", "DA", "ZZA", 10.0, 0.1, 12.0, 11.0, 8.0, 10000.0)
 	f.Add("giant", "K0III", "", -5.0, 1.0, math.Inf(1), math.NaN(), -3.0, 1e300)
+	f.Add("pn", "", "", 2.0, 0.3, -11.0, 13.0, 0.2, 90000.0)
+	f.Add("", "", "", 3.0, 0.2, 9.0, 7.0, 2.4, 4700.0)
+	m := NewModels()
 	f.Fuzz(func(t *testing.T, kind, sp, vt string, plx, e, g, k, logg, teff float64) {
-		v := NewModels().Judge(targets.Target{Name: "x", Kind: targets.Kind(kind),
-			Physics: targets.Physics{SpType: sp, LogG: targets.Known(logg), TeffK: targets.Known(teff), EBV: targets.Known(e)},
-			Var:     targets.Variability{Type: vt, PeriodD: targets.Known(plx)},
-			Place:   targets.Place{Plx: targets.KnownErr(plx, e)},
-			Mags:    map[targets.Band]targets.Measure{"G": targets.Known(g), "K": targets.Known(k), "BP": targets.Known(g), "RP": targets.Known(k)}})
+		tg := targets.Target{Name: "x", Kind: targets.Kind(kind),
+			Physics: targets.Physics{SpType: sp, LogG: targets.Known(logg), TeffK: targets.Known(teff), EBV: targets.Known(e), FeH: targets.Known(logg),
+				NumaxUHz: targets.Known(teff / 100), DnuUHz: targets.Known(g), DistPc: targets.KnownErr(k, e), Cluster: "M67"},
+			Var:   targets.Variability{Type: vt, PeriodD: targets.Known(plx)},
+			Place: targets.Place{Plx: targets.KnownErr(plx, e)},
+			Nebula: targets.Nebula{DiamArcsec: targets.Known(k), LogFHa: targets.Known(g), LogFHb: targets.Known(g - e), LogF5007: targets.Known(g + e),
+				CHb: targets.Known(logg), VexpKms: targets.Known(plx), CspnV: targets.Known(k)},
+			Mags: map[targets.Band]targets.Measure{"G": targets.Known(g), "K": targets.Known(k), "BP": targets.Known(g + logg/10), "RP": targets.Known(k), "J": targets.Known(plx)}}
+		v := m.Judge(tg)
 		sums(t, v)
 		if v.Best == "" {
 			t.Fatal("no answer")
@@ -131,6 +138,16 @@ func FuzzJudge(f *testing.F) {
 		for _, ev := range v.Evidence {
 			if math.IsNaN(ev.Log10Odds) || ev.Source == "" || ev.What == "" {
 				t.Fatalf("evidence without figure or source: %+v", ev)
+			}
+		}
+		p := &v.Place
+		if p.HROK && (!p.LogT.Valid() || !p.LogL.Valid()) || p.CMDOK && (!p.Colour.Valid() || !p.AbsG.Valid()) {
+			t.Fatalf("place %+v", p)
+		}
+		st := m.Study(tg, &v)
+		for _, q := range st.Quantities {
+			if math.IsNaN(q.Value) || math.IsInf(q.Value, 0) || q.Method == "" || q.Source == "" || q.Lo > q.Value || q.Hi < q.Value {
+				t.Fatalf("quantity %+v", q)
 			}
 		}
 	})
