@@ -23,6 +23,9 @@ func targetShape(t *targets.Target, p *moment.Prepared, m *moment.Moment) jsonTa
 		BlockedBy: blockShapes(m.BlockedBy), Unconfirmed: append([]string{}, t.Unconfirmed...),
 		Conflicts: t.Conflicts, MissingOrWhys: m.Why,
 	}
+	if m.Sky.Known {
+		out.SkyMag, out.SkyBand = rounded(m.Sky.Total.MagArcsec2(), magDigits), string(m.Sky.Band)
+	}
 	if m.AirOK {
 		out.Airmass = rounded(float64(m.Airmass), airDigits)
 	}

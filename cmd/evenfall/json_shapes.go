@@ -65,6 +65,8 @@ type jsonTarget struct {
 	SunSep        float64     `json:"sun_sep_deg"`
 	RVCorrection  float64     `json:"rv_correction_kms"`
 	BJD           float64     `json:"bjd_tdb"`
+	SkyMag        *float64    `json:"sky_mag_arcsec2,omitempty"`
+	SkyBand       string      `json:"sky_band,omitempty"`
 	Stage         jsonStage   `json:"stage"`
 	Expect        jsonExpect  `json:"expect"`
 	Can           []jsonSpan  `json:"can"`

@@ -12,6 +12,7 @@ import (
 	"time"
 
 	"evenfall/astro"
+	"evenfall/astro/skyglow"
 	"evenfall/astro/timescale"
 	"evenfall/targets"
 	"evenfall/targets/builtin"
@@ -316,9 +317,22 @@ func (s *session) setTime(w world, o *options) error {
 func (s *session) nightOf(date astro.Date) (*moment.Night, error) {
 	n, err := moment.NewNight(s.site, date, s.limits, s.conditions)
 	if err == nil && s.run != nil {
+		n.Sky = s.skySite(n.Sky)
 		n.Allocated = s.run.Config.AllocatedOn(n.Span, date)
 	}
 	return n, err
+}
+
+// skySite is the sky of the run's site, the given one where run.toml says
+// nothing that holds.
+func (s *session) skySite(otherwise *skyglow.Site) *skyglow.Site {
+	c := s.run.Config.Sky
+	site, err := moment.NewSkySite(s.site, skyglow.Conditions{Air: skyglow.AirAbove{Measured: c.ExtinctionMag}, Dark: c.DarkMagArcsec2,
+		LightPollution: c.LightPollution, SolarActivity: c.SolarActivity})
+	if err != nil {
+		return otherwise
+	}
+	return site
 }
 
 // newModels makes what stages are judged with.

@@ -30,6 +30,7 @@ type Moment struct {
 
 	Stage  stage.Verdict
 	Expect light.Forecast
+	Sky    SkyNow // behind the target, in the band wanted
 
 	Course    Course
 	Window    astro.Span // the window spoken of, see Course.Window
@@ -89,6 +90,7 @@ func Of(s *Scene, p *Prepared, c *Course, w Want) Moment {
 	if m.Barycentric.Coarse {
 		m.Why = append(m.Why, "date outside 2010 to 2053: barycentric times to 0.1 s, Sun to 36 arcsec")
 	}
+	m.Sky = s.SkyAt(&m.Place, w.Band)
 	m.Expect = p.Light.At(s.Instant, light.Ask{Band: w.Band, Level: w.Level})
 	m.windows(s, c)
 	m.Why = append(m.Why, missing(s, p)...)

@@ -8,6 +8,7 @@ import (
 	"evenfall/astro/air"
 	"evenfall/astro/ephem"
 	"evenfall/astro/frame"
+	"evenfall/astro/skyglow"
 	"evenfall/targets"
 )
 
@@ -28,7 +29,8 @@ type Night struct {
 	ephem.Night
 	Limits     targets.Limits
 	Conditions targets.Conditions
-	Allocated  []astro.Span // when the telescope is ours; nil: the whole night
+	Sky        *skyglow.Site // dark sky, air, lamps; a dark site of that height unless set
+	Allocated  []astro.Span  // when the telescope is ours; nil: the whole night
 
 	nodes []node
 	edges edges
@@ -53,7 +55,7 @@ func NewNight(site astro.Site, date astro.Date, limits targets.Limits, condition
 	if err != nil {
 		return nil, err
 	}
-	n := &Night{Night: e, Limits: limits, Conditions: conditions, sunBelow: map[float64][]astro.Span{
+	n := &Night{Night: e, Limits: limits, Conditions: conditions, Sky: defaultSky(site), sunBelow: map[float64][]astro.Span{
 		ephem.NauticalAlt.Deg():   e.Nautical.Below,
 		ephem.AstroAltitude.Deg(): e.Ast.Below,
 	}}

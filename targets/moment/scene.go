@@ -4,6 +4,7 @@ import (
 	"evenfall/astro"
 	"evenfall/astro/ephem"
 	"evenfall/astro/frame"
+	"evenfall/astro/skyglow"
 )
 
 // Scene is what all targets share at one instant.
@@ -14,7 +15,8 @@ type Scene struct {
 	Sun     ephem.Body
 	Moon    ephem.Body
 	Phase   ephem.Phase
-	Part    string // what part of the night it is: day, twilight, night
+	Sky     *skyglow.Sky // nil: none for this site
+	Part    string       // what part of the night it is: day, twilight, night
 }
 
 // NewScene works out what all targets share at an instant, which lies in the
@@ -22,10 +24,12 @@ type Scene struct {
 func NewScene(n *Night, t astro.Instant) Scene {
 	f := frame.At(n.Site, t)
 	sun, moon := ephem.Sun(&f), ephem.Moon(&f)
-	return Scene{
+	s := Scene{
 		Night: n, Instant: t, Frame: f, Sun: sun, Moon: moon,
 		Phase: ephem.MoonPhase(moon, sun), Part: partOf(sun.Place.Alt),
 	}
+	s.makeSky()
+	return s
 }
 
 // partOf names the part of the night by the Sun's altitude.
