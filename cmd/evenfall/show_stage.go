@@ -17,7 +17,7 @@ type jsonDerived struct {
 	Value  float64  `json:"value"`
 	Lo     *float64 `json:"lo"`
 	Hi     *float64 `json:"hi"`
-	Level  float64  `json:"level"`
+	Level  *float64 `json:"level"` // null where there is no interval
 	Method string   `json:"method"`
 	Source string   `json:"source"`
 }
@@ -37,8 +37,12 @@ const derivedFigures = 6
 func (v view) derived() map[string]jsonDerived {
 	out := map[string]jsonDerived{}
 	for _, q := range v.study.Quantities {
-		out[q.Key] = jsonDerived{Value: figures(q.Value, derivedFigures), Lo: rounded(figures(q.Lo, derivedFigures), 12),
-			Hi: rounded(figures(q.Hi, derivedFigures), 12), Level: stage.Level, Method: q.Method, Source: q.Source}
+		d := jsonDerived{Value: figures(q.Value, derivedFigures), Lo: rounded(figures(q.Lo, derivedFigures), 12),
+			Hi: rounded(figures(q.Hi, derivedFigures), 12), Method: q.Method, Source: q.Source}
+		if level := stage.Level; d.Lo != nil && d.Hi != nil {
+			d.Level = &level
+		}
+		out[q.Key] = d
 	}
 	return out
 }
@@ -55,6 +59,10 @@ func (v view) stageText(b *strings.Builder) {
 	}
 	b.WriteString("\n")
 	for _, e := range st.Evidence {
+		if e.Log10Odds == 0 {
+			fmt.Fprintf(b, "  !     %s\n", e.What)
+			continue
+		}
 		fmt.Fprintf(b, "  %+.1f  %s (%s)\n", e.Log10Odds, e.What, e.Source)
 	}
 	if len(st.Evidence) > 0 {

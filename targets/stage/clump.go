@@ -54,8 +54,8 @@ const (
 // quantity: mean and sigma of either.
 type spread struct{ clump, clumpSigma, branch, branchSigma float64 }
 
-// near returns the spreads at absolute magnitude mk and metallicity feh.
-func (s sorting) near(mk, feh float64) spread {
+// spreadAt returns the spreads at absolute magnitude mk and metallicity feh.
+func (s sorting) spreadAt(mk, feh float64) spread {
 	x := mk - clumpMK
 	switch s {
 	case byTemperature:
@@ -105,7 +105,7 @@ func (g giantSeen) clumpOdds(perClump float64) (evidence, prior float64) {
 
 // densities returns P_C and P_R of [giantSeen.clumpOdds].
 func (g giantSeen) densities(perClump float64) (clump, branch float64) {
-	near := g.by.near(g.mk, g.feh)
+	near := g.by.spreadAt(g.mk, g.feh)
 	mu := clumpMean
 	if g.by != byColour {
 		mu += clumpWithFeH * g.feh

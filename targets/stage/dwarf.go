@@ -17,6 +17,7 @@ const (
 	dwarfColourErr = 0.007
 	dwarfTeffErr   = 0.02 // of the temperature itself
 	dwarfLogGErr   = 0.05
+	mostDistances  = 60
 	twoAtmospheres = 11000.0 // K, below which the helium fit is given too
 )
 
@@ -29,7 +30,8 @@ func (s *sight) asDwarf(m *Models, t *targets.Target) {
 	if !ok {
 		return
 	}
-	fit, err := m.dwarfs().Fit(seen, degenerate.WidePrior, degenerate.Hydrogen)
+	s.surface, s.surfaceKnown = surfaceOf(t)
+	fit, err := m.dwarfs().Fit(seen, degenerate.WidePrior, s.surface)
 	if err != nil {
 		s.lack("no white-dwarf model fits what is listed: %v", err)
 		return
@@ -47,6 +49,27 @@ func (s *sight) asDwarf(m *Models, t *targets.Target) {
 
 func fromInterval(i astro.Interval) stellar.Measure { return stellar.Measured(i.Mid, (i.Hi-i.Lo)/2) }
 
+// surfaceOf returns what the spectrum says of a white dwarf's surface, and
+// whether it does; hydrogen otherwise.
+func surfaceOf(t *targets.Target) (degenerate.Composition, bool) {
+	const heliumVisible = 11000 // K, below which helium shows no lines
+	x, ok := degenerate.ParseSpectrum(t.Physics.SpType)
+	switch {
+	case !ok:
+		return degenerate.Hydrogen, false
+	case x.Helium():
+		return degenerate.Helium, true
+	case x.Hydrogen():
+		return degenerate.Hydrogen, true
+	case x.Primary == 'Q' || x.Primary == 'C' || x.Primary == 'Z':
+		cool := !finite(t.Physics.TeffK) || t.Physics.TeffK.Value < heliumVisible
+		if cool {
+			return degenerate.Helium, true
+		}
+	}
+	return degenerate.Hydrogen, false
+}
+
 // fitMethod says what was fitted.
 func (s *sight) fitMethod(t *targets.Target) string {
 	var parts string
@@ -63,7 +86,7 @@ func (s *sight) fitMethod(t *targets.Target) string {
 	add(finite(t.Mags["BP"]) && finite(t.Mags["RP"]), "BP-RP")
 	add(finite(t.Physics.TeffK), "listed temperature")
 	add(finite(t.Physics.LogG), "listed gravity")
-	return "hydrogen models fitted to " + parts
+	return s.surface.String() + " models fitted to " + parts
 }
 
 // dwarfSeen is the target as the models ask for it; false: too little.
@@ -77,8 +100,15 @@ func (s *sight) dwarfSeen(t *targets.Target) (degenerate.Seen, bool) {
 	}
 	known := 0
 	if s.distanceOK {
-		for i, r := range s.distance.R {
-			d.Distances = append(d.Distances, degenerate.Distance{Pc: 1000 * r, Weight: s.distance.W[i]})
+		step := len(s.distance.R)/mostDistances + 1
+		for i := 0; i < len(s.distance.R); i += step {
+			sum, mean := 0.0, 0.0
+			for k := i; k < min(i+step, len(s.distance.R)); k++ {
+				sum, mean = sum+s.distance.W[k], mean+s.distance.W[k]*s.distance.R[k]
+			}
+			if sum > 1e-12 {
+				d.Distances = append(d.Distances, degenerate.Distance{Pc: 1000 * mean / sum, Weight: sum})
+			}
 		}
 		if g, v := t.Mags["G"], t.Mags["V"]; finite(g) {
 			d.GMag, d.GErrMag = g.Value, or(g.Err, dwarfMagErr)

@@ -36,6 +36,21 @@ const (
 	teffWorstErr        = 0.35
 )
 
+// Colours from which B-V says nothing of a giant's temperature.
+const reddestVK, reddestBPRP = 4.9, 1.81
+
+var classM = regexp.MustCompile(`^g?M\d`)
+
+// way is how a luminosity was found.
+type way int
+
+// The ways.
+const (
+	fromMagnitude way = iota
+	fromOscillations
+	fromGravity
+)
+
 var classIII = regexp.MustCompile(`^g?[FGKM][^V]*III`)
 
 // isGiant decides which calibrations are asked.
@@ -61,7 +76,7 @@ func (s *sight) isGiant(t *targets.Target) {
 // calibration holds for.
 func (s *sight) heat(t *targets.Target) {
 	if q := t.Physics.TeffK; finite(q) && q.Value > coldestK && q.Value < hottestK {
-		s.teff = measured(q, math.Max(listedTeffErrK, 0.02*math.Max(q.Value-8000, 0)))
+		s.teff = measured(q, math.Max(listedTeffErrK, math.Max(0.02*math.Max(q.Value-8000, 0), 0.1*math.Max(q.Value-40000, 0))))
 		s.teffMethod, s.teffSource, s.teffListed = "as listed", "the list", true
 		return
 	} else if q.Known {
@@ -78,7 +93,11 @@ func (s *sight) heat(t *targets.Target) {
 		s.estimate(est, nil)
 		return
 	}
-	est, tried, err := stellar.TeffFromColours(s.colours, s.feh, s.giant)
+	colours := s.colours
+	if s.giant && (colours.VK.Known && colours.VK.Value > reddestVK || colours.BPRP.Known && colours.BPRP.Value > reddestBPRP || classM.MatchString(t.Physics.SpType)) {
+		colours.BV = stellar.Measure{} // it hardly changes among M giants
+	}
+	est, tried, err := stellar.TeffFromColours(colours, s.feh, s.giant)
 	if err == nil {
 		s.estimate(est, tried)
 		return
@@ -148,17 +167,20 @@ func (s *sight) shine(t *targets.Target) {
 	if !s.teff.Known || t.Kind == targets.PN || t.Kind == targets.Interacting {
 		return
 	}
+	from := fromMagnitude
 	way := func(logL, err float64, method, source string) {
 		if math.IsNaN(logL) || math.IsNaN(err) || s.logL.Known && s.logL.Err <= err {
 			return
 		}
-		s.logL, s.logLMethod, s.logLSource = stellar.Measured(logL, math.Hypot(err, lawFloor)), method, source
+		s.logL, s.logLMethod, s.logLSource, s.logLFrom = stellar.Measured(logL, math.Hypot(err, lawFloor)), method, source, from
 	}
 	s.byMagnitude(t, way)
+	from = fromOscillations
 	if r := s.seismic.Radius; r.Known && r.Value > 0 {
 		logL := 2*math.Log10(r.Value) + 4*math.Log10(s.teff.Value/stellar.TeffSunK)
 		way(logL, math.Hypot(2*r.Err/r.Value, 4*s.teff.Err/s.teff.Value)/math.Ln10, "radius from oscillations and temperature", cite.KjeldsenBedding1995.String())
 	}
+	from = fromGravity
 	if s.logG.Known && s.logG.Value < 4.6 {
 		mass, massErr := giantsMass, giantsMassErr
 		if q := s.seismic.Mass; q.Known && q.Value > 0 {
@@ -195,6 +217,10 @@ func (s *sight) byMagnitude(t *targets.Target, way func(logL, err float64, metho
 		return (b - a) / (0.02 * tk) * te
 	}
 	if k, ok := s.abs["K"]; ok && (t.Kind == targets.LPV || tk < bcgCoolestK) {
+		if behindDust(t) {
+			s.lack("behind dust of its own: its K magnitude does not give its luminosity")
+			return
+		}
 		way(stellar.LogLFromMbol(k.Value+miraBCK), 0.4*math.Hypot(k.Err, math.Hypot(miraBCKErr, miraMeanErr)), "K magnitude and a bolometric correction of 3.0 +- 0.15",
 			stellar.FromMemory)
 		return
@@ -235,6 +261,13 @@ func (s *sight) byMagnitude(t *targets.Target, way func(logL, err float64, metho
 			}
 		}
 	}
+}
+
+// behindDust tells whether a star's own shell takes much of its light in K.
+func behindDust(t *targets.Target) bool {
+	const long = 500 // d, of carbon Miras that lose much mass
+	j, k := t.Mags["J"], t.Mags["K"]
+	return finite(j) && finite(k) && j.Value-k.Value > shellJK || isCarbon(t) && finite(t.Var.PeriodD) && t.Var.PeriodD.Value > long
 }
 
 // intoPlace writes down where on the diagram the target stands, or why nowhere.

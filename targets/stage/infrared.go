@@ -20,6 +20,9 @@ const (
 	coolGiantJK = 0.9   // below, no giant that pulsates strongly
 )
 
+// oxygenRich are spectra that say what the colours would guess.
+var oxygenRich = match(`^g?[MS]\d`)
+
 // infraredOf weighs what the infrared says of a cool giant: carbon in its
 // atmosphere, or a shell of its own dust. Either belongs to the thermally
 // pulsing giant branch.
@@ -34,7 +37,7 @@ const (
 //
 // Checked: TestInfrared.
 func infraredOf(t *targets.Target) (factor, bool) {
-	if t.Kind != targets.Giant && t.Kind != targets.LPV && t.Kind != "" {
+	if t.Kind != targets.Giant && t.Kind != targets.LPV && t.Kind != "" || oxygenRich.MatchString(t.Physics.SpType) {
 		return factor{}, false
 	}
 	j, k := t.Mags["J"], t.Mags["K"]

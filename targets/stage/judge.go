@@ -46,6 +46,31 @@ func (f *factor) of(s targets.Stage) float64 {
 	return f.rest
 }
 
+// odds are natural logarithms of weights, by the place of a stage in
+// [targets.Stages].
+type odds [len(targets.Stages)]float64
+
+// least is what a weight counts at least, so that nothing is impossible.
+const least = 1e-12
+
+func (f *factor) logs() odds {
+	var out odds
+	for i, s := range targets.Stages {
+		out[i] = math.Log(math.Max(f.of(s), least))
+	}
+	return out
+}
+
+func total(list []odds) odds {
+	var out odds
+	for k := range list {
+		for i := range out {
+			out[i] += list[k][i]
+		}
+	}
+	return out
+}
+
 // Judge weighs everything that a list says of a target.
 //
 //	p(stage) ~ how many there are x product over the evidence of its likelihood in the stage
@@ -55,88 +80,139 @@ func (f *factor) of(s targets.Stage) float64 {
 //
 // Returns:
 //   - probabilities that sum to 1 within 1e-12, the evidence with its log10
-//     odds for the likeliest stage against the rest, what is missing, and the
-//     place on the diagram.
+//     odds for the answer against the rest, what is missing, and the place on
+//     the diagram.
 //
 // Notes:
-//  1. Contradictory evidence widens the probabilities, and a line names the
-//     contradiction.
+//  1. Contradictory evidence widens the probabilities to the mean of what the
+//     words and the place say, and the first line names the contradiction.
+//  2. Where no model of single stars holds the place, the words alone are
+//     believed, as far as the place is unlikely.
 //
 // Source: methods cited in each line of evidence.
 //
 // Checked: TestJudgeShares, TestJudgeBuiltin, TestKeplerGiants, FuzzJudge.
 func (m *Models) Judge(t targets.Target) Verdict {
 	s := m.sight(&t, false)
-	words := listed(&t, s)
-	if f, ok := m.inCluster(&t, s); ok {
-		words = append(words, f)
-	}
+	m.onTracks(s)
+	words := m.wordsOf(&t, s)
 	place := m.placed(&t, s, words)
 	v := Verdict{Missing: s.missing, Place: s.place}
-	all := append(slices.Clone(words), place...)
-	byWords := m.combine(words)
-	if len(place) > 0 {
-		byPlace := m.combine(withoutPriors(place))
-		if clash := contradiction(byWords, byPlace, s); clash != nil {
-			v.P = average(m.combine(all), byWords, byPlace)
-			v.Evidence = append(v.Evidence, *clash)
+	all := append(slices.Clone(words), place.factors...)
+	logs := make([]odds, len(all))
+	for i := range all {
+		logs[i] = all[i].logs()
+	}
+	sum := total(logs)
+	p := m.probabilities(sum)
+	wordsOnly := m.probabilities(total(logs[:len(words)]))
+	clash := m.clash(all, logs, len(words), s)
+	switch {
+	case clash != nil:
+		placeOnly := m.probabilities(total(withoutPriors(place.factors, logs[len(words):])))
+		for i := range p {
+			p[i] = (wordsOnly[i] + placeOnly[i]) / 2
+		}
+	case place.elsewhere > 0:
+		for i := range p {
+			p[i] = (1-place.elsewhere)*p[i] + place.elsewhere*wordsOnly[i]
 		}
 	}
-	if v.P == nil {
-		v.P = m.combine(all)
-	}
+	v.P = asMap(p)
 	top := likeliest(v.P)
 	v.Best = answer(v.P, top)
+	m.evidence(&v, all, logs, sum, clash, s, top)
+	m.weighMass(&v, s, s.post, top)
+	return v
+}
+
+// wordsOf gathers all that is no place on the diagram.
+func (m *Models) wordsOf(t *targets.Target, s *sight) []factor {
+	words := listed(t, s)
+	if f, ok := m.inCluster(t, s); ok {
+		words = append(words, f)
+	}
+	return words
+}
+
+// clash names two ways of knowing that exclude each other.
+func (m *Models) clash(all []factor, logs []odds, words int, s *sight) *targets.Evidence {
+	if len(all) == words {
+		return nil
+	}
+	byWords := asMap(m.probabilities(total(logs[:words])))
+	byPlace := asMap(m.probabilities(total(withoutPriors(all[words:], logs[words:]))))
+	if s.place.HROK && s.fit == nil && !s.dwarf { // a rare stage may be the only one of the words that is there at all
+		here := m.densities(s, s.post)
+		sum, of := 0.0, 0.0
+		for code, n := range m.number() {
+			sum += n * here[code]
+			of += byWords[code] * n * here[code]
+		}
+		const enough = 0.02
+		if sum > 0 && of > enough*sum {
+			return nil
+		}
+	}
+	return contradiction(byWords, byPlace, s)
+}
+
+// evidence lists the reasons, the most telling first; what says next to nothing
+// is left out.
+func (m *Models) evidence(v *Verdict, all []factor, logs []odds, sum odds, clash *targets.Evidence, s *sight, top targets.Stage) {
+	const hardly = 0.05
+	answer := map[targets.Stage]bool{top: true}
+	if v.Best == targets.Merged {
+		answer = map[targets.Stage]bool{targets.RGB: true, targets.EAGB: true}
+	}
 	for i := range all {
-		if e, ok := m.weigh(all, i, top); ok {
+		if e, ok := m.weigh(&all[i], logs[i], sum, answer); ok && (math.Abs(e.Log10Odds) >= hardly || len(all) == 1) {
 			v.Evidence = append(v.Evidence, e)
 		}
 	}
 	slices.SortStableFunc(v.Evidence, func(a, b targets.Evidence) int {
 		return cmp.Compare(math.Abs(b.Log10Odds), math.Abs(a.Log10Odds))
 	})
-	m.weighMass(&v, s, s.post, top)
-	return v
+	if e := s.gravityClash(top); e != nil {
+		v.Evidence = slices.Insert(v.Evidence, 0, *e)
+	}
+	if clash != nil {
+		v.Evidence = slices.Insert(v.Evidence, 0, *clash)
+	}
 }
 
 // withoutPriors leaves out what says how many there are of each stage.
-func withoutPriors(list []factor) []factor {
-	return slices.DeleteFunc(slices.Clone(list), func(f factor) bool { return f.prior })
+func withoutPriors(list []factor, logs []odds) []odds {
+	var out []odds
+	for i := range list {
+		if !list[i].prior {
+			out = append(out, logs[i])
+		}
+	}
+	return out
 }
 
-// combine multiplies the factors and makes the result sum to 1.
-func (m *Models) combine(factors []factor) map[targets.Stage]float64 {
-	logs := make([]float64, len(targets.Stages))
-	most := math.Inf(-1)
-	for i, s := range targets.Stages {
-		for k := range factors {
-			logs[i] += math.Log(math.Max(factors[k].of(s), 1e-12))
-		}
-		most = math.Max(most, logs[i])
-	}
-	p, sum := map[targets.Stage]float64{}, 0.0
+// probabilities turns logarithms into shares that sum to 1.
+func (m *Models) probabilities(logs odds) odds {
+	most := slices.Max(logs[:])
+	sum := 0.0
 	for i := range logs {
 		logs[i] = math.Exp(logs[i]-most) + m.floor
 		sum += logs[i]
 	}
-	rest := 1.0
-	for i, s := range targets.Stages[1:] {
-		p[s] = logs[i+1] / sum
-		rest -= p[s]
+	for i := range logs {
+		logs[i] /= sum
 	}
-	p[targets.Stages[0]] = math.Max(rest, 0)
-	return p
+	return logs
 }
 
-// average is what is believed where two ways of knowing contradict each other.
-func average(all ...map[targets.Stage]float64) map[targets.Stage]float64 {
-	out := map[targets.Stage]float64{}
+// asMap names probabilities; they sum to 1 within 1e-12.
+func asMap(p odds) map[targets.Stage]float64 {
+	out := make(map[targets.Stage]float64, len(p))
 	rest := 1.0
-	for _, s := range targets.Stages[1:] {
-		for _, p := range all {
-			out[s] += p[s] / float64(len(all))
-		}
-		rest -= out[s]
+	for i, s := range targets.Stages[1:] {
+		out[s] = p[i+1]
+		rest -= p[i+1]
 	}
 	out[targets.Stages[0]] = math.Max(rest, 0)
 	return out
@@ -167,23 +243,28 @@ func answer(p map[targets.Stage]float64, top targets.Stage) string {
 // thousandth that anybody reads.
 func reaches(p float64) bool { return math.Round(1000*p) >= 1000*Threshold }
 
-// weigh returns how strongly one factor speaks for a stage against the rest,
-// given all the others.
-func (m *Models) weigh(factors []factor, i int, top targets.Stage) (targets.Evidence, bool) {
-	others := append(append([]factor(nil), factors[:i]...), factors[i+1:]...)
-	p := m.combine(others)
-	num, den := 0.0, 0.0
-	for _, s := range targets.Stages {
-		if s != top {
-			num += p[s] * factors[i].of(s)
-			den += p[s]
+// weigh returns how strongly one factor speaks for the answer against the
+// rest, given all the others.
+func (m *Models) weigh(f *factor, own, sum odds, answer map[targets.Stage]bool) (targets.Evidence, bool) {
+	others := sum
+	for i := range others {
+		others[i] -= own[i]
+	}
+	p := m.probabilities(others)
+	var forIt, forP, against, againstP float64
+	for i, s := range targets.Stages {
+		w := math.Exp(own[i])
+		if answer[s] {
+			forIt, forP = forIt+p[i]*w, forP+p[i]
+		} else {
+			against, againstP = against+p[i]*w, againstP+p[i]
 		}
 	}
-	if num <= 0 || den <= 0 {
+	if forP <= 0 || againstP <= 0 || forIt <= 0 || against <= 0 {
 		return targets.Evidence{}, false
 	}
-	odds := math.Log10(math.Max(factors[i].of(top), 1e-12) / (num / den))
-	return targets.Evidence{What: factors[i].what, Log10Odds: math.Max(-9, math.Min(9, odds)), Source: factors[i].source}, true
+	ratio := math.Log10(forIt / forP * againstP / against)
+	return targets.Evidence{What: f.what, Log10Odds: math.Max(-9, math.Min(9, ratio)), Source: f.source}, true
 }
 
 // Sureness returns the probability of the answer given, 0 to 1: of both stages

@@ -77,6 +77,10 @@ var hotEnd = map[targets.Stage]bool{targets.CSPN: true, targets.Dwarf: true}
 // contradiction names two ways of knowing that exclude each other: all that
 // the list calls the target against its place on the diagram.
 func contradiction(byWords, byPlace map[targets.Stage]float64, s *sight) *targets.Evidence {
+	const trusted = 0.2 // dex of distance beyond which the place is too vague to contradict
+	if s.farErr > trusted && s.logLFrom == fromMagnitude {
+		return nil
+	}
 	overlap, endWords, endPlace := 0.0, 0.0, 0.0
 	for _, code := range targets.Stages {
 		if hotEnd[code] {
@@ -91,7 +95,7 @@ func contradiction(byWords, byPlace map[targets.Stage]float64, s *sight) *target
 		return nil
 	}
 	return &targets.Evidence{
-		What: fmt.Sprintf("contradiction: the list's words say %s, but %s says %s; identification, parallax or magnitude may be wrong",
+		What: fmt.Sprintf("contradiction: the list's words say %s, but %s says %s; the probabilities are the mean of both; identification, parallax or magnitude may be wrong",
 			likeliest(byWords), s.placeWords(), likeliest(byPlace)),
 		Source: "the list's own values",
 	}

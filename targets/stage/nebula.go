@@ -140,7 +140,9 @@ func (m *Models) ofNebula(t *targets.Target, s *sight, st *Study) {
 	g := s.gas
 	if g.cBy != "" {
 		st.add("c_hbeta", "dust, c(Hbeta)", "dex", g.c, math.Max(0, g.c-g.cErr), g.c+g.cErr, g.cBy, g.cSource)
-		st.add("ebv_nebula", "E(B-V) from it", "mag", nebular.EBVFromC(g.c), nebular.EBVFromC(math.Max(0, g.c-g.cErr)), nebular.EBVFromC(g.c+g.cErr), g.cBy, cite.CardelliEtAl1989.String())
+		if _, listed := excess(t); !listed {
+			st.add("ebv_nebula", "E(B-V) from it", "mag", nebular.EBVFromC(g.c), nebular.EBVFromC(math.Max(0, g.c-g.cErr)), nebular.EBVFromC(g.c+g.cErr), g.cBy, cite.CardelliEtAl1989.String())
+		}
 	}
 	s.surfaces(g, st)
 	dist := s.nebularDistances(t, g, st)
@@ -184,7 +186,7 @@ func (s *sight) nebularDistances(t *targets.Target, g *gas, st *Study) stellar.M
 	if ok {
 		e := d.RelErr * d.DistancePc
 		st.add("dist_statistical_pc", "distance by surface brightness", "pc", d.DistancePc, d.DistancePc-e, d.DistancePc+e,
-			"Halpha surface brightness and radius"+noted(d.Note), d.Source.String()+"; coefficients "+memory)
+			"Halpha surface brightness and radius", d.Source.String()+noted(d.Note))
 	}
 	if hb, has := g.logF0[nebular.Hb]; has && g.radius.Known {
 		if x, err := nebular.DistanceFromHb(hb.Value, g.radius.Value); err == nil {

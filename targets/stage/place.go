@@ -3,6 +3,8 @@ package stage
 import (
 	"fmt"
 	"math"
+	"regexp"
+	"slices"
 
 	"evenfall/astro/cite"
 	"evenfall/astro/stellar"
@@ -11,57 +13,93 @@ import (
 )
 
 // elseShare is kept for what no model of single stars holds: a binary, a
-// blend, a wrong extinction. elseDensity is how thinly it is spread, per square
-// dex of the diagram.
-const elseShare, elseDensity = 0.015, 0.05
+// blend, a wrong extinction. elseDensity is how thinly that is spread, stars per
+// square dex of the diagram for each of the clump; where the models have no
+// more than that, the place says nothing.
+const elseShare, elseDensity = 0.015, 1e-5
+
+// placing is what the place on the diagram says.
+type placing struct {
+	factors   []factor
+	elsewhere float64 // probability that no model of single stars holds the place
+}
+
+// onTracks asks the tracks about the place, where there is one.
+func (m *Models) onTracks(s *sight) {
+	if s.place.HROK && s.fit == nil && s.gas == nil {
+		p := m.gridFor(s).Posterior(s.seen())
+		s.post = &p
+	}
+}
 
 // placed returns what the place on the diagram says, after words that the list
 // itself says.
-func (m *Models) placed(t *targets.Target, s *sight, words []factor) []factor {
+func (m *Models) placed(t *targets.Target, s *sight, words []factor) placing {
 	prior := hasPrior(words)
 	switch {
-	case t.Kind == targets.Interacting || t.Kind == targets.PN:
-		return nil // the light is a companion's, a disc's, or the nebula's
+	case t.Kind == targets.Interacting || t.Kind == targets.PN || twoStars.MatchString(t.Physics.SpType):
+		return placing{} // the light is a companion's, a disc's, or the nebula's
+	case s.fit != nil && s.fit.Chi2 < goodFit:
+		return placing{factors: []factor{s.fitsDwarf()}}
 	case s.dwarf:
-		return []factor{s.belowMainSequence()}
+		return placing{factors: []factor{s.belowMainSequence()}}
 	case s.place.HROK:
-		return m.onDiagram(t, s, prior)
+		return m.onDiagram(s, prior)
 	}
 	var out []factor
+	here, hot := s.hotSubdwarfOf()
+	there, ok := s.locus()
 	switch {
 	case prior:
 	case anyLuminous(words):
-		out = append(out, factor{what: "time that single stars spend near the tip of the giant branch", source: practice, prior: true, rest: 1e-5, weight: luminousShares})
+		out = append(out, factor{what: "before looking: time that single stars spend near the tip of the giant branch", source: practice, prior: true, rest: 1e-5, weight: luminousShares})
 	case t.Kind == targets.Giant || s.giant && classIII.MatchString(t.Physics.SpType):
 		out = append(out, timeShares)
+	case ok || len(words) > 0:
+		out = append(out, m.howMany())
 	}
-	if f, ok := s.locus(); ok {
-		out = append(out, f)
+	switch {
+	case hot:
+		return placing{factors: append(out, here)}
+	case ok:
+		return placing{factors: append(out, there)}
 	}
-	return out
+	return placing{factors: out}
 }
 
-func anyLuminous(list []factor) bool {
-	for i := range list {
-		if list[i].luminous {
-			return true
-		}
+// goodFit is the chi² below which white-dwarf models hold a star.
+const goodFit = 9.2
+
+// twoStars are spectra of a white dwarf and another star together.
+var twoStars = regexp.MustCompile(`^D\w*[\d.]*\s*\+`)
+
+// fitsDwarf is what a good fit of white-dwarf models says.
+func (s *sight) fitsDwarf() factor {
+	f := factor{what: fmt.Sprintf("white-dwarf models fit: %.0f K, %.2f Msun, chi2 %.1f", s.fit.TeffK.Mid, s.fit.MassMsun.Mid, s.fit.Chi2), source: cite.BedardEtAl2020.String(),
+		rest: 1e-4, weight: shares{targets.Dwarf: 1, targets.ACC: 0.02, targets.CSPN: 0.01, targets.SDB: 0.003, targets.MS: 0.001}}
+	if !s.dwarf && !s.distanceOK { // temperature and gravity alone
+		f.what = fmt.Sprintf("temperature and gravity of a white dwarf: %.0f K, %.2f Msun", s.fit.TeffK.Mid, s.fit.MassMsun.Mid)
 	}
-	return false
+	return f
+}
+
+// howMany is how many stars there are of each stage.
+func (m *Models) howMany() factor {
+	return factor{what: "before looking: how many single stars of the disc there are of each stage", source: cite.HurleyPolsTout2000.String() + "; " + practice + " for the rarest",
+		weight: m.number(), rest: 1e-6, prior: true}
 }
 
 func hasPrior(list []factor) bool {
-	for i := range list {
-		if list[i].prior {
-			return true
-		}
-	}
-	return false
+	return slices.ContainsFunc(list, func(f factor) bool { return f.prior })
+}
+
+func anyLuminous(list []factor) bool {
+	return slices.ContainsFunc(list, func(f factor) bool { return f.luminous })
 }
 
 // timeShares are the shares of time above 10 Lsun and below 5500 K, with a
 // share for the subgiants that lists mix in.
-var timeShares = factor{what: "time that single stars spend as giants", source: cite.HurleyPolsTout2000.String(), prior: true, rest: 1e-4,
+var timeShares = factor{what: "before looking: time that single stars spend as giants", source: cite.HurleyPolsTout2000.String(), prior: true, rest: 1e-4,
 	weight: shares{targets.RC: 0.53, targets.RGB: 0.45, targets.SG: 0.10, targets.EAGB: 0.016, targets.TPAGB: 0.004, targets.HB: 0.005,
 		targets.PAGB: 0.0001, targets.RSG: 0.0002, targets.MS: 0.01}}
 
@@ -72,51 +110,73 @@ func (s *sight) belowMainSequence() factor {
 		weight: shares{targets.Dwarf: 1, targets.ACC: 0.02, targets.CSPN: 0.01, targets.SDB: 0.003, targets.MS: 0.001}}
 }
 
+// sparse is the density, of all stars of a stage per square dex, from which
+// some of them are found at a place.
+const sparse = 0.003
+
 // onDiagram weighs temperature and luminosity: how many stars of each stage
 // there are, and how they are spread over the diagram.
-func (m *Models) onDiagram(t *targets.Target, s *sight, prior bool) []factor {
-	seen := s.seen()
-	post := m.gridFor(s).Posterior(seen)
-	s.post = &post
-	density := m.densities(s, &post)
+func (m *Models) onDiagram(s *sight, prior bool) placing {
+	density := m.densities(s, s.post)
 	number := m.number()
-	where := factor{what: fmt.Sprintf("%.0f +- %.0f K at log L = %.2f +- %.2f", s.teff.Value, s.teff.Err, s.logL.Value, s.logL.Err),
-		source: cite.HurleyPolsTout2000.String() + ", corrected to real giants; what no track holds by common practice, no source", weight: density, rest: 1e-6}
-	out := []factor{}
-	if !prior {
-		out = append(out, factor{what: "how many there are of each, single stars of the disc", source: cite.HurleyPolsTout2000.String() + "; " + practice + " for the rarest",
-			weight: number, rest: 1e-6, prior: true})
-	}
-	g, teffK, ok := s.asGiant()
-	if prior || !ok {
-		return append(out, where)
-	}
-	good, why := g.inRange(teffK, s.feh.Known)
-	both := number[targets.RC]*density[targets.RC] + number[targets.RGB]*density[targets.RGB]
-	if !good || both <= 0 {
-		if s.near(post) {
-			s.lack("clump or giant branch: tracks alone tell, %s", why)
+	modelled, source := 0.0, cite.HurleyPolsTout2000.String()+", corrected to real giants"
+	top := targets.MS
+	for code, d := range density {
+		if modelled += d * number[code]; d*number[code] > density[top]*number[top] {
+			top = code
 		}
-		return append(out, where)
 	}
-	// the tracks say how many of both there are, the loci which of the two
-	density[targets.RC], density[targets.RGB] = both/2/number[targets.RC], both/2/number[targets.RGB]
-	evidence, share := g.clumpOdds(branchPerClump(m.population))
-	if g.by == byTemperature && !s.feh.Known {
-		evidence, share = g.overMetals(branchPerClump(m.population))
+	if !fromGrid[top] {
+		source = practice
 	}
-	scale := 2 / (math.Exp(evidence+share) + 1)
-	return append(out, where,
-		factor{what: g.words(teffK, s.feh), source: "fitted to " + cite.ElsworthEtAl2019.String(), rest: 1,
-			weight: shares{targets.RC: scale * math.Exp(evidence), targets.RGB: scale}},
-		factor{what: fmt.Sprintf("%s: %.2f giants of the branch a magnitude for each of the clump", m.population.Words(), branchPerClump(m.population)),
-			source: cite.HurleyPolsTout2000.String(), rest: 1, prior: true,
-			weight: shares{targets.RC: math.Exp(share), targets.RGB: 1}})
+	where := factor{what: fmt.Sprintf("%.0f +- %.0f K at log L = %.2f +- %.2f", s.teff.Value, s.teff.Err, s.logL.Value, s.logL.Err), source: source, weight: density, rest: 1e-9}
+	out := placing{elsewhere: math.Max(elseShare, elseDensity/(elseDensity+modelled))}
+	if out.elsewhere > 0.3 {
+		s.lack("no model of single stars holds its place, %s", s.placeWords())
+	}
+	if prior {
+		for code, x := range density { // shares among stars so called stand; the place refuses those that are not there
+			density[code] = x / (x + sparse)
+		}
+		out.factors = []factor{where}
+		return out
+	}
+	out.factors = append([]factor{m.howMany(), where}, m.clumpOrBranch(s, density, number)...)
+	return out
 }
 
-// near tells whether it matters which of the two a star is.
-func (s *sight) near(p tracks.Posterior) bool {
-	return p.P[targets.RC] > 0.05 && p.P[targets.RGB] > 0.05
+// clumpOrBranch sorts clump from giant branch by their measured places, where
+// those hold; the tracks have said how many there are of both, in density.
+func (m *Models) clumpOrBranch(s *sight, density, number shares) []factor {
+	g, teffK, ok := s.asGiant()
+	both := number[targets.RC]*density[targets.RC] + number[targets.RGB]*density[targets.RGB]
+	if !ok || both <= 0 {
+		return nil
+	}
+	if good, why := g.inRange(teffK, s.feh.Known); !good {
+		if s.eitherLikely() {
+			s.lack("clump or giant branch: tracks alone tell, %s", why)
+		}
+		return nil
+	}
+	density[targets.RC], density[targets.RGB] = both/2/number[targets.RC], both/2/number[targets.RGB]
+	perClump := branchPerClump(m.population)
+	evidence, share := g.clumpOdds(perClump)
+	if g.by == byTemperature && !s.feh.Known {
+		evidence, share = g.overMetals(perClump)
+	}
+	scale := 2 / (math.Exp(evidence+share) + 1)
+	return []factor{
+		{what: g.words(teffK, s.feh), source: "fitted to " + cite.ElsworthEtAl2019.String(), rest: 1,
+			weight: shares{targets.RC: scale * math.Exp(evidence), targets.RGB: scale}},
+		{what: fmt.Sprintf("before looking: %s, %.2f giants of the branch a magnitude for each of the clump", m.population.Words(), perClump),
+			source: cite.HurleyPolsTout2000.String(), rest: 1, prior: true,
+			weight: shares{targets.RC: math.Exp(share), targets.RGB: 1}}}
+}
+
+// eitherLikely tells whether it matters which of the two a star is.
+func (s *sight) eitherLikely() bool {
+	return s.post != nil && s.post.P[targets.RC] > 0.05 && s.post.P[targets.RGB] > 0.05
 }
 
 // The grids' metallicities; a star beyond them is compared with the nearest.
@@ -163,9 +223,22 @@ func (m *Models) densities(s *sight, post *tracks.Posterior) shares {
 		out[code] += post.Density(code) / clump
 	}
 	for code, n := range number {
-		out[code] = (1-elseShare)*out[code]/n + elseShare*elseDensity
+		out[code] /= n
 	}
+	mergeBranches(out, number, s)
 	return out
+}
+
+// mergeBranches keeps the early asymptotic branch from being named by its place
+// alone: below the tip of the giant branch nothing tells the two apart.
+func mergeBranches(density, number shares, s *sight) {
+	const tip, most = 3.45, 0.45 // log10 Lsun; share of the pair
+	rgb, eagb := density[targets.RGB]*number[targets.RGB], density[targets.EAGB]*number[targets.EAGB]
+	if s.logL.Value > tip || rgb <= 0 || eagb <= most*(rgb+eagb) {
+		return
+	}
+	pair := rgb + eagb
+	density[targets.EAGB], density[targets.RGB] = most*pair/number[targets.EAGB], (1-most)*pair/number[targets.RGB]
 }
 
 // fromGrid are the stages that the grid decides; the others have regions.
@@ -175,7 +248,7 @@ var fromGrid = map[targets.Stage]bool{targets.MS: true, targets.SG: true, target
 func (s *sight) asGiant() (g giantSeen, teffK float64, ok bool) {
 	k, okK := s.abs["K"]
 	if okK {
-		g.mk, g.mkErr = k.Value, math.Hypot(k.Err, 0)
+		g.mk, g.mkErr = k.Value, k.Err
 	} else {
 		gk, err := stellar.GKFromTeff(s.teff.Value, stellar.GiantLogG, s.feh)
 		absG, errG := stellar.AbsGFromLogL(s.logL.Value, s.teff.Value)

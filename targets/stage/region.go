@@ -30,6 +30,7 @@ var regions = []region{
 	{targets.PAGB, 3.68, 4.48, 3.55, 0, 0.30, 2e-5},
 	{targets.CSPN, 4.48, 5.30, 3.0, 0, 0.70, 1e-5},
 	{targets.RSG, 3.53, 3.60, 4.85, 0, 0.35, 1e-4},
+	{targets.RSG, 3.60, 4.80, 4.90, 0.4, 0.50, 1e-4}, // on its way across
 	{targets.Dwarf, 3.55, 5.00, -4.60, 4, 0.25, 60},
 	{targets.ACC, 3.60, 4.70, -1.5, 1.5, 1.2, 0.01},
 	{targets.TPAGB, 3.35, 3.50, 3.65, 0, 0.35, 0.003}, // cooler than the tracks get

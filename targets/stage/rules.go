@@ -90,28 +90,10 @@ var variability = []rule{
 		shares{targets.PAGB: 1, targets.TPAGB: 0.1}, 0.01, practice, selects},
 	{match(`^RR`), "RR Lyrae star, type %s", shares{targets.HB: 1}, 0.002, practice, selects},
 	{match(`^ZZ|^V777|^GWVIR`), "pulsating white dwarf, type %s", shares{targets.Dwarf: 1, targets.ACC: 0.3, targets.CSPN: 0.02}, 0.01, practice, selects},
+	{match(`^D?CEP`), "Cepheid, type %s: a massive star that burns helium in its core", shares{targets.RC: 1, targets.RSG: 0.1, targets.PAGB: 0.02}, 0.005, practice, selects},
+	{match(`^CW|^BLHER`), "Cepheid of old stars, type %s: past the horizontal branch", shares{targets.PAGB: 0.5, targets.HB: 0.5, targets.EAGB: 0.5}, 0.01, practice, selects},
+	{match(`^ACYG|^SDOR`), "supergiant variable, type %s", shares{targets.RSG: 1, targets.PAGB: 0.1}, 0.01, practice, selects},
 	{match(`^RPHS|^V361HYA|^V1093HER`), "pulsating hot subdwarf, type %s", shares{targets.SDB: 1}, 0.01, practice, selects},
-}
-
-// spectra lists what the spectral type says; the first that fits counts.
-var spectra = []rule{
-	{match(`^sd[OB]`), "hot subdwarf spectrum %s", shares{targets.SDB: 1}, 0.02, practice, selects},
-	{match(`^sdA|^.*HB`), "spectrum %s of the blue horizontal branch", shares{targets.HB: 1}, 0.05, practice, selects},
-	{match(`^D[ABCOQZX]`), "white dwarf spectrum %s", shares{targets.Dwarf: 1, targets.ACC: 0.4, targets.CSPN: 0.1}, 0.01, practice, selects},
-	{match(`^\[?W[CO]|^Of?\(`), "spectrum %s of a central star", shares{targets.CSPN: 1, targets.Neb: 1, targets.Dwarf: 0.2}, 0.05, practice, selects},
-	{match(`^(C|N)[-\d,]|^C$|^C-[NJ]`), "carbon star, spectrum %s", shares{targets.TPAGB: 1, targets.PAGB: 0.1}, 0.005, practice, ofLuminous},
-	{match(`^S[\d-]|^M\d*S|^MS|^S$`), "S star, spectrum %s: third dredge-up, or mass from a companion that had it",
-		shares{targets.TPAGB: 1}, 0.01, practice, ofLuminous},
-	{match(`^[FGKAB][\d.]*.*I(a|b|ab|I)?[^IV]*:Ba|Ba\d`), "barium star, spectrum %s: polluted by a companion that is a white dwarf now",
-		shares{targets.RGB: 1, targets.RC: 1, targets.EAGB: 0.6}, 0.1, practice, likelihood},
-	{match(`^[KM][^I]*I(a|ab|b)`), "supergiant class, spectrum %s", shares{targets.RSG: 1, targets.TPAGB: 0.1, targets.PAGB: 0.1}, 0.01, practice, selects},
-	{match(`^[BAFG][^I]*I(a|ab|b|\b)`), "high luminosity at an early type, spectrum %s", shares{targets.PAGB: 1, targets.RSG: 0.3}, 0.03, practice, selects},
-	{match(`^[FGK][\d.+-]*III-IV`), "between giant and subgiant, spectrum %s", shares{targets.SG: 1, targets.RGB: 1, targets.RC: 0.4}, 0.1, practice, likelihood},
-	{match(`^[FGK][\d.+-]*IV`), "subgiant class, spectrum %s", shares{targets.SG: 1, targets.MS: 0.1, targets.RGB: 0.05, targets.RC: 0.02}, 0.01, practice, likelihood},
-	{match(`^[FGKM][\d.+-]*V`), "dwarf class, spectrum %s", shares{targets.MS: 1, targets.SG: 0.5, targets.ACC: 0.2}, 0.02, practice, likelihood},
-	{match(`^M([5-9]|10)`), "late M giant, spectrum %s", shares{targets.TPAGB: 1, targets.EAGB: 0.4, targets.RGB: 0.15, targets.RSG: 0.1, targets.ACC: 0.3}, 0.005, practice, ofLuminous},
-	{match(`^M`), "M giant, spectrum %s: above the clump", shares{targets.RGB: 1, targets.EAGB: 1, targets.TPAGB: 0.15, targets.RSG: 0.2, targets.ACC: 0.2}, 0.005, practice, ofLuminous},
-	{match(`^[GK].*III`), "giant class, spectrum %s", shares{targets.RGB: 1, targets.RC: 1, targets.EAGB: 0.6, targets.SG: 0.1, targets.TPAGB: 0.01}, 0.01, practice, likelihood},
 }
 
 // longSemiregular and shortSemiregular are the shares among semiregulars of a
@@ -123,20 +105,29 @@ var (
 
 const semiregularSplitD = 60
 
+var semiregular = match(`^SR[AB]?(\b|:|$)`)
+
 // listed gathers what the catalogue's own words say, the kind apart.
 func listed(t *targets.Target, s *sight) []factor {
 	var out []factor
-	for _, of := range []func(*targets.Target) (factor, bool){kindOf, variabilityOf, spectrumOf, infraredOf} {
-		if f, ok := of(t); ok {
+	add := func(f factor, ok bool) {
+		if ok {
 			out = append(out, f)
 		}
 	}
-	if s.fit == nil && !s.place.HROK { // else the place on the diagram says it better
-		for _, of := range []func(*targets.Target) (factor, bool){gravityOf, temperatureOf} {
-			if f, ok := of(t); ok {
-				out = append(out, f)
-			}
-		}
+	add(kindOf(t))
+	add(variabilityOf(t))
+	add(spectrumOf(t))
+	add(technetiumOf(t))
+	add(infraredOf(t))
+	switch {
+	case s.fit != nil:
+	case s.place.HROK: // the place on the diagram says the rest better
+		add(s.gravityHere())
+		add(s.aboveAGB(t))
+	default:
+		add(gravityOf(t))
+		add(s.temperatureOf(t))
 	}
 	return out
 }
@@ -149,6 +140,9 @@ func kindOf(t *targets.Target) (factor, bool) {
 	}
 	switch t.Kind {
 	case targets.Giant:
+		if v, ok := variabilityOf(t); ok && v.prior {
+			return factor{}, false // the type of variability says it more finely
+		}
 		f.weight = giantKind
 		return f, true
 	case targets.LPV:
@@ -165,10 +159,10 @@ func kindOf(t *targets.Target) (factor, bool) {
 
 func variabilityOf(t *targets.Target) (factor, bool) {
 	v := strings.ToUpper(strings.TrimSpace(t.Var.Type))
-	if v == "" {
-		return factor{}, false
+	if v == "" || t.Kind == targets.Interacting && strings.HasPrefix(v, "ZZ") {
+		return factor{}, false // in a binary the dwarf may pulsate and accrete
 	}
-	if match(`^SR[AB]?(\b|:|$)`).MatchString(v) {
+	if semiregular.MatchString(v) {
 		f := factor{what: "semiregular, type " + t.Var.Type, weight: longSemiregular, rest: 0.001, source: practice, luminous: true}
 		if p := t.Var.PeriodD; p.Known && p.Value < semiregularSplitD {
 			f.weight = shortSemiregular
@@ -181,67 +175,16 @@ func variabilityOf(t *targets.Target) (factor, bool) {
 	return first(variability, v, t.Var.Type)
 }
 
-func spectrumOf(t *targets.Target) (factor, bool) {
-	// a composite spectrum with a nova or a companion says little of one star
-	sp := strings.TrimSpace(t.Physics.SpType)
-	if sp == "" || strings.HasPrefix(strings.ToLower(sp), "pec") || (strings.Contains(sp, "+") && t.Kind == targets.Interacting) {
-		return factor{}, false
-	}
-	f, ok := first(spectra, sp, sp)
-	if v := strings.ToUpper(t.Var.Type); strings.HasPrefix(v, "RCB") && f.luminous {
-		return factor{}, false // carbon is what such stars are made of
-	}
-	return f, ok
+// factor is the rule applied to a text.
+func (r *rule) factor(shown string) factor {
+	return factor{what: fmt.Sprintf(r.what, shown), source: r.source, weight: r.weight, rest: r.rest, prior: r.says == selects, luminous: r.says == ofLuminous}
 }
 
 func first(rules []rule, text, shown string) (factor, bool) {
 	for _, r := range rules {
 		if r.pattern.MatchString(text) {
-			f := factor{what: fmt.Sprintf(r.what, shown), source: r.source, weight: r.weight, rest: r.rest, prior: r.says == selects, luminous: r.says == ofLuminous}
-			return f, true
+			return r.factor(shown), true
 		}
 	}
 	return factor{}, false
-}
-
-// gravityOf weighs a listed surface gravity.
-func gravityOf(t *targets.Target) (factor, bool) {
-	g := t.Physics.LogG
-	if !g.Known || g.Value < -2 || g.Value > 11 {
-		return factor{}, false
-	}
-	f := factor{what: fmt.Sprintf("surface gravity log g = %.2f", g.Value), source: practice, rest: 0.02}
-	switch v := g.Value; {
-	case v >= 6.5:
-		f.weight = shares{targets.Dwarf: 1, targets.CSPN: 0.3, targets.ACC: 0.5}
-	case v >= 5 && v < 6.5:
-		f.weight = shares{targets.SDB: 1, targets.CSPN: 0.5, targets.Dwarf: 0.05}
-	case v >= 4.1:
-		f.weight = shares{targets.MS: 1, targets.SG: 0.4}
-	case v >= 3.1:
-		f.weight = shares{targets.SG: 1, targets.RGB: 0.15, targets.MS: 0.1, targets.HB: 0.3}
-	case v >= 2.8:
-		f.weight = shares{targets.RGB: 1, targets.RC: 0.4, targets.SG: 0.3, targets.HB: 1}
-	case v >= 2.2:
-		f.weight = shares{targets.RC: 1, targets.RGB: 0.35, targets.HB: 0.5}
-	case v >= 1.4:
-		f.weight = shares{targets.RGB: 1, targets.EAGB: 0.6, targets.RC: 0.05, targets.PAGB: 0.2}
-	default:
-		f.weight = shares{targets.RGB: 0.6, targets.EAGB: 0.8, targets.TPAGB: 1, targets.RSG: 1, targets.PAGB: 1}
-	}
-	return f, true
-}
-
-// temperatureOf weighs a listed temperature where it rules out the cool giants.
-func temperatureOf(t *targets.Target) (factor, bool) {
-	k := t.Physics.TeffK
-	const coolGiantsEnd, hotEnd = 6800, 500000
-	if !k.Known || k.Value < coolGiantsEnd || k.Value > hotEnd {
-		return factor{}, false
-	}
-	hot := shares{targets.HB: 1, targets.MS: 1, targets.PAGB: 1, targets.Dwarf: 1, targets.ACC: 1, targets.SDB: 0.3, targets.CSPN: 0.3, targets.Neb: 1, targets.SG: 0.3}
-	if k.Value > 20000 {
-		hot = shares{targets.Dwarf: 1, targets.SDB: 1, targets.CSPN: 1, targets.Neb: 1, targets.ACC: 1, targets.MS: 0.1, targets.PAGB: 0.3, targets.HB: 0.1}
-	}
-	return factor{what: fmt.Sprintf("%.0f K: hotter than any red giant", k.Value), source: practice, weight: hot, rest: 0.001}, true
 }

@@ -3,6 +3,7 @@ package stage
 import (
 	"fmt"
 	"math"
+	"regexp"
 	"strings"
 
 	"evenfall/astro"
@@ -32,28 +33,31 @@ type sight struct {
 	ebvErr     float64
 	ebvAssumed bool
 
-	abs        map[targets.Band]stellar.Measure // absolute magnitudes without extinction
-	colours    stellar.Colours                  // without reddening
-	gkErr      float64                          // error of (G-K)0 beyond what common reddening scatters
-	releaseIs  stellar.Release
-	giant      bool
-	feh        stellar.Measure
-	teff       stellar.Measure // K
-	teffMethod string
-	teffSource string
-	teffListed bool
-	logL       stellar.Measure
-	logLMethod string
-	logLSource string
-	logG       stellar.Measure
-	logGMethod string
-	logGSource string
-	seismic    stellar.Seismic
-	dwarf      bool               // below the main sequence, by the cut for white dwarfs
-	absV       stellar.Measure    // of a nebula's central star
-	gas        *gas               // a nebula without its dust; nil: no nebula
-	fit        *degenerate.Answer // of white-dwarf models; nil: none
-	post       *tracks.Posterior  // of the tracks at the place; nil: not asked
+	abs          map[targets.Band]stellar.Measure // absolute magnitudes without extinction
+	colours      stellar.Colours                  // without reddening
+	gkErr        float64                          // error of (G-K)0 beyond what common reddening scatters
+	releaseIs    stellar.Release
+	giant        bool
+	feh          stellar.Measure
+	teff         stellar.Measure // K
+	teffMethod   string
+	teffSource   string
+	teffListed   bool
+	logL         stellar.Measure
+	logLMethod   string
+	logLSource   string
+	logLFrom     way
+	logG         stellar.Measure
+	logGMethod   string
+	logGSource   string
+	seismic      stellar.Seismic
+	dwarf        bool            // below the main sequence, by the cut for white dwarfs
+	absV         stellar.Measure // of a nebula's central star
+	gas          *gas            // a nebula without its dust; nil: no nebula
+	surface      degenerate.Composition
+	surfaceKnown bool               // the spectrum says it
+	fit          *degenerate.Answer // of white-dwarf models; nil: none
+	post         *tracks.Posterior  // of the tracks at the place; nil: not asked
 }
 
 // Step is one figure with its working.
@@ -133,17 +137,17 @@ func release(t *targets.Target) stellar.Release {
 	switch {
 	case !t.Place.EpochGiven:
 		return stellar.Other
-	case near(t.Place.EpochJyr, 2016):
+	case sameEpoch(t.Place.EpochJyr, 2016):
 		return stellar.GaiaDR3
-	case near(t.Place.EpochJyr, 2015.5):
+	case sameEpoch(t.Place.EpochJyr, 2015.5):
 		return stellar.GaiaDR2
-	case near(t.Place.EpochJyr, 1991.25):
+	case sameEpoch(t.Place.EpochJyr, 1991.25):
 		return stellar.Hipparcos
 	}
 	return stellar.Other
 }
 
-func near(a, b float64) bool { return math.Abs(a-b) < 0.01 }
+func sameEpoch(a, b float64) bool { return math.Abs(a-b) < 0.01 }
 
 // far works out the distance: from the parallax as a distribution, from the
 // list's own, or from the period of a Mira.
@@ -188,16 +192,22 @@ func (s *sight) far(t *targets.Target) {
 		s.farOtherwise(t, "the parallax cannot be used")
 		return
 	}
+	if d.Doubtful {
+		s.farOtherwise(t, "the parallax is negative by more than 5 of its errors, so it is not used")
+		return
+	}
 	s.poor = right.Mas < fewParallaxErr*right.ErrMas
 	switch {
-	case d.Doubtful:
-		s.lack("the parallax is negative by more than 5 of its errors: something is wrong with it")
 	case right.Mas <= 0:
 		s.lack("parallax not positive: the distance, %.0f to %.0f pc, is mostly that of stars in general", 1000*d.Q16, 1000*d.Q84)
 	case s.poor:
 		s.lack("parallax only %.1f times its error: distance %.0f to %.0f pc, from it and from how stars are spread", right.Mas/right.ErrMas, 1000*d.Q16, 1000*d.Q84)
 	}
-	s.set(d, "parallax with a prior that falls off over "+fmt.Sprintf("%.2g kpc", scale), cite.BailerJones2015.String())
+	how := "parallax with a prior that falls off over " + fmt.Sprintf("%.2g kpc", scale)
+	if most := brightestDistance(t); s.poor && most < d.Q95 {
+		d, how = nearer(d, most), how+", no farther than the brightest of stars would be"
+	}
+	s.set(d, how, cite.BailerJones2015.String())
 }
 
 // set takes a distance.
@@ -245,6 +255,74 @@ func around(d, e float64) stellar.Distances {
 	return out
 }
 
+// byModulus is a distance whose modulus is known with an error, mag.
+func byModulus(mu, sd float64) stellar.Distances {
+	const nodes, reach = 21, 2.5
+	at := func(z float64) float64 { return math.Pow(10, (mu+z*sd-10)/5) }
+	out := stellar.Distances{PlxMas: 1 / at(0), ErrMas: sd / modulusPerRelative / at(0), Q05: at(-1.645), Q16: at(-1), Q50: at(0), Q84: at(1), Q95: at(1.645), ModeKpc: at(0)}
+	sum := 0.0
+	for i := range nodes {
+		z := reach * (2*float64(i)/(nodes-1) - 1)
+		out.R, out.W = append(out.R, at(z)), append(out.W, math.Exp(-z*z/2))
+		sum += math.Exp(-z * z / 2)
+	}
+	for i := range out.W {
+		out.W[i] /= sum
+	}
+	return out
+}
+
+// Absolute magnitudes that no star of the lists passes; common practice, no
+// source.
+var brightestStar = map[targets.Band]float64{"V": -9, "G": -9, "K": -12}
+
+// brightestAGB is the same for stars listed as long-period variables, in K.
+const brightestAGB = -10.0
+
+// brightestDistance returns how far a star may be before it would be brighter
+// than any, kpc.
+func brightestDistance(t *targets.Target) float64 {
+	most := math.Inf(1)
+	for band, limit := range brightestStar {
+		if t.Kind == targets.LPV && band == "K" {
+			limit = brightestAGB
+		}
+		if m := t.Mags[band]; finite(m) {
+			most = math.Min(most, math.Pow(10, (m.Value-limit-10)/5))
+		}
+	}
+	return most
+}
+
+// nearer is a distance of which nothing beyond r is left.
+func nearer(d stellar.Distances, r float64) stellar.Distances {
+	n := 0
+	sum := 0.0
+	for n < len(d.R) && d.R[n] <= r {
+		sum += d.W[n]
+		n++
+	}
+	if n < 2 || sum <= 0 {
+		return d
+	}
+	out := stellar.Distances{PlxMas: d.PlxMas, ErrMas: d.ErrMas, ScaleKpc: d.ScaleKpc, ModeKpc: math.Min(d.ModeKpc, r), R: d.R[:n], W: make([]float64, n)}
+	below := 0.0
+	marks := []struct {
+		p    float64
+		into *float64
+	}{{0.05, &out.Q05}, {0.16, &out.Q16}, {0.5, &out.Q50}, {0.84, &out.Q84}, {0.95, &out.Q95}}
+	for i := range n {
+		out.W[i] = d.W[i] / sum
+		below += out.W[i]
+		for _, m := range marks {
+			if *m.into == 0 && below >= m.p {
+				*m.into = d.R[i]
+			}
+		}
+	}
+	return out
+}
+
 // farByPeriod takes the distance of a Mira from its period and its mean K.
 func (s *sight) farByPeriod(t *targets.Target) bool {
 	k := t.Mags["K"]
@@ -258,13 +336,7 @@ func (s *sight) farByPeriod(t *targets.Target) bool {
 	}
 	e, _ := excess(t)
 	mu := k.Value - absK.Value - extinctionK*e
-	sd := math.Hypot(absK.Err, miraMeanErr)
-	plx := 100 / math.Pow(10, mu/5)
-	d, err := stellar.Distance(stellar.DistancePrior{PlxMas: plx, ErrMas: plx * sd / modulusPerRelative, ScaleKpc: stellar.SkyScaleKpc})
-	if err != nil {
-		return false
-	}
-	s.set(d, fmt.Sprintf("period-luminosity relation of Miras, M_K = %.2f +- %.2f", absK.Value, absK.Err), cite.WhitelockEtAl2008.String())
+	s.set(byModulus(mu, math.Hypot(absK.Err, miraMeanErr)), fmt.Sprintf("period-luminosity relation of Miras, M_K = %.2f +- %.2f", absK.Value, absK.Err), cite.WhitelockEtAl2008.String())
 	return true
 }
 
@@ -273,9 +345,10 @@ func isMira(t *targets.Target) bool {
 	return v == "M" || strings.HasPrefix(v, "M:") || strings.HasPrefix(v, "M+")
 }
 
+var carbonStar = regexp.MustCompile(`^N\d?($|[,\s(:ep])|^C-[NJ]|^C\d|^C$`)
+
 func isCarbon(t *targets.Target) bool {
-	sp := strings.TrimSpace(t.Physics.SpType)
-	return strings.HasPrefix(sp, "C") || strings.HasPrefix(sp, "N")
+	return carbonStar.MatchString(strings.TrimSpace(t.Physics.SpType))
 }
 
 // excess returns the true colour excess that the list gives, and whether it does.

@@ -49,6 +49,7 @@ func (s *Study) SharesMethod(i int) bool {
 // Checked: TestStudyGiant, TestStudyDwarf, TestStudyNebula, FuzzJudge.
 func (m *Models) Study(t targets.Target, v *Verdict) Study {
 	s := m.sight(&t, true)
+	m.onTracks(s)
 	st := &Study{Steps: s.steps}
 	s.distances(st)
 	switch {
@@ -131,12 +132,11 @@ func (m *Models) ofStar(t *targets.Target, s *sight, v *Verdict, st *Study) {
 	rel := math.Hypot(s.logL.Err/2*math.Ln10, 2*s.teff.Err/s.teff.Value)
 	st.add("radius_rsun", "radius", "Rsun", r, r*math.Exp(-rel), r*math.Exp(rel), "luminosity and temperature", cite.IAU2015B3.String())
 	mass := stellar.Measured(giantsMass, giantsMassErr)
-	post := m.gridFor(s).Posterior(s.seen())
 	code := targets.Stage(v.Best)
 	if v.Best == targets.Merged || v.Best == targets.Undecided {
 		code = likeliest(v.P)
 	}
-	if of, ok := post.ByStage[code]; ok && code != targets.RSG {
+	if of, ok := s.post.ByStage[code]; ok && code != targets.RSG {
 		mass = fromInterval(of.Mass)
 		st.span("mass_msun", "mass", "Msun", of.Mass, 1, "evolution tracks, as "+string(code), cite.HurleyPolsTout2000.String())
 		st.span("age_gyr", "age", "Gyr", of.Age, 1e-3, "evolution tracks, as "+string(code), cite.HurleyPolsTout2000.String())
@@ -208,7 +208,7 @@ func decide(t *targets.Target, s *sight, v *Verdict) []string {
 	if both(targets.SG, targets.MS) || both(targets.SG, targets.RGB) {
 		say("log g to 0.1 from a spectrum, or solar-like oscillations")
 	}
-	if s.fit != nil && s.fit.TeffK.Mid < twoAtmospheres && !finite(t.Physics.TeffK) {
+	if s.fit != nil && s.fit.TeffK.Mid < twoAtmospheres && !s.surfaceKnown {
 		say("a spectrum: hydrogen or helium atmosphere; Gaia photometry cannot tell")
 	}
 	return out

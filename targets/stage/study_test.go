@@ -272,3 +272,47 @@ func TestCluster(t *testing.T) {
 		t.Errorf("progenitor in the Hyades: %+v", q)
 	}
 }
+
+// Gravity beside a place: 28,000 K at log L = 1.2 with log g 5.5 is a hot
+// subdwarf, the same with 4.2 a star of the main sequence's mass; a giant's
+// place with a dwarf's gravity is named a contradiction.
+func TestGravityHere(t *testing.T) {
+	m := NewModels()
+	star := func(teff, logg, v float64) targets.Target {
+		return targets.Target{Name: "x", Place: targets.Place{Plx: targets.KnownErr(2, 0.02), PlxFrom: "corrected"}, Mags: map[targets.Band]targets.Measure{"V": targets.Known(v)},
+			Physics: targets.Physics{EBV: targets.Known(0), TeffK: targets.KnownErr(teff, 0.02*teff), LogG: targets.KnownErr(logg, 0.1)}}
+	}
+	v, _ := studied(t, m, star(28000, 5.5, 12.9))
+	if v.Best != "SDB" {
+		t.Errorf("a hot subdwarf comes out as %s, %v", v.Best, v.P)
+	}
+	v, _ = studied(t, m, star(4800, 4.6, 8.5))
+	if len(v.Evidence) == 0 || !strings.HasPrefix(v.Evidence[0].What, "contradiction: log g") {
+		t.Errorf("nothing names the gravity: %v", v.Evidence)
+	}
+}
+
+// A place between main sequence and white dwarfs at a blue colour, without a
+// temperature: hot subdwarfs of Geier et al. 2019.
+func TestHotSubdwarf(t *testing.T) {
+	v, _ := studied(t, NewModels(), targets.Target{Name: "x", Place: targets.Place{Plx: targets.KnownErr(2, 0.04), PlxFrom: "corrected"}, Physics: targets.Physics{EBV: targets.Known(0)},
+		Mags: map[targets.Band]targets.Measure{"G": targets.Known(12.9), "BP": targets.Known(12.72), "RP": targets.Known(13.15)}})
+	if v.Best != "SDB" {
+		t.Errorf("comes out as %s %v", v.Best, v.P)
+	}
+}
+
+// Wood, Bessell & Fox 1983: -6.608 at 300 d; a star of M_bol -8 is massive.
+func TestAboveAGB(t *testing.T) {
+	m := NewModels()
+	tg := targets.Target{Name: "x", Kind: targets.LPV, Place: targets.Place{Plx: targets.KnownErr(1, 0.02), PlxFrom: "corrected"}, Physics: targets.Physics{EBV: targets.Known(0), SpType: "M4", TeffK: targets.Known(3600)},
+		Var: targets.Variability{PeriodD: targets.Known(300)}, Mags: map[targets.Band]targets.Measure{"K": targets.Known(-1)}}
+	v, _ := studied(t, m, tg)
+	if v.Best != "RSG" {
+		t.Errorf("comes out as %s %v", v.Best, v.P)
+	}
+	tg.Mags["K"] = targets.Known(2)
+	if v, _ = studied(t, m, tg); v.P[targets.RSG] > 0.3 {
+		t.Errorf("at M_K = -8 the same is taken for massive: %v", v.P)
+	}
+}

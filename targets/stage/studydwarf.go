@@ -23,26 +23,43 @@ func (m *Models) ofDwarf(t *targets.Target, s *sight, st *Study) {
 	st.span("logg", "log g (cm/s2)", "", fit.LogG, 1, how, source)
 	st.span("mass_msun", "mass", "Msun", fit.MassMsun, 1, how, source)
 	st.span("cooling_age_gyr", "cooling age", "Gyr", fit.CoolingAgeYr, 1e-9, how, source)
-	st.Notes = append(st.Notes, fit.Notes...)
-	if len(fit.Solutions) > 1 {
-		for _, x := range fit.Solutions {
-			st.Notes = append(st.Notes, fmt.Sprintf("one solution: %.0f K, %.2f Msun, %.0f %% of the probability", x.TeffK, x.MassMsun, 100*x.Share))
+	for _, n := range fit.Notes {
+		if !s.surfaceKnown || !strings.Contains(n, "atmosphere matters") && !strings.Contains(n, "cannot tell DA from DB") && !strings.Contains(n, "helium-rich DC") {
+			st.Notes = append(st.Notes, n)
 		}
 	}
-	if fit.TeffK.Mid < twoAtmospheres {
+	if fit.TeffK.Mid < twoAtmospheres && !s.surfaceKnown {
 		m.otherAtmosphere(t, s, st)
 	}
-	if c, err := m.dwarfs().Crystallisation(fit.MassMsun.Mid, fit.TeffK.Mid); err == nil {
-		st.add("crystallised_fraction", "solid part of the core", "", c.Part, math.NaN(), math.NaN(), c.Words+fmt.Sprintf(", onset %.0f K, 80 %% %.0f K", c.OnsetK, c.MostK), source)
-	}
+	m.crystals(fit, st)
 	m.redshift(fit, st)
 	m.cold(fit, st)
-	m.progenitor(fit, st)
+	if !s.poor {
+		m.progenitor(fit, st)
+	}
 	m.ofCluster(t, fit.CoolingAgeYr.Mid/1e9, st)
-	m.pulsation(t, fit, st)
+	if !s.poor {
+		m.pulsation(t, fit, st)
+	}
 	if x, ok := degenerate.ParseSpectrum(t.Physics.SpType); ok {
 		st.Notes = append(st.Notes, "spectrum "+t.Physics.SpType+": "+x.Words)
+		if i := x.TeffK; i.Valid() && math.Abs(i.Mid-fit.TeffK.Mid) > 3*math.Hypot(i.Hi-i.Lo, fit.TeffK.Hi-fit.TeffK.Lo)/2 {
+			st.Notes = append(st.Notes, fmt.Sprintf("contradiction: the number in %s means %.0f K, the models say %.0f K", t.Physics.SpType, i.Mid, fit.TeffK.Mid))
+		}
 	}
+}
+
+// crystals adds how far the core has turned solid.
+func (m *Models) crystals(fit *degenerate.Answer, st *Study) {
+	c, err := m.dwarfs().Crystallisation(fit.MassMsun.Mid, fit.TeffK.Mid)
+	if err != nil {
+		return
+	}
+	lo, hi := math.NaN(), math.NaN()
+	if most := 0.8; c.Part >= most { // the table ends there
+		lo, hi = most, 1
+	}
+	st.add("crystallised_fraction", "solid part of the core", "", c.Part, lo, hi, c.Words+fmt.Sprintf(", onset %.0f K, 80 %% %.0f K", c.OnsetK, c.MostK), cite.BedardEtAl2020.String())
 }
 
 // otherAtmosphere adds what a helium atmosphere would make of it.
@@ -117,8 +134,8 @@ func (m *Models) pulsation(t *targets.Target, fit *degenerate.Answer, st *Study)
 			line += fmt.Sprintf(", here about %.0f s", mean.Mid)
 			shortest = math.Max(strip.ShortestS, mean.Lo)
 		}
-		line += fmt.Sprintf("; exposure and readout %s at most, %s at least (%s)", seconds(degenerate.LongestCadence(shortest)),
-			degenerate.ShortestRun(strip.LongestS).Round(time.Minute), strip.Source)
+		line += fmt.Sprintf("; exposure and readout %s at most, which keeps %.0f %% of the amplitude, for %s at least (%s)", seconds(degenerate.LongestCadence(shortest)),
+			100*degenerate.AmplitudeKept(degenerate.LongestCadence(shortest).Seconds(), shortest), degenerate.ShortestRun(strip.LongestS).Round(time.Minute), strip.Source)
 		st.Notes = append(st.Notes, line)
 		st.add("cadence_s", "exposure and readout for its pulsation", "s", degenerate.LongestCadence(shortest).Seconds(), math.NaN(), math.NaN(),
 			"an eighth of the shortest period expected in the "+strip.Name+" strip", practice)

@@ -72,7 +72,7 @@ func StageWord(v *stage.Verdict) string {
 // the interval deserves.
 func QuantityWord(q *stage.Quantity) string {
 	known := !math.IsNaN(q.Lo) && !math.IsNaN(q.Hi)
-	width := math.Abs(q.Value) / 100
+	width := math.Abs(q.Value) / 30
 	if known && q.Hi > q.Lo {
 		width = q.Hi - q.Lo
 	}

@@ -122,7 +122,10 @@ func (w *writer) stage(m *moment.Moment, st *stage.Study) {
 	}
 	w.say("%s", strings.Join(parts, "  "))
 	for i, e := range m.Stage.Evidence {
-		if i < strongest {
+		switch {
+		case e.Log10Odds == 0:
+			w.warn("%s", e.What)
+		case i < strongest:
 			w.say("%+.1f %s", e.Log10Odds, e.What)
 		}
 	}
@@ -135,7 +138,9 @@ func (w *writer) stage(m *moment.Moment, st *stage.Study) {
 func (w *writer) evidence(m *moment.Moment) {
 	w.head("evidence, log10 of the odds for the likeliest stage")
 	for _, e := range m.Stage.Evidence {
-		w.say("%+.1f %s [%s]", e.Log10Odds, e.What, e.Source)
+		if e.Log10Odds != 0 {
+			w.say("%+.1f %s [%s]", e.Log10Odds, e.What, e.Source)
+		}
 	}
 }
 
