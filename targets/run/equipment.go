@@ -20,6 +20,7 @@ func (t *tree) instruments(root *block, c *Config) {
 			continue
 		}
 		t.instrument(b, &i)
+		t.incomplete(b, &i)
 		for k := range c.Instruments {
 			if targets.Key(c.Instruments[k].Name) == targets.Key(i.Name) {
 				t.problem(b.at, b.field("name"), i.Name, "a second instrument of that name", "give each a name of its own")
@@ -46,7 +47,7 @@ func (t *tree) instrument(b *block, i *instrument.Instrument) {
 		{"obstruction_m", &i.ObstructionM, bounds{0, 50, "m", "0.5"}},
 		{"pixel_arcsec", &i.PixelArcsec, bounds{0.001, 60, "arcsec", "0.35"}},
 		{"field_arcmin", &i.FieldArcmin, bounds{0.01, 600, "arcmin", "24"}},
-		{"read_noise_e", &i.ReadNoiseE, bounds{0, 1000, "e", "5"}},
+		{"read_noise_e", &i.ReadNoiseE, bounds{0.01, 1000, "e", "5"}},
 		{"gain_e_adu", &i.GainEADU, bounds{0.001, 1000, "e/ADU", "1.4"}},
 		{"dark_e_s", &i.DarkES, bounds{0, 1000, "e/s", "0.002"}},
 		{"full_well_e", &i.FullWellE, bounds{100, 1e8, "e", "100000"}},
@@ -85,6 +86,38 @@ func (t *tree) instrument(b *block, i *instrument.Instrument) {
 	}
 }
 
+// incomplete reports what exposures cannot be worked out without: an error
+// where something of telescope or detector is given, so that they are meant to
+// be, a warning where nothing is.
+func (t *tree) incomplete(b *block, i *instrument.Instrument) {
+	lacks := i.Lacks()
+	if !i.Any() {
+		t.problem(b.at, b.path, i.Name, "neither telescope nor detector are described: no exposures are worked out for it",
+			"write aperture_m, pixel_arcsec, read_noise_e and, for each mode, zero_point_e_s or throughput").Warning = true
+		return
+	}
+	for _, l := range lacks {
+		if _, there := b.keys[l.Key]; !there { // one out of range was told already
+			t.problem(b.at, b.field(l.Key), "", "missing; no exposures are worked out for "+i.Name, l.Fix)
+		}
+	}
+	blocks := t.each(b, "mode")
+	for k := range i.Modes {
+		m := &i.Modes[k]
+		for _, mb := range blocks {
+			if n, ok := mb.keys["name"]; !ok || n.value != any(m.Name) {
+				continue
+			}
+			for _, l := range i.LacksIn(m) {
+				if _, there := mb.keys[l.Key]; !there {
+					t.problem(mb.at, mb.field(l.Key), "", l.What+"; no exposures are worked out in it", l.Fix)
+				}
+			}
+			break
+		}
+	}
+}
+
 func modeNames(i *instrument.Instrument) string {
 	var names []string
 	for k := range i.Modes {
@@ -102,7 +135,7 @@ func (t *tree) mode(b *block, i *instrument.Instrument) {
 		m.RangeNm = [2]float64{v[0], v[1]}
 	}
 	t.measure(b, "zero_point_e_s", &m.ZeroPointES, bounds{1, 1e15, "e/s at magnitude 0", "5.8e9"})
-	t.measure(b, "throughput", &m.Throughput, bounds{0, 1, "", "0.42"})
+	t.measure(b, "throughput", &m.Throughput, bounds{1e-6, 1, "", "0.42"})
 	m.ThroughputAt = t.pairs(b, "throughput_at")
 	if v, ok := t.numbers(b, "slit_arcsec", 0, "[0.8, 1.0, 1.5]"); ok {
 		m.SlitArcsec = v
