@@ -57,16 +57,29 @@ const apart = 0.3
 //
 // Checked: TestThroughput.
 func Tonight(log []Logged) (Throughput, error) {
-	var xs, ds []float64
-	for i := range log {
-		if d, ok := log[i].difference(); ok {
-			xs, ds = append(xs, float64(log[i].Setting.Airmass)), append(ds, d)
+	var t Throughput
+	for range zeroRounds { // of S/N the sky's part depends on what is sought
+		var xs, ds []float64
+		for i := range log {
+			if d, ok := log[i].difference(t.ZeroPointMag); ok {
+				xs, ds = append(xs, float64(log[i].Setting.Airmass)), append(ds, d)
+			}
 		}
+		if t = (Throughput{Used: len(xs)}); len(xs) < 2 {
+			return t, fail(targets.CodeInstrument, "", "log two measurements of a standard with counts or S/N", "tonight's throughput wants two measurements, %d can be used", len(xs))
+		}
+		t.fit(xs, ds)
 	}
-	t := Throughput{Used: len(xs)}
-	if len(xs) < 2 {
-		return t, fail(targets.CodeInstrument, "", "log two measurements of a standard with counts or S/N", "tonight's throughput wants two measurements, %d can be used", len(xs))
-	}
+	t.tell()
+	return t, nil
+}
+
+// zeroRounds is how often the correction is worked out anew; it closes in by a
+// factor of some ten each time.
+const zeroRounds = 6
+
+// fit lays a straight line through the differences by airmass.
+func (t *Throughput) fit(xs, ds []float64) {
 	n := float64(len(xs))
 	mx, md := mean(xs), mean(ds)
 	var sxx, sxd, lo, hi float64 = 0, 0, xs[0], xs[0]
@@ -98,8 +111,6 @@ func Tonight(log []Logged) (Throughput, error) {
 		t.ExtinctionMag, t.ExtinctionErr = -slope, sigma/math.Sqrt(sxx)
 		t.ZeroPointErr = sigma * math.Sqrt(1/n+mx*mx/sxx)
 	}
-	t.tell()
-	return t, nil
 }
 
 func (t *Throughput) tell() {
@@ -122,8 +133,11 @@ func mean(v []float64) float64 {
 }
 
 // difference returns how much more light there was than expected, magnitudes.
-func (l *Logged) difference() (float64, bool) {
-	if l.Saturated || l.EachS <= 0 || l.Frames < 1 {
+//
+// Given:
+//   - zero: correction of the zero point so far, that the sky's light has too.
+func (l *Logged) difference(zero float64) (float64, bool) {
+	if l.Saturated || !(l.EachS > 0) || l.Frames < 1 {
 		return 0, false
 	}
 	w := &work{s: l.Setting}
@@ -135,46 +149,19 @@ func (l *Logged) difference() (float64, bool) {
 		return 0, false
 	}
 	r := w.ratesAt(w.booked)
-	switch {
-	case l.CountsES.Known && l.CountsES.Value > 0:
+	if l.CountsES.Known && l.CountsES.Value > 0 {
 		d := 2.5 * math.Log10(l.CountsES.Value/r.SourceES)
 		return d, !math.IsNaN(d) && !math.IsInf(d, 0)
-	case l.SNR.Known && l.SNR.Value > 0:
-		d, err := photon.Fainter(r, w.det, photon.Exposure{Frames: l.Frames, EachS: l.EachS}, l.SNR.Value)
-		b, err2 := photon.Noise(r, w.det, photon.Exposure{Frames: l.Frames, EachS: l.EachS})
-		if err != nil || err2 != nil || b.Scintillation+b.Floor > 0.5/(b.SNR()*b.SNR()) {
-			return 0, false
-		}
-		// Fainter leaves the sky as it is: throughput dims both, so go on from there.
-		return w.throughputFor(l, -d)
 	}
-	return 0, false
-}
-
-// throughputFor finds by halving which throughput, in magnitudes, gives a
-// measured S/N: source and sky dimmed alike.
-func (w *work) throughputFor(l *Logged, guess float64) (float64, bool) {
-	snr := func(d float64) float64 {
-		r := w.ratesAt(w.booked)
-		r.SourceES *= dim(-d)
-		r.SkyES *= dim(-d)
-		b, err := photon.Noise(r, w.det, photon.Exposure{Frames: l.Frames, EachS: l.EachS})
-		if err != nil {
-			return math.NaN()
-		}
-		return b.SNR()
-	}
-	lo, hi := math.Min(guess, 0)-3, math.Max(guess, 0)+3
-	if !(snr(lo) < l.SNR.Value && snr(hi) > l.SNR.Value) {
+	if !l.SNR.Known || !(l.SNR.Value > 0) {
 		return 0, false
 	}
-	for range 60 {
-		mid := (lo + hi) / 2
-		if snr(mid) < l.SNR.Value {
-			lo = mid
-		} else {
-			hi = mid
-		}
+	r.SkyES *= dim(-zero)
+	e := photon.Exposure{Frames: l.Frames, EachS: l.EachS}
+	b, err := photon.Noise(r, w.det, e)
+	if err != nil || b.Scintillation+b.Floor > 0.5/(b.SNR()*b.SNR()) {
+		return 0, false
 	}
-	return (lo + hi) / 2, true
+	d, err := photon.Fainter(r, w.det, e, l.SNR.Value)
+	return -d, err == nil
 }
