@@ -79,6 +79,7 @@ type Setting struct {
 	Vapour        photon.Vapour
 	Corrector     bool       // of atmospheric dispersion
 	Correction    Correction // of tonight's throughput, taken over by the observer
+	MaxFrameS     float64    // longest frame; 0: 1200
 }
 
 // Answer is an exposure and what it gives.

@@ -29,7 +29,7 @@ func FluxOf(m astro.Mag) float64 { return math.Pow(10, -0.4*(m.Mags()-lineZero))
 func (w *work) brightness() error {
 	src, g := &w.s.Source, &w.s.Goal
 	if src.Light == nil {
-		return fail(CodeUnknown, "", "list a magnitude, or type the one measured at acquisition", "no brightness is known")
+		return fail(notKnown, "", "list a magnitude, or type the one measured at acquisition", "no brightness is known")
 	}
 	p, level := g.Percentile, g.Level
 	if !(p > 0 && p < 1) {
@@ -41,7 +41,7 @@ func (w *work) brightness() error {
 	w.booked, w.median = src.Light.Quantile(p), src.Light.Quantile(0.5)
 	w.bright, w.faint = src.Light.Quantile((1-level)/2), src.Light.Quantile((1+level)/2)
 	if m := w.booked.Mags() + w.median.Mags() + w.bright.Mags() + w.faint.Mags(); math.IsNaN(m) || math.IsInf(m, 0) {
-		return fail(CodeUnknown, "", "list a magnitude, or type the one measured at acquisition", "no brightness is known in %s", bandWords(src.Band))
+		return fail(notKnown, "", "list a magnitude, or type the one measured at acquisition", "no brightness is known in %s", bandWords(src.Band))
 	}
 	if _, line := instrument.Line(src.Band); line != w.line {
 		if line {
@@ -87,7 +87,7 @@ func (w *work) colours() error {
 	shape, known := shapeAt(src.Colours, src.Band, w.at.Nm())
 	if !w.slit {
 		if !known {
-			return fail(CodeUnknown, "mode", "list a magnitude in "+string(w.s.Mode.Band), "the brightness in %s is known, the mode is in %s", src.Band, w.s.Mode.Band)
+			return fail(notKnown, "mode", "list a magnitude in "+string(w.s.Mode.Band), "the brightness in %s is known, the mode is in %s", src.Band, w.s.Mode.Band)
 		}
 		to, _ := photon.ZeroPointOf(string(w.s.Mode.Band))
 		w.colour = from.ABMinusVega + shape - to.ABMinusVega

@@ -11,7 +11,7 @@ import (
 
 // Reason is why there is no exposure, and what can be done.
 type Reason struct {
-	Code targets.Code // instrument, saturates, too_faint, sky, below_horizon, window
+	Code targets.Code // instrument, saturates, too_faint, sky, seeing, below_horizon, window; "": nothing forbids it, it is not known
 	Key  string       // of run.toml or of a request, where one is at fault
 	What string
 	Fix  string
@@ -30,9 +30,9 @@ func (r *Reason) Error() string {
 // Unwrap returns the error of the formulas, or nil.
 func (r *Reason) Unwrap() error { return r.of }
 
-// CodeUnknown is the code of a target whose brightness, or whose surface, is
-// not known.
-const CodeUnknown targets.Code = "too_faint"
+// notKnown is the code where nothing forbids an exposure: the brightness is not
+// known.
+const notKnown targets.Code = ""
 
 // fail makes a reason.
 func fail(code targets.Code, key, fix, what string, a ...any) *Reason {

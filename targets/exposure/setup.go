@@ -91,7 +91,7 @@ func (w *work) equipment() error {
 		w.pixel = i.PixelArcsec * float64(by)
 	}
 	w.det = photon.Detector{ReadNoiseE: i.ReadNoiseE, DarkES: i.DarkES * float64(bx*by), GainEADU: i.GainEADU, LinearE: i.LinearE,
-		FullWellE: i.FullWellE, BiasADU: i.BiasADU, DeadS: i.DeadS, ShutterMinS: i.ShutterMinS}
+		FullWellE: i.FullWellE, BiasADU: i.BiasADU, DeadS: i.DeadS, ShutterMinS: i.ShutterMinS, MaxFrameS: w.s.MaxFrameS}
 	if i.ADCBits > 0 && i.GainEADU > 0 {
 		w.det.ADCMaxADU = math.Exp2(i.ADCBits) - 1
 	}

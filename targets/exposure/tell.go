@@ -41,6 +41,9 @@ func (w *work) tell(a *Answer, unguarded bool) {
 			say("%s costs %.1f times dark time", c.light, c.times)
 		}
 	}
+	if w.sky.Partial {
+		say("Moon and twilight are not modelled in %s: the sky may be brighter", band)
+	}
 	if l := limitWords[a.LimitedBy]; l != "" {
 		say("%s", l)
 	}

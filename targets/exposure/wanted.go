@@ -113,7 +113,11 @@ func (w *work) cadence() error {
 		each = math.Max(cycle-w.det.DeadS, w.det.DeadS*photon.LeastDuty/(1-photon.LeastDuty))
 		r := w.rates
 		r.PeakES = math.Max(w.guard, r.PeakES+w.otherPeak)
-		each = math.Max(math.Min(each, photon.LongestS(r, w.det)), math.Max(w.det.ShutterMinS, 1e-3))
+		each = math.Min(each, photon.LongestS(r, w.det))
+		if w.det.MaxFrameS > 0 {
+			each = math.Min(each, w.det.MaxFrameS)
+		}
+		each = math.Max(each, math.Max(w.det.ShutterMinS, 1e-3))
 	}
 	if !(each > 0) { // by S/N of a frame
 		got, _, err := w.solve(w.ratesAt(w.booked), photon.Ask{SNR: g.SNR, Per: photon.PerFrame, Frames: 1})
@@ -265,6 +269,23 @@ func GoalOf(r *targets.Request, kind string) (Goal, error) {
 		return g, err
 	}
 	return g, nil
+}
+
+// CycleOf returns how long one frame to the next may take in a series of a
+// target: a tenth of its pulsation; a fifth of the 20 s in which a white dwarf
+// is eclipsed; 10 s for flickering; at most 10 minutes. Common practice, no
+// source.
+//
+// Checked: TestGoalOf.
+func CycleOf(t *targets.Target) float64 {
+	const ingressS, longest = 20, 600
+	switch v := &t.Var; {
+	case v.EclipseMin.Known:
+		return ingressS * photon.CyclePerIngress
+	case v.PulsationS.Known && v.PulsationS.Value > 0:
+		return math.Min(longest, v.PulsationS.Value*photon.CyclePerPulsation)
+	}
+	return photon.FlickeringS
 }
 
 // ParseBinning reads a binning: "", "2", "2x2", "1x2".
