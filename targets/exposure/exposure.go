@@ -51,6 +51,7 @@ type Source struct {
 // Nebula is the shape of an extended source.
 type Nebula struct {
 	DiamArcsec, Diam2Arcsec float64 // full axes; the minor 0: as the major
+	CHb                     float64 // c(Hβ), dex; 0: none
 	Surface                 bool    // Light is magnitudes per square arcsec, of the continuum
 }
 

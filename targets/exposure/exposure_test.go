@@ -162,7 +162,7 @@ func TestReasons(t *testing.T) {
 		"snr_per \"pixle\" means nothing: write pixel, element":             func(s *Setting) { s.Goal.Per = "pixle" },
 		"S/N per pixel is meant of spectra: write total or frame":           func(s *Setting) { s.Goal.Per = "pixel" },
 		"S/N 600 is out of reach: flat field and calibration keep it below": func(s *Setting) { s.Goal.SNR = 600 },
-		"the brightness in B is known, the mode is in V":                    func(s *Setting) { s.Source.Band = "B" },
+		"the brightness in K is known, the mode is in V":                    func(s *Setting) { s.Source.Band = "K" },
 		"only its flux in O3 is known, not its light in V":                  func(s *Setting) { s.Source.Band = "O3" },
 		"saturates at V < 3":                                                func(s *Setting) { s.Source.Light = Steady(astro.Mags(-2)) },
 		"seeing":                                                            func(s *Setting) { s.SeeingArcsec = 0 },
@@ -224,6 +224,46 @@ func TestColours(t *testing.T) {
 	a := solved(t, s)
 	s.Source = Source{Band: "I", Light: Steady(astro.Mags(9))}
 	check.Near(t, a.BookedS, solved(t, s).BookedS, 1e-9, "in I by the colour")
+}
+
+// TestColoursOf: of a red giant the red follows from its type, and a star in a
+// narrow filter is measured by its continuum.
+func TestColoursOf(t *testing.T) {
+	giant := targets.Target{Kind: targets.Giant, Mags: map[targets.Band]targets.Measure{"V": targets.Known(8)}, Physics: targets.Physics{SpType: "M4III"}}
+	c := ColoursOf(&giant)
+	if !(c["I"] < 6) || c["V"] != 8 {
+		t.Error(c)
+	}
+	if ColoursOf(&targets.Target{}) != nil {
+		t.Error("colours of nothing")
+	}
+	s := set(t, img15(), "Ha", 10, 1.2, 0.09, 21, 1)
+	s.Source.Band, s.Goal = "R", Goal{SNR: 100}
+	a := solved(t, s)
+	// R is 0.184 fainter in AB; 6.5 nm of the continuum
+	want := 5.47987e6 / 6562.8 * 65 * 15708 * 0.40 * math.Pow(10, -0.4*(10.184+0.09*1.2))
+	check.Near(t, a.work.rates.SourceES/a.work.pointShare(), want, 1e-4*want, "continuum, e/s")
+	s.Source.Band = "p"
+	if b := Solve(s); b.Err == nil {
+		t.Error("photographic magnitudes carried to Ha")
+	}
+	p := set(t, img15(), "B", 10, 1.2, 0.23, 21, 1)
+	p.Source.Band, p.Goal = "p", Goal{SNR: 100}
+	solved(t, p)
+}
+
+// TestOtherLine: H alpha from H beta by case B, and back.
+func TestOtherLine(t *testing.T) {
+	mag := func(f float64) float64 { return -2.5*math.Log10(f) - 13.74 }
+	s := set(t, img15(), "Ha", mag(1e-11), 1.2, 0.09, 21, 1)
+	s.Source.Band, s.Source.Nebula, s.Goal = "Hb", &Nebula{DiamArcsec: 30, CHb: 1}, Goal{SNR: 30, AreaArcsec2: 10}
+	a := solved(t, s)
+	s.Source.Band, s.Source.Light = "Ha", Steady(astro.Mags(mag(1e-11*2.86*math.Pow(10, 0.2975))))
+	check.Near(t, a.BookedS, solved(t, s).BookedS, 1e-9*a.BookedS, "booked")
+	s.Source.Band = "O3"
+	if b := Solve(s); b.Err == nil {
+		t.Error("Ha from [O III]")
+	}
 }
 
 // TestCompanion: the share of a neighbour's light in the aperture, against a sum

@@ -5,6 +5,7 @@ import (
 	"math"
 
 	"evenfall/astro"
+	"evenfall/astro/nebular"
 	"evenfall/astro/photon"
 	"evenfall/targets"
 	"evenfall/targets/instrument"
@@ -25,6 +26,10 @@ const lineZero = -13.74
 // Checked: TestNebulaWhole.
 func FluxOf(m astro.Mag) float64 { return math.Pow(10, -0.4*(m.Mags()-lineZero)) }
 
+// greyNm is how far a star of unknown colour is taken to be as bright in AB.
+// Common practice, no source.
+const greyNm = 150.0
+
 // brightness takes the percentiles of the source's brightness.
 func (w *work) brightness() error {
 	src, g := &w.s.Source, &w.s.Goal
@@ -39,6 +44,13 @@ func (w *work) brightness() error {
 		level = defaultLevel
 	}
 	w.booked, w.median = src.Light.Quantile(p), src.Light.Quantile(0.5)
+	if src.Band == "p" || src.Band == "pg" {
+		src.Band = "B"
+		w.words = append(w.words, "photographic magnitudes are taken for B")
+		if w.band == "p" || w.band == "pg" {
+			w.band = "B"
+		}
+	}
 	w.bright, w.faint = src.Light.Quantile((1-level)/2), src.Light.Quantile((1+level)/2)
 	if m := w.booked.Mags() + w.median.Mags() + w.bright.Mags() + w.faint.Mags(); math.IsNaN(m) || math.IsInf(m, 0) {
 		return fail(notKnown, "", "list a magnitude, or type the one measured at acquisition", "no brightness is known in %s", bandWords(src.Band))
@@ -50,12 +62,38 @@ func (w *work) brightness() error {
 		return fail(targets.CodeInstrument, "mode", "take a broad band, or list the flux of the line", "no flux is known in %s", w.bandName())
 	}
 	if w.line {
-		if src.Band != w.band {
-			return fail(targets.CodeInstrument, "mode", "list the flux of that line", "the flux in %s is known, the mode is in %s", src.Band, w.band)
-		}
-		return nil
+		return w.otherLine()
 	}
 	return w.colours()
+}
+
+// otherLine carries the flux from one hydrogen line to the other.
+//
+//	log F(Hα)/F(Hβ) = log 2.86 - c f(Hα)
+//
+// Source: [cite.OsterbrockFerland2006], case B; [cite.CardelliEtAl1989] for f.
+//
+// Checked: TestOtherLine.
+func (w *work) otherLine() error {
+	src := &w.s.Source
+	if src.Band == w.band {
+		return nil
+	}
+	caseB, c := 2.86, 0.0
+	if src.Nebula != nil && src.Nebula.CHb > 0 {
+		c = src.Nebula.CHb
+	}
+	ratio := math.Log10(caseB) - c*nebular.Ha.F()
+	switch {
+	case src.Band == "Hb" && w.band == "Ha":
+		w.colour = -2.5 * ratio
+	case src.Band == "Ha" && w.band == "Hb":
+		w.colour = 2.5 * ratio
+	default:
+		return fail(targets.CodeInstrument, "mode", "list the flux of that line", "the flux in %s is known, the mode is in %s", src.Band, w.band)
+	}
+	w.words = append(w.words, fmt.Sprintf("the flux in %s follows from %s by case B and c(Hb) %.2f, without [N II]", w.band, src.Band, c))
+	return nil
 }
 
 func bandWords(b targets.Band) string {
@@ -86,12 +124,17 @@ func (w *work) colours() error {
 	}
 	shape, known := shapeAt(src.Colours, src.Band, w.at.Nm())
 	if !w.slit {
-		if !known {
+		near := math.Abs(w.at.Nm()-from.At.Nm()) <= greyNm
+		if !known && !near {
 			return fail(notKnown, "mode", "list a magnitude in "+string(w.s.Mode.Band), "the brightness in %s is known, the mode is in %s", src.Band, w.s.Mode.Band)
 		}
 		to, _ := photon.ZeroPointOf(string(w.s.Mode.Band))
 		w.colour = from.ABMinusVega + shape - to.ABMinusVega
-		w.words = append(w.words, fmt.Sprintf("brightness in %s from that in %s and the listed colour", w.s.Mode.Band, src.Band))
+		how := "the colour"
+		if !known {
+			how = "no colour: equal in AB"
+		}
+		w.words = append(w.words, fmt.Sprintf("brightness in %s from that in %s, %s", w.s.Mode.Band, src.Band, how))
 		return nil
 	}
 	w.colour = from.ABMinusVega + shape
@@ -168,7 +211,7 @@ func (w *work) flux() error {
 func (w *work) imagePoint() (err error) {
 	if w.line {
 		w.rates, err = photon.LineImage{Zero: w.zero, ZeroES: w.zeroES, Line: w.at, Through: w.through, PixelArcsec: w.pixel}.
-			LinePoint(FluxOf(w.booked), w.image, 0)
+			LinePoint(FluxOf(w.booked.Fainter(w.colour)), w.image, 0)
 		return err
 	}
 	w.rates, err = photon.Point{ZeroES: w.zeroES, Mag: w.booked.Fainter(w.colour), Through: w.through, Image: w.image, PixelArcsec: w.pixel}.Rates()
@@ -187,7 +230,7 @@ func (w *work) slitPoint() (err error) {
 	const heights = 2 // the height of the extraction in widths of the image
 	h := heights * w.image.FWHMArcsec
 	through, along := w.image.Slit(w.slitArcsec, w.offArcsec), w.image.Slit(h, 0)
-	mean := FluxOf(w.booked) * through * along / (w.slitArcsec * h)
+	mean := FluxOf(w.booked.Fainter(w.colour)) * through * along / (w.slitArcsec * h)
 	if w.rates, err = (photon.SlitLine{Slit: w.slitSetup, Surface: mean, Height: h}).Rates(); err == nil {
 		w.rates.PeakES *= w.image.Slit(w.pixel, 0) / along * h / w.pixel
 	}
@@ -245,7 +288,7 @@ func (w *work) extended(n *Nebula) (err error) {
 	}
 	line := 0.0
 	if w.line {
-		line = FluxOf(w.booked) / size
+		line = FluxOf(w.booked.Fainter(w.colour)) / size
 	}
 	surface := astro.MagArcsec2(w.booked.Mags() + w.colour)
 	if !w.line && !n.Surface {

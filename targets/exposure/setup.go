@@ -109,7 +109,9 @@ func (w *work) wavelength() error {
 		return w.spectralPoint()
 	}
 	if c, _, ok := m.Narrow(); ok {
-		w.at, w.line = astro.Nm(c), true
+		w.at = astro.Nm(c)
+		_, flux := instrument.Line(w.s.Source.Band)
+		w.line = flux || w.s.Source.Nebula != nil && !w.s.Source.Nebula.Surface
 		return nil
 	}
 	b, ok := skyglow.BandOf(string(m.Band))

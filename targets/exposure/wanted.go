@@ -307,35 +307,3 @@ func ParseBinning(text string) ([2]int, error) {
 	}
 	return [2]int{x, y}, nil
 }
-
-// SourceOf makes a source of a listed target and its forecast.
-//
-// Notes:
-//  1. A nebula's companion and colours are left out; a star's companion counts
-//     where magnitude and separation are listed.
-func SourceOf(t *targets.Target, b targets.Band, light Brightness) Source {
-	s := Source{Name: t.Name, Band: b, Light: light}
-	if _, line := instrument.Line(b); line && t.Kind == targets.PN {
-		n := Nebula{}
-		if t.Nebula.DiamArcsec.Known {
-			n.DiamArcsec = t.Nebula.DiamArcsec.Value
-		}
-		if t.Nebula.Diam2Arcsec.Known {
-			n.Diam2Arcsec = t.Nebula.Diam2Arcsec.Value
-		}
-		s.Nebula = &n
-		return s
-	}
-	if len(t.Mags) > 1 {
-		s.Colours = make(map[targets.Band]float64, len(t.Mags))
-		for band, m := range t.Mags {
-			if m.Known {
-				s.Colours[band] = m.Value
-			}
-		}
-	}
-	if p := &t.Physics; p.CompMag.Known && p.CompSepArcsec.Known {
-		s.Companion = &Companion{astro.Mags(p.CompMag.Value), p.CompSepArcsec.Value}
-	}
-	return s
-}

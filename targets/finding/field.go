@@ -67,7 +67,7 @@ func Comparisons(s exposure.Setting, a exposure.Answer, t *targets.Target, field
 		}
 		c.Mag = mag
 		one := s
-		one.Source = exposure.SourceOf(star, band, exposure.Steady(astro.Mags(mag)))
+		one.Source = exposure.SourceOf(star, band, exposure.Steady(astro.Mags(mag)), exposure.ColoursOf(star))
 		one.Source.Companion = nil
 		one.Goal = exposure.Goal{ExposureS: a.EachS * float64(a.Frames), Frames: a.Frames, Binning: s.Goal.Binning}
 		got := exposure.Solve(one)
