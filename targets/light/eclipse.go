@@ -3,109 +3,143 @@ package light
 import (
 	"fmt"
 	"math"
+	"regexp"
 
 	"evenfall/astro"
-	"evenfall/astro/frame"
-	"evenfall/astro/timescale"
+	"evenfall/astro/elements"
 	"evenfall/targets"
 )
 
-// eclipse is a binary whose eclipses the list times.
-type eclipse struct {
-	star            frame.Star
-	scale           string
-	epoch, period   float64 // d
-	pdot            float64 // d/d
-	eEpoch, ePeriod float64 // d
-	halfMin         float64 // half the duration, min
-	mag, sd         float64 // in eclipse
-	assumed         bool    // an error was taken from the last digit printed
-}
+// The kinds of events.
+const (
+	kindEclipse    = elements.KindEclipse
+	kindMaximum    = elements.KindMaximum
+	kindMinimum    = elements.KindMinimum
+	kindQuadrature = elements.KindQuadrature
+)
 
-// jitterPerDecade is the wander of eclipse times of close binaries, seconds;
-// from memory, not checked against a publication.
-const jitterPerDecade = 5.0
-
-// hjdScatter stands for heliocentric dates whose own time scale is not said.
-const hjdScatterS = 35.0
-
-// newEclipse prepares an eclipsing binary; nil: its eclipses are not timed.
-// Without a duration they are dated, but the light is not forecast by them.
-func newEclipse(t targets.Target) *eclipse {
-	v := &t.Var
-	if !usable(v.PeriodD) || v.PeriodD.Value <= 0 || !usable(v.EpochMinJD) {
-		return nil
-	}
-	e := &eclipse{scale: v.TimeScale, epoch: v.EpochMinJD.Value, period: v.PeriodD.Value, pdot: v.PdotDD.Value,
-		eEpoch: math.Abs(v.EpochMinJD.Err), ePeriod: math.Abs(v.PeriodD.Err), mag: v.MagMin.Value, sd: 0.5}
-	if usable(v.EclipseMin) && v.EclipseMin.Value > 0 {
-		e.halfMin = v.EclipseMin.Value / 2
-	}
-	e.assumed = v.EpochMinJD.Assumed || v.PeriodD.Assumed
-	e.star = frame.NewStar(frame.Catalogue{RA: t.Place.RA, Dec: t.Place.Dec, EpochJyr: t.Place.EpochJyr})
-	return e
-}
-
-// timing is where a binary is between eclipses.
-type timing struct {
-	phase float64 // cycles from mid-eclipse, -0.5 to 0.5
-	sigma float64 // cycles
-	cycle float64 // number of the nearest eclipse
-}
-
-// at returns where the binary is.
-//
-//	T(E) = T0 + P E + P Pdot E^2 / 2;  sigma^2 = s0^2 + (E sP)^2 + wander
-//
-// Notes:
-//  1. The instant is carried to the barycentre, or to the Sun where the epoch
-//     is heliocentric; dates marked plain HJD get 35 s in quadrature.
-//
-// Source: common practice, no source.
-func (e *eclipse) at(t astro.Instant) timing {
-	earth := frame.EarthAt(t)
-	n := e.star.Direction(t)
-	const auDays = 499.004783836 / 86400
-	date := 2451545 + t.DaysTT() + timescale.TDBMinusTT(t)/86400 + earth.Bary.Dot(n)*auDays
-	extra := 0.0
-	switch e.scale {
-	case "BJD_TDB":
-	case "HJD_TT":
-		date = t.JDTT() + earth.Helio.Dot(n)*auDays
-	case "JD_UTC":
-		date = t.JDUTC()
-	default: // HJD, HJD_UTC
-		date = t.JDUTC() + earth.Helio.Dot(n)*auDays
-		extra = hjdScatterS / 86400
-	}
-	cycle := math.Round((date - e.epoch) / e.period)
-	off := date - (e.epoch + e.period*cycle + e.period*e.pdot*cycle*cycle/2)
-	years := math.Abs(date-e.epoch) / 365.25
-	wander := jitterPerDecade * years / 10 / 86400
-	sigma := math.Sqrt(e.eEpoch*e.eEpoch + cycle*cycle*e.ePeriod*e.ePeriod + extra*extra + wander*wander)
-	phase := off / e.period
-	return timing{phase - math.Round(phase), sigma / e.period, cycle}
+// timed is what one set of a target's elements dates.
+type timed struct {
+	clock   elements.Clock // at the Earth's centre
+	kind    string         // of phase 0
+	what    []elements.Happening
+	halfMin float64 // half an eclipse, min; 0: not known
+	walks   bool    // the phase wanders as a random walk
 }
 
 // expiredCycles is the uncertainty of phase beyond which an ephemeris says
 // nothing any more.
 const expiredCycles = 0.1
 
-// overlay adds the eclipse to the states that a star is in outside it.
-func (e *eclipse) overlay(t astro.Instant, list []state) ([]state, string) {
-	half := e.halfMin / 1440 / e.period
-	at := e.at(t)
-	p, words := math.Min(2*half, 1), "; ephemeris expired, eclipses at any time"
-	if at.sigma < expiredCycles && half < 0.5 {
-		sd := math.Max(at.sigma, 1e-9)
-		p = 0.5 * (math.Erf((half-at.phase)/(sd*math.Sqrt2)) - math.Erf((-half-at.phase)/(sd*math.Sqrt2)))
-		words = fmt.Sprintf("; %+.3f cycle from mid-eclipse, +- %.0f s", at.phase, at.sigma*e.period*86400)
+// The longest period of a close binary, whose times wander as such do, and
+// the shortest of a star whose cycles have lengths of their own. Days.
+const closeBinaryD, walkingD = 3.0, 20.0
+
+var eclipsing = regexp.MustCompile(`(^|[/+])E[ABW]?([/+:]|$)`)
+
+// timingsOf makes the clocks of a target, but for long-period variables, whose
+// maxima the filter dates.
+//
+// Notes:
+//  1. Phase 0 is mid-eclipse where the star eclipses, else minimum or maximum.
+//  2. Catalogues date RV Tauri stars by their minima as often as not, in
+//     whichever column: an epoch of maximum is not used for them.
+func timingsOf(t *targets.Target) []timed {
+	v := &t.Var
+	if !usable(v.PeriodD) || miraVariable.MatchString(v.Type) || lpvVariable.MatchString(v.Type) {
+		return nil
 	}
-	p = math.Max(0, math.Min(1, p))
+	var out []timed
+	binary := eclipsing.MatchString(v.Type) || usable(v.EclipseMin) || t.Kind == targets.Interacting || t.Kind == targets.WD
+	rv := rvVariable.MatchString(v.Type)
+	if e := ephemerisOf(t, v.EpochMinJD, binary && !rv); e != nil {
+		x := timed{clock: elements.Clock{Sight: elements.Sight{Star: starOf(t)}, Ephemeris: e}, kind: kindMinimum, walks: rv}
+		if binary && !rv {
+			x.kind = kindEclipse
+			x.what = []elements.Happening{elements.Moment(kindEclipse, 0)}
+			if d := v.EclipseMin; usable(d) && d.Value > 0 {
+				if h, err := e.Eclipse(0, d.Value); err == nil {
+					x.what[0], x.halfMin = h, d.Value/2
+				}
+			}
+			x.what = append(x.what, elements.Quadratures()...)
+		} else {
+			x.what = elements.Extremes(false, rise(v))
+		}
+		out = append(out, x)
+	}
+	if e := ephemerisOf(t, v.EpochMaxJD, false); e != nil && !rv {
+		what := elements.Extremes(true, rise(v))
+		if len(out) > 0 {
+			what = what[:1]
+		}
+		out = append(out, timed{clock: elements.Clock{Sight: elements.Sight{Star: starOf(t)}, Ephemeris: e}, kind: kindMaximum, what: what})
+	}
+	return out
+}
+
+func rise(v *targets.Variability) float64 {
+	if usable(v.RiseFraction) {
+		return v.RiseFraction.Value
+	}
+	return 0
+}
+
+// ephemerisOf looks a target's elements over; nil: they are none.
+func ephemerisOf(t *targets.Target, epoch targets.Measure, eclipses bool) *elements.Ephemeris {
+	v := &t.Var
+	if !usable(epoch) || !usable(v.PeriodD) {
+		return nil
+	}
+	el := elements.Elements{Scale: elements.Scale(v.TimeScale),
+		Epoch:  elements.Value{Value: epoch.Value, Err: epoch.Err, Assumed: epoch.Assumed},
+		Period: elements.Value{Value: v.PeriodD.Value, Err: v.PeriodD.Err, Assumed: v.PeriodD.Assumed}}
+	if usable(v.PdotDD) {
+		el.Pdot = elements.Value{Value: v.PdotDD.Value, Err: v.PdotDD.Err}
+	}
+	switch {
+	case eclipses && v.PeriodD.Value < closeBinaryD:
+		el.Jitter = elements.JitterOf(t.Name)
+	case !eclipses && v.PeriodD.Value > walkingD:
+		el.Walk = elements.WalkOf(v.PeriodD.Value)
+	}
+	e, err := elements.New(el)
+	if err != nil {
+		return nil
+	}
+	return e
+}
+
+// clockOf returns the clock of a kind; nil: there is none.
+func clockOf(list []timed, kind string) *timed {
+	for i := range list {
+		if list[i].kind == kind {
+			return &list[i]
+		}
+	}
+	return nil
+}
+
+// eclipseSD is how far from the listed minimum an eclipse is, mag. Common
+// practice, no source.
+const eclipseSD = 0.5
+
+// overlay adds the eclipse to the states that a star is in outside it.
+func (e *timed) overlay(t astro.Instant, list []state, mag float64) ([]state, string) {
+	p := e.clock.Ephemeris.Elements().Period.Value
+	half := e.halfMin / 1440 / p
+	chance, words := math.Min(2*half, 1), "; ephemeris expired, eclipses at any time"
+	if _, phase, sigma, err := e.clock.PhaseAt(t); err == nil && sigma < expiredCycles && half < 0.5 {
+		phase -= math.Round(phase)
+		sd := math.Max(sigma, 1e-9)
+		chance = 0.5 * (math.Erf((half-phase)/(sd*math.Sqrt2)) - math.Erf((-half-phase)/(sd*math.Sqrt2)))
+		words = fmt.Sprintf("; %+.3f cycle from mid-eclipse, +- %.0f s", phase, sigma*p*86400)
+	}
+	chance = math.Max(0, math.Min(1, chance))
 	out := make([]state, 0, len(list)+1)
 	for _, s := range list {
-		s.p *= 1 - p
+		s.p *= 1 - chance
 		out = append(out, s)
 	}
-	return append(out, state{"in eclipse", p, e.mag, e.sd}), words
+	return append(out, state{name: "in eclipse", p: chance, mag: mag, sd: eclipseSD}), words
 }

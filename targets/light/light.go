@@ -1,19 +1,21 @@
-// Package light says how bright a target should be at an instant, as an
-// interval: constant stars by their catalogue, long-period variables by a mean
-// curve and the phase that is known, interacting binaries as states, nebulae
-// in the light of a line. It never averages states, never goes outside the
-// range of a relation, and says why where it can say nothing.
+// Package light says how bright a target should be at an instant, as a
+// distribution with its interval, and when its dated happenings fall: steady
+// stars by their catalogue carried between bands, long-period variables by a
+// filter that magnitudes teach, interacting binaries as states that the latest
+// magnitudes make likelier or not, nebulae in the light of a line. It never
+// averages states, never goes outside the range of a relation, lets no
+// magnitude teach an instant before it was taken, and says why where it can
+// say nothing.
 package light
 
 import (
 	"fmt"
 	"math"
-	"regexp"
 	"strings"
+	"sync"
 
 	"evenfall/astro"
 	"evenfall/targets"
-	"evenfall/targets/stage"
 )
 
 // DefaultLevel is the probability of a brightness interval.
@@ -23,6 +25,9 @@ const DefaultLevel = 0.8
 type Ask struct {
 	Band  targets.Band // "": the best known; nebulae answer in a line for any broad band
 	Level float64      // probability of the interval; 0: DefaultLevel
+	// AsOf is the instant up to which magnitudes teach; zero: the instant of
+	// the forecast itself. A chart of the past as it is understood now sets it.
+	AsOf astro.Instant
 }
 
 // The words for how well a phase is known.
@@ -54,7 +59,8 @@ type Step struct{ What, Formula, Inputs, Result, Source string }
 
 // Forecast is an expected brightness. Where States is not empty Mag is the
 // median of the likeliest state and Lo to Hi the interval of all of them
-// together; elsewhere Mag is the median of the whole.
+// together; elsewhere Mag is the median of the whole. Quantile and CDF hand on
+// the whole distribution.
 type Forecast struct {
 	Band        targets.Band
 	Known       bool // Mag, Lo and Hi are given
@@ -66,62 +72,54 @@ type Forecast struct {
 	SB          *Surface
 	Rising      int // +1 brightening, -1 fading, 0 not known
 	Steps       []Step
+
+	dist    distribution
+	maximum *maximum // the next one of a long-period variable
+}
+
+// query is a question put to a model.
+type query struct {
+	t     astro.Instant
+	band  targets.Band
+	level float64 // valid
+	n     int     // that many of the readings teach
 }
 
 // model is one way of forecasting.
 type model interface {
-	// at returns the forecast for a band; the level is valid.
-	at(t astro.Instant, band targets.Band, level float64) Forecast
+	at(q query) Forecast
+	// judge says what is made of each of the first n readings.
+	judge(n int) []verdict
+	// tick is for how long a forecast holds, days; 0: work it out each time.
+	tick() float64
 }
 
 // State is a target made ready to be forecast: what its list and its measured
-// magnitudes taught.
+// magnitudes taught. It is safe for use by several goroutines.
 type State struct {
-	model   model
-	note    string // about recent magnitudes
-	eclipse *eclipse
-	maximum *longPeriod
+	t        targets.Target
+	model    model
+	readings []reading // oldest first
+	note     string    // of unconfirmed values
+	timed    []timed   // what its elements date
+
+	mu   sync.Mutex
+	memo map[memoKey]Forecast
 }
 
-var (
-	lpvVariable   = regexp.MustCompile(`^(M|SR[ABCD]?|L[BC]?|SRS)(:|\+|/|$)`)
-	rcbVariable   = regexp.MustCompile(`^RCB`)
-	rvVariable    = regexp.MustCompile(`^RV`)
-	steadyDwarf   = regexp.MustCompile(`^$|^ZZ`)
-	withCompanion = regexp.MustCompile(`ZAND|^N|UG|NL|AM|XM|XP|CV|WD|^E`)
-)
-
-// NewState prepares a target.
-//
-// Given:
-//   - t: the target; any datum may be missing or absurd.
-//   - v: its judgement, unused by the methods for poor data.
-//   - mags: measured magnitudes of this target; the newest is named in the
-//     basis, none moves the forecast yet.
-func NewState(t targets.Target, v stage.Verdict, mags []targets.Magnitude) *State {
-	s := &State{note: newest(mags)}
-	vt := t.Var.Type
-	switch {
-	case t.Kind == targets.PN:
-		s.model = newNebula(t)
-	case rcbVariable.MatchString(vt):
-		s.model = newRCB(t)
-	case t.Kind == targets.Interacting || (t.Kind != targets.LPV && t.Kind != targets.WD && withCompanion.MatchString(vt) && t.Var.MagMax.Known):
-		s.model = newBinary(t)
-	case lpvVariable.MatchString(vt) || t.Kind == targets.LPV || rvVariable.MatchString(vt):
-		s.model = newLongPeriod(t)
-	case !steadyDwarf.MatchString(vt) && t.Var.MagMax.Known && t.Var.MagMin.Known:
-		s.model = newRange(t)
-	default:
-		s.model = newConstant(t)
-	}
-	s.note = unconfirmed(&t) + s.note
-	s.eclipse = newEclipse(t)
-	if l, ok := s.model.(*longPeriod); ok {
-		s.maximum = l
-	}
-	return s
+// memoKey names a forecast that is kept.
+type memoKey struct {
+	tick  float64
+	band  targets.Band
+	level float64
+	n     int
 }
+
+// forever is the tick of what the date does not change, days.
+const forever = 1e9
+
+// mostKept is how many forecasts are kept before the store is emptied.
+const mostKept = 256
 
 // unconfirmed says which of the values that a forecast may rest on no open
 // source bore out.
@@ -143,48 +141,96 @@ func unconfirmed(t *targets.Target) string {
 	return "; unconfirmed: " + strings.Join(list, " ")
 }
 
-// newest names the latest measured magnitude.
-func newest(mags []targets.Magnitude) string {
-	k := -1
-	for i := range mags {
-		if k < 0 || mags[i].JD > mags[k].JD {
-			k = i
-		}
+// until returns how many readings are no later than an instant.
+func (s *State) until(t astro.Instant) int {
+	n := len(s.readings)
+	for n > 0 && s.readings[n-1].at.After(t) {
+		n--
 	}
-	if k < 0 {
-		return ""
-	}
-	m := &mags[k]
-	sign := ""
-	if m.Limit {
-		sign = "fainter than "
-	}
-	return fmt.Sprintf("; last measured %s%.2f in %s at JD %.2f, not used in the forecast", sign, m.Mag, m.Band, m.JD)
+	return n
 }
 
 // At returns the brightness expected at an instant.
 //
 // Given:
-//   - t: the instant.
+//   - t: the instant. Magnitudes later than it, or than ask.AsOf, teach nothing.
 //   - ask: band and level; a level outside 0 to 1 is taken as DefaultLevel.
 //
 // Returns:
 //   - a forecast in the band asked, or in the best known one; Known is false
 //     and Basis says why where nothing can be said.
 //
-// Checked: TestConstant, TestCurve, TestStates, TestNebula, FuzzLight.
+// Notes:
+//  1. That of a long-period variable is worked out for every thousandth of its
+//     period, 0.01 mag at most of its curve, and kept.
+//
+// Checked: TestConstant, TestLongPeriod, TestStates, TestNebula, FuzzLight.
 func (s *State) At(t astro.Instant, ask Ask) Forecast {
 	level := ask.Level
 	if !(level > 0 && level < 1) {
 		level = DefaultLevel
 	}
-	f := s.model.at(t, ask.Band, level)
+	asOf := ask.AsOf
+	if asOf.IsZero() {
+		asOf = t
+	}
+	n := s.until(asOf)
+	f := s.forecast(query{t, ask.Band, level, n})
 	f.Level = level
 	if f.Known && math.IsNaN(f.Mag.Mags()+f.Lo.Mags()+f.Hi.Mags()) {
 		f = Forecast{Band: f.Band, Level: level, Basis: "the listed values are no magnitudes"}
 	}
-	f.Basis += s.note
+	f.Basis += s.note + s.passedOver(n)
 	return f
+}
+
+// forecast asks the model, or what it said before.
+func (s *State) forecast(q query) Forecast {
+	tick := s.model.tick()
+	if !(tick > 0) {
+		return s.model.at(q)
+	}
+	s.mu.Lock()
+	defer s.mu.Unlock()
+	k := memoKey{math.Round(q.t.JDUTC() / tick), q.band, q.level, q.n}
+	f, ok := s.memo[k]
+	if !ok {
+		if s.memo == nil || len(s.memo) >= mostKept {
+			s.memo = map[memoKey]Forecast{}
+		}
+		if tick < forever {
+			q.t = q.t.Add(days(k.tick*tick - q.t.JDUTC()))
+		}
+		f = s.model.at(q)
+		s.memo[k] = f
+	}
+	return f
+}
+
+// passedOver says how many magnitudes did not count.
+func (s *State) passedOver(n int) string {
+	bad := 0
+	for i := range s.readings[:n] {
+		if s.readings[i].why != "" {
+			bad++
+		}
+	}
+	words := ""
+	if bad > 0 {
+		words += fmt.Sprintf("; %s set aside", counted(bad, "magnitude"))
+	}
+	if late := len(s.readings) - n; late > 0 {
+		words += fmt.Sprintf("; %s later than this not used", counted(late, "magnitude"))
+	}
+	return words
+}
+
+// counted writes a number of things.
+func counted(n int, what string) string {
+	if n == 1 {
+		return "1 " + what
+	}
+	return fmt.Sprintf("%d %ss", n, what)
 }
 
 // unknown is the forecast where nothing can be said.

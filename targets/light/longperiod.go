@@ -3,274 +3,410 @@ package light
 import (
 	"fmt"
 	"math"
+	"regexp"
+	"sync"
 
 	"evenfall/astro"
+	"evenfall/astro/bands"
+	"evenfall/astro/cite"
 	"evenfall/targets"
+	"evenfall/targets/light/wander"
 )
 
-// What catalogue extremes mean in V: the mean curve's maximum is this much
-// fainter than the brightest, its minimum this much brighter than the faintest
-// ever listed. Measured on ASAS-3 light curves of 149 Miras.
-//
-// Source: [cite.Pojmanski2002] for the light curves, [cite.SamusEtAl2017] for the
-// extremes; the measurement is this project's.
-const (
-	maxIsFainter   = 0.77
-	minIsBrighter  = 0.92
-	scatterMaximum = 0.5 // of single maxima, mag
-	scatterMinimum = 0.3
-	leastScatter   = 0.05 // no curve is better than that
-	// leastShare is how much of the listed range the mean curve keeps at least,
-	// where the two shifts would eat it up: amplitudes under some 2.8 mag.
-	leastShare = 0.4
-)
-
-// How the phase drifts away from catalogue elements over cycles, and how often
-// it is lost at once. Maximum likelihood on 336 Miras of ASAS-3.
-//
-// Source: [cite.EddingtonPlakidis1929] for the growth with the square root of
-// the cycles; the constants are this project's measurement.
-const (
-	phaseFirst  = 0.030  // cycle
-	phaseWalk   = 0.012  // cycle per square root of a cycle
-	phaseDrift  = 0.0048 // cycle per cycle
-	phaseLost   = 0.29   // weight on any phase
-	knownFrom   = 0.9    // resultant length above which a phase counts as known
-	unknownFrom = 0.6    // below which it counts as unknown
-)
-
-// longPeriod is a Mira, a semiregular or a slow irregular variable.
+// longPeriod is a Mira, a semiregular or a slow irregular variable, forecast by
+// the filter of package wander; where that has no period, by what is left.
 type longPeriod struct {
-	t              targets.Target
-	band           targets.Band // that the curve is in
-	bright, faint  float64      // of the mean curve
-	sdMax, sdMin   float64      // scatter there
-	periodD, epoch float64      // NaN: none
-	rise           float64      // fraction of the period
-	how            string
+	t        *targets.Target
+	readings []reading
+	steady   *steady
+	elements wander.Elements // PeriodD is 0 where none is listed
+	home     targets.Band    // answered in where none is asked
+	small    bool            // varies less than the stars that the averages are of
+
+	mu   sync.Mutex
+	fits map[fitKey]*fitted
 }
 
-func newLongPeriod(t targets.Target) model {
-	l := &longPeriod{t: t, band: bandOf(t.Var.MagBand), periodD: math.NaN(), epoch: math.NaN()}
-	max, min := t.Var.MagMax, t.Var.MagMin
-	switch {
-	case usable(max) && usable(min) && min.Value > max.Value && !t.Var.MagMinIsLimit:
-		l.fromExtremes(max.Value, min.Value)
-	case usable(max):
-		l.fromMaximum(max.Value)
-	default:
-		return newConstant(t)
+// fitKey is what a filter was made for: a band, and so many readings.
+type fitKey struct {
+	band targets.Band
+	n    int
+}
+
+// fitted is a filter with what it rests on.
+type fitted struct {
+	filter *wander.Filter // nil: none can be made
+	why    string         // there is none
+	found  *wander.Period // from magnitudes; nil: listed
+	used   []int          // places of the readings taken in, of its own band
+	others int            // readings of other bands that taught the phase
+	since  astro.Instant  // date of the first reading used
+}
+
+const (
+	// Semiregulars that vary by less, in mag from brightest to faintest, are
+	// smaller than the averages' stars; so many magnitudes teach them. A choice.
+	smallRange, smallNeeds = 1.6, 10
+	// Periods found from magnitudes: so small a chance of noise is trusted, and
+	// this is the least error, of the period.
+	trustedFalseAlarm, leastPeriodErr = 1e-6, 0.02
+	// The filter's own limits.
+	shortestLPV, longestLPV = 10.0, 3000.0
+	// A forecast holds for a thousandth of the period, within these days.
+	tickPerPeriod, shortestTick, longestTick = 1e-3, 0.02, 1.0
+	mostFits                                 = 64
+	memoryCycles, memoryCount                = 3.0, 100 // as wander.Fit
+	calibratedFrom                           = 3
+)
+
+// infrared bands, where Miras vary by a quarter of what they do in V.
+var infrared = map[targets.Band]bool{"J": true, "H": true, "K": true, "W1": true, "W2": true}
+
+// infraredRange is the most that they vary there, mag; from memory, not checked
+// against a publication.
+const infraredRange = 2.0
+
+var carbonStar = regexp.MustCompile(`^(C|N|R)\d*[-,:e\d]|^(C|N|R)$|^C-[RNJH]`)
+
+func newLongPeriod(t *targets.Target, list []reading, s *steady) model {
+	l := &longPeriod{t: t, readings: list, steady: s, home: bandOf(t.Var.MagBand), fits: map[fitKey]*fitted{}}
+	v := &t.Var
+	e := wander.Elements{Class: wander.Semiregular, Band: targets.Band(v.MagBand), NoMax: !usable(v.MagMax), NoMin: !usable(v.MagMin), MinIsLimit: v.MagMinIsLimit}
+	if miraVariable.MatchString(v.Type) || v.Type == "" && t.Kind == targets.LPV {
+		e.Class = wander.Mira
 	}
-	if p := t.Var.PeriodD; usable(p) && p.Value > 0 {
-		l.periodD = p.Value
-		// the catalogue dates RV Tauri stars by their minima as often as not
-		if e := t.Var.EpochMaxJD; usable(e) && !rvVariable.MatchString(t.Var.Type) {
-			l.epoch = e.Value
+	if visualNames[e.Band] {
+		e.Band = "V"
+	}
+	if !e.NoMax {
+		e.MagMax = v.MagMax.Value
+	}
+	if !e.NoMin {
+		e.MagMin = v.MagMin.Value
+	}
+	if p := v.PeriodD; usable(p) && p.Value >= shortestLPV && p.Value <= longestLPV {
+		e.PeriodD = p.Value
+		if p.Err > 0 && p.Err < p.Value && !p.Assumed {
+			e.PeriodErrD = p.Err
+		}
+		if m := v.EpochMaxJD; usable(m) && m.Value > 0 && m.Value < 1e7 {
+			e.EpochMaxJD, e.HasEpoch = m.Value, true
 		}
 	}
-	l.rise = riseOf(t)
+	e.Carbon = carbonStar.MatchString(t.Physics.SpType)
+	if r := v.RiseFraction; usable(r) && r.Value > 0.05 && r.Value < 0.95 {
+		e.RiseFraction = r.Value
+	}
+	if m := t.Mags["V"]; e.NoMax && usable(m) {
+		e.LevelMag, e.HasLevel = m.Value, true
+	}
+	if l.home == wander.BandPhotographic {
+		l.home = "V"
+	}
+	l.small = e.Class == wander.Semiregular && !e.NoMax && !e.NoMin && !e.MinIsLimit && e.MagMin-e.MagMax < smallRange && e.Band != wander.BandPhotographic
+	l.elements = e
 	return l
 }
 
-// fromExtremes sets the mean curve from the catalogue's brightest and faintest.
-func (l *longPeriod) fromExtremes(max, min float64) {
-	share := math.Min(1, (1-leastShare)*(min-max)/(maxIsFainter+minIsBrighter))
-	l.bright, l.faint = max+share*maxIsFainter, min-share*minIsBrighter
-	l.sdMax, l.sdMin = math.Max(share*scatterMaximum, leastScatter), math.Max(share*scatterMinimum, leastScatter)
-	l.how = fmt.Sprintf("mean curve from %.1f to %.1f in %s, from catalogue extremes %.1f to %.1f", l.bright, l.faint, l.band, max, min)
+func (l *longPeriod) tick() float64 {
+	return math.Min(math.Max(l.elements.PeriodD*tickPerPeriod, shortestTick), longestTick)
 }
 
-// fromMaximum sets the curve of a star whose faintest is not listed.
-//
-//	mean level = brightest + 2.79 (sd 0.91), half amplitude = 1.606 + 0.524 log10(P/280) (sd 0.59), in V
-//
-// Source: this project's measurement on 105 Miras of ASAS-3, [cite.Pojmanski2002].
-func (l *longPeriod) fromMaximum(max float64) {
-	level, sd := max+2.79, 0.91
-	if l.band == "p" {
-		level, sd = max+0.42, 1.08
-		l.band = "V"
+// fit returns the filter of a band that the first n readings taught.
+func (l *longPeriod) fit(band targets.Band, n int) *fitted {
+	l.mu.Lock()
+	defer l.mu.Unlock()
+	key := fitKey{band, n}
+	if f, ok := l.fits[key]; ok {
+		return f
 	}
-	half := 1.606
-	if p := l.t.Var.PeriodD; usable(p) && p.Value > 0 {
-		half += 0.524 * math.Log10(p.Value/280)
+	if len(l.fits) >= mostFits {
+		clear(l.fits)
 	}
-	half = math.Max(half, 0.4)
-	l.bright, l.faint = level-half, level+half
-	l.sdMax, l.sdMin = math.Hypot(sd, 0.59), math.Hypot(sd, 0.59)
-	l.how = fmt.Sprintf("no faintest magnitude listed: mean curve from %.1f to %.1f in %s, as such stars have", l.bright, l.faint, l.band)
-}
-
-// riseOf returns the rise time as a fraction of the period.
-//
-// Source: common practice, no source, where the list has none.
-func riseOf(t targets.Target) float64 {
-	if r := t.Var.RiseFraction; usable(r) && r.Value > 0.05 && r.Value < 0.95 {
-		return r.Value
-	}
-	switch p := t.Var.PeriodD; {
-	case !usable(p) || p.Value < 300:
-		return 0.45
-	case p.Value < 400:
-		return 0.42
-	}
-	return 0.38
-}
-
-// Curve returns how far along from maximum (0) to minimum (1) a long-period
-// variable is at a phase.
-//
-//	x = phase/(1-f) on the fall, (1-phase)/f on the rise;  w = (1 - cos(pi x)) / 2
-//
-// Given:
-//   - phase: cycles after maximum, 0 to 1.
-//   - rise: f, rise time over period.
-//
-// Source: common practice, no source.
-//
-// Checked: TestCurve, 0.001 mag.
-func Curve(phase, rise float64) float64 {
-	x := (1 - phase) / rise
-	if phase < 1-rise {
-		x = phase / (1 - rise)
-	}
-	return (1 - math.Cos(math.Pi*x)) / 2
-}
-
-// PhaseError returns the standard deviation of a phase computed from catalogue
-// elements, in cycles.
-//
-//	sd^2 = 0.030^2 + 0.012^2 N + (0.0048 N)^2
-//
-// Given:
-//   - cycles: N, since the epoch, either way.
-//
-// Source: see the constants.
-//
-// Checked: TestPhaseError.
-func PhaseError(cycles float64) float64 {
-	n := math.Abs(cycles)
-	return math.Sqrt(phaseFirst*phaseFirst + phaseWalk*phaseWalk*n + phaseDrift*phaseDrift*n*n)
-}
-
-// steps of phase over which the mixture is summed.
-const phaseSteps = 48
-
-func (l *longPeriod) at(t astro.Instant, band targets.Band, level float64) Forecast {
-	conv, ok := l.convert(band)
-	if !ok {
-		c := &constant{t: l.t}
-		if f := c.at(t, band, level); f.Known {
-			f.Basis = "single catalogue magnitude of a variable star, phase unknown: " + f.Basis
-			return f
-		}
-		return unknown(band, fmt.Sprintf("extremes are listed in %s; no relation from there to %s", l.t.Var.MagBand, band))
-	}
-	phase, weight, cycles := l.phase(t)
-	f := Forecast{Band: conv.band, Phase: phase, Basis: l.how + conv.note + l.phaseWords(phase, cycles)}
-	var m mixture
-	for i, w := range weight {
-		y := Curve((float64(i)+0.5)/phaseSteps, l.rise)
-		mean := conv.bright + (conv.faint-conv.bright)*y
-		m = append(m, part{w, mean, conv.sdMax*(1-y) + conv.sdMin*y})
-	}
-	m.interval(&f, level)
-	if phase.Status != PhaseUnknown {
-		f.Rising = -1
-		if phase.Value > 1-l.rise {
-			f.Rising = 1
-		}
-	}
-	f.Steps = []Step{{"expected brightness", "mean curve (1 - cos(pi x))/2 between maximum and minimum, over the distribution of the phase",
-		fmt.Sprintf("%s; rise %.2f of the period", l.how, l.rise),
-		fmt.Sprintf("%.2f, %.2f to %.2f", f.Mag.Mags(), f.Lo.Mags(), f.Hi.Mags()),
-		"phase error as Eddington & Plakidis 1929, constants measured on ASAS-3 (Pojmanski 2002)"}}
+	f := l.make(band, n)
+	l.fits[key] = f
 	return f
 }
 
-// phase returns where the star is in its cycle, how the probability is spread
-// over phases, and the cycles since the epoch.
-func (l *longPeriod) phase(t astro.Instant) (*Phase, [phaseSteps]float64, float64) {
-	var w [phaseSteps]float64
-	for i := range w {
-		w[i] = 1.0 / phaseSteps
-	}
-	if math.IsNaN(l.epoch) || math.IsNaN(l.periodD) {
-		return &Phase{Value: math.NaN(), Sigma: math.NaN(), Status: PhaseUnknown}, w, math.NaN()
-	}
-	cycles := (t.JDUTC() - l.epoch) / l.periodD
-	phi, sd := cycles-math.Floor(cycles), PhaseError(cycles)
-	sum := 0.0
-	for i := range w {
-		w[i] = 0
-		for turn := -3.0; turn <= 3; turn++ {
-			d := ((float64(i)+0.5)/phaseSteps - phi + turn) / sd
-			w[i] += math.Exp(-d * d / 2)
+func (l *longPeriod) make(band targets.Band, n int) *fitted {
+	f := &fitted{}
+	own := in(l.readings, n, band)
+	teacher := l.teacher(band, n, len(own))
+	e := l.elements
+	if e.PeriodD == 0 {
+		main := own
+		if teacher != "" {
+			main = in(l.readings, n, teacher)
 		}
-		sum += w[i]
+		if f.found = findPeriod(l.obs(main)); f.found == nil {
+			f.why = "no period listed, and none found in " + counted(len(main), "magnitude")
+			return f
+		}
+		e.PeriodD, e.PeriodErrD, e.HasEpoch = f.found.Days, math.Max(f.found.SigmaD, leastPeriodErr*f.found.Days), false
 	}
-	for i := range w {
-		w[i] = (1-phaseLost)*w[i]/sum + phaseLost/phaseSteps
+	if l.small && f.found == nil && len(own) < smallNeeds {
+		f.why = fmt.Sprintf("varies less than the stars whose averages are known; %d magnitudes would teach it", smallNeeds)
+		return f
 	}
-	return &Phase{Value: phi, Sigma: sd, Status: statusOf(w)}, w, cycles
+	if err := l.chain(f, e, band, teacher, own, n); err != nil {
+		f.filter, f.why = nil, err.Error()
+	}
+	return f
 }
 
-// statusOf judges a distribution of phase by the length of its resultant.
-func statusOf(w [phaseSteps]float64) string {
-	x, y := 0.0, 0.0
-	for i, p := range w {
-		s, c := math.Sincos(2 * math.Pi * (float64(i) + 0.5) / phaseSteps)
-		x, y = x+p*c, y+p*s
+// teacher returns the other band whose magnitudes teach the phase first: the
+// richest, where it holds more than the band itself. "": none.
+func (l *longPeriod) teacher(band targets.Band, n, own int) targets.Band {
+	count, best := map[targets.Band]int{}, targets.Band("")
+	for i := range l.readings[:n] {
+		if r := &l.readings[i]; r.why == "" && r.band != band {
+			count[r.band]++
+			if c := count[r.band]; c > own && (best == "" || c > count[best]) {
+				best = r.band
+			}
+		}
 	}
-	switch r := math.Hypot(x, y); {
-	case r < unknownFrom:
-		return PhaseUnknown
-	case r < knownFrom:
-		return PhaseUncertain
-	}
-	return PhaseKnown
+	return best
 }
 
-func (l *longPeriod) phaseWords(p *Phase, cycles float64) string {
-	switch {
-	case math.IsNaN(l.periodD):
-		return "; no period listed: phase unknown"
-	case math.IsNaN(l.epoch):
-		return "; no epoch of maximum to go by: phase unknown"
-	case p.Status == PhaseUnknown:
-		return fmt.Sprintf("; elements %.0f cycles old: phase unknown", math.Abs(cycles))
+// chain makes the filter: in its own band, or in another first.
+func (l *longPeriod) chain(f *fitted, e wander.Elements, band, teacher targets.Band, own []int, n int) (err error) {
+	first, list := band, own
+	if teacher != "" {
+		first, list = teacher, in(l.readings, n, teacher)
 	}
-	return fmt.Sprintf("; phase %.2f +- %.2f from elements %.0f cycles old, wholly lost in 29 %% of such stars", p.Value, p.Sigma, math.Abs(cycles))
+	when := 2451545.0 // of no matter where there is no magnitude
+	if f.filter, err = l.start(e, first, list, when); err != nil {
+		return err
+	}
+	f.note(l, first == band, list)
+	if teacher == "" {
+		return nil
+	}
+	level, err := l.levelIn(band, own)
+	if err != nil {
+		return err
+	}
+	if f.filter, err = f.filter.InBand(band, level); err != nil {
+		return err
+	}
+	own = recent(l.readings, own, e.PeriodD)
+	for _, o := range l.obs(own) {
+		if err := f.filter.Update(o); err != nil {
+			return err
+		}
+	}
+	f.note(l, true, own)
+	return nil
 }
 
-// curveIn is the mean curve in some band.
-type curveIn struct {
-	band                        targets.Band
-	bright, faint, sdMax, sdMin float64
-	note                        string
+// start returns the filter of a band alone. Bands other than the catalogue's
+// start from a wide prior.
+func (l *longPeriod) start(e wander.Elements, band targets.Band, list []int, when float64) (*wander.Filter, error) {
+	if band == l.home {
+		return wander.Fit(e, band, l.obs(list), when)
+	}
+	level, err := l.levelIn(band, list)
+	if err != nil {
+		return nil, err
+	}
+	g := wander.Grid{TrefJD: when}
+	if list = recent(l.readings, list, e.PeriodD); len(list) > 0 {
+		g.TrefJD = l.readings[list[len(list)-1]].jd
+		g.SpanD = g.TrefJD - l.readings[list[0]].jd
+	}
+	base, err := wander.New(e, l.home, g)
+	if err != nil {
+		return nil, err
+	}
+	f, err := base.InBand(band, level)
+	if err != nil {
+		return nil, err
+	}
+	for _, o := range l.obs(list) {
+		if err := f.Update(o); err != nil {
+			return nil, err
+		}
+	}
+	return f, nil
 }
 
-// convert returns the curve in a band; false: nothing leads there.
-//
-//	V from photographic extremes: level = mid - 1.746 - 0.131 (h - 3) + 0.007 lp, sd 0.93
-//	half amplitude = 1.557 + 0.230 (h - 3) + 0.304 lp, sd 0.40     h: half range, lp = log10(P/280)
-//
-// Source: this project's measurement on 57 Miras of ASAS-3, [cite.Pojmanski2002].
-func (l *longPeriod) convert(band targets.Band) (curveIn, bool) {
-	own := curveIn{l.band, l.bright, l.faint, l.sdMax, l.sdMin, ""}
-	if band == "" || band == l.band {
-		return own, true
+// note writes down which readings a filter took in.
+func (f *fitted) note(l *longPeriod, own bool, list []int) {
+	taken := f.filter.Used()
+	list = list[max(0, len(list)-len(taken)):]
+	if own {
+		f.used = list
+	} else {
+		f.others = len(list)
 	}
-	if band != "V" || l.t.Var.MagBand != "p" {
-		return own, false
+	if len(list) > 0 && (f.since.IsZero() || l.readings[list[0]].at.Before(f.since)) {
+		f.since = l.readings[list[0]].at
 	}
-	max, min := l.t.Var.MagMax.Value, l.t.Var.MagMin.Value
-	h, mid, lp := (min-max)/2, (min+max)/2, 0.0
-	if p := l.t.Var.PeriodD; usable(p) && p.Value > 0 {
-		lp = math.Log10(p.Value / 280)
-	}
-	level := mid - 1.746 - 0.131*(h-3) + 0.007*lp
-	half := math.Max(1.557+0.230*(h-3)+0.304*lp, 0.4)
-	sd := math.Hypot(0.93, 0.40)
-	return curveIn{"V", level - half, level + half, sd, sd, fmt.Sprintf("; carried to V: %.1f to %.1f", level-half, level+half)}, true
 }
+
+// recent returns the readings of the last three cycles, or the newest 100.
+func recent(all []reading, list []int, periodD float64) []int {
+	k := max(0, len(list)-memoryCount)
+	for k > 0 && all[list[k-1]].jd >= all[list[len(list)-1]].jd-memoryCycles*periodD {
+		k--
+	}
+	return list[k:]
+}
+
+// levelIn returns a mean magnitude to start from in a band that the averages
+// are not of: as listed, as measured, or carried from the catalogue's.
+func (l *longPeriod) levelIn(band targets.Band, own []int) (float64, error) {
+	if band == l.home {
+		return math.NaN(), nil
+	}
+	if m := l.t.Mags[band]; usable(m) {
+		return m.Value, nil
+	}
+	sum, count := 0.0, 0
+	for _, i := range own {
+		if !l.readings[i].Limit {
+			sum, count = sum+l.readings[i].Mag, count+1
+		}
+	}
+	if count > 0 {
+		return sum / float64(count), nil
+	}
+	known := map[bands.Band]bands.Measure{}
+	for b, m := range l.steady.known {
+		known[b] = m
+	}
+	if v := &l.t.Var; usable(v.MagMax) && usable(v.MagMin) {
+		known[bands.Band(l.home)] = bands.Measure{Mag: (v.MagMax.Value + v.MagMin.Value) / 2, Err: 0.5}
+	}
+	c, err := bands.Carry(known, bands.Band(band), l.steady.hints)
+	if err != nil {
+		return 0, err
+	}
+	return c.Mag, nil
+}
+
+func (l *longPeriod) obs(list []int) []wander.Obs {
+	out := make([]wander.Obs, len(list))
+	for k, i := range list {
+		r := &l.readings[i]
+		out[k] = wander.Obs{JD: r.jd, Mag: r.Mag, Err: r.Err, Limit: r.Limit, Visual: r.visual}
+	}
+	return out
+}
+
+// findPeriod returns a period that can be trusted; nil: there is none.
+func findPeriod(obs []wander.Obs) *wander.Period {
+	p, err := wander.FindPeriod(obs)
+	if err != nil || !(p.FalseAlarm < trustedFalseAlarm) || !(p.Days >= shortestLPV && p.Days <= longestLPV) {
+		return nil
+	}
+	return &p
+}
+
+// maximum is when a long-period variable is next brightest.
+type maximum struct {
+	jd, sigmaD float64
+	periodD    float64
+	status     string // of the phase
+}
+
+func (l *longPeriod) at(q query) Forecast {
+	band := q.band
+	if band == "" || visualNames[band] {
+		band = l.home
+	}
+	if infrared[band] && len(in(l.readings, q.n, band)) < calibratedFrom {
+		return l.inInfrared(q, band)
+	}
+	fit := l.fit(band, q.n)
+	if fit.filter == nil {
+		return l.without(q, band, fit)
+	}
+	w, err := fit.filter.At(q.t.JDUTC())
+	if err != nil {
+		return unknown(band, err.Error())
+	}
+	f := Forecast{Band: band, Phase: &Phase{w.Phase, w.PhaseSigma, w.PhaseStatus}, Rising: w.Rising}
+	period := l.elements.PeriodD
+	if fit.found != nil {
+		period = fit.found.Days
+	}
+	if fit.blind(&w) {
+		f.Phase.Value, f.Phase.Sigma = math.NaN(), math.NaN()
+	} else {
+		f.maximum = &maximum{w.MaximumJD, w.MaximumSigmaD, period, w.PhaseStatus}
+	}
+	f.fill(w, q.level)
+	f.Basis = l.words(q, fit, &w, f.maximum)
+	f.Steps = l.steps(fit, &w, &f, period)
+	return f
+}
+
+// blind tells whether nothing at all says what the phase is.
+func (f *fitted) blind(w *wander.Forecast) bool {
+	return w.N+w.NOther == 0 && math.IsNaN(w.CyclesSinceEpoch)
+}
+
+// without answers where the filter cannot.
+func (l *longPeriod) without(q query, band targets.Band, fit *fitted) Forecast {
+	v := &l.t.Var
+	phase := &Phase{Value: math.NaN(), Sigma: math.NaN(), Status: PhaseUnknown}
+	if usable(v.MagMax) && usable(v.MagMin) && v.MagMin.Value >= v.MagMax.Value && band == bandOf(v.MagBand) {
+		f := (&between{l.t, l.steady}).at(query{q.t, band, q.level, q.n})
+		f.Basis += "; " + fit.why
+		f.Phase = phase
+		return f
+	}
+	q.band = band
+	f := l.steady.at(q)
+	if v.Type != "" {
+		f = single(f)
+		f.Basis += "; " + fit.why
+		f.Phase = phase
+	}
+	return f
+}
+
+// inInfrared answers in a band where the curve is another: the single magnitude
+// listed, with all that such stars vary by around it.
+func (l *longPeriod) inInfrared(q query, band targets.Band) Forecast {
+	q.band = band
+	f := l.steady.at(q)
+	if !f.Known || l.t.Var.Type == "" {
+		return f
+	}
+	f = single(f)
+	mid := f.Mag.Mags()
+	f.fill(spread(mid-infraredRange/2, mid+infraredRange/2), q.level)
+	f.Phase = &Phase{Value: math.NaN(), Sigma: math.NaN(), Status: PhaseUnknown}
+	f.Basis += fmt.Sprintf("; such stars vary by up to %.0f mag there (from memory, not checked against a publication); band not calibrated until %d magnitudes", infraredRange, calibratedFrom)
+	f.Steps = append(f.Steps, Step{"expected brightness", "uniform about a single magnitude", fmt.Sprintf("%.2f +- %.1f", mid, infraredRange/2), f.result(),
+		"from memory, not checked against a publication"})
+	return f
+}
+
+func (l *longPeriod) judge(n int) []verdict {
+	out := make([]verdict, n)
+	for i := range out {
+		r := &l.readings[i]
+		if r.why != "" {
+			continue
+		}
+		fit := l.fit(r.band, n)
+		out[i].why = fit.why
+		if fit.filter == nil {
+			continue
+		}
+		out[i].why = fmt.Sprintf("older than the last %g cycles and the newest %d magnitudes", memoryCycles, memoryCount)
+		for k, j := range fit.filter.Used() {
+			if fit.used[k] == i {
+				out[i] = verdict{used: true, p: j.NarrowP}
+			}
+		}
+	}
+	return out
+}
+
+// filterSource names the works behind the filter.
+var filterSource = cite.ChenLiu2000.String() + "; measured on light curves of " + cite.Pojmanski2002.String()

@@ -19,6 +19,10 @@ const (
 // fluxErrDex is one sigma of a line flux whose error is not listed.
 const fluxErrDex = 0.1
 
+// largeArcsec is the diameter from which fluxes of a nebula differ by a tenth
+// of a dex with the aperture, whatever error is quoted. A choice.
+const largeArcsec = 60.0
+
 // lineZero turns a flux into a magnitude: m = -2.5 log F - 13.74, F in
 // erg/s/cm2.
 //
@@ -51,8 +55,18 @@ func (n *nebula) flux(b targets.Band) targets.Measure {
 	return targets.Measure{}
 }
 
-func (n *nebula) at(_ astro.Instant, band targets.Band, level float64) Forecast {
-	line := band
+func (n *nebula) tick() float64 { return forever }
+
+func (n *nebula) judge(k int) []verdict {
+	out := make([]verdict, k)
+	for i := range out {
+		out[i].why = "nebulae are forecast from their line fluxes"
+	}
+	return out
+}
+
+func (n *nebula) at(q query) Forecast {
+	line := q.band
 	if line != LineHa && line != LineHb && line != LineO3 {
 		line = ""
 		for _, b := range []targets.Band{LineO3, LineHb, LineHa} {
@@ -74,11 +88,18 @@ func (n *nebula) at(_ astro.Instant, band targets.Band, level float64) Forecast 
 	if !(err > 0) {
 		err, said = fluxErrDex, "assumed"
 	}
+	if d := n.t.Nebula.DiamArcsec; said == "listed" && usable(d) && d.Value >= largeArcsec {
+		err, said = math.Hypot(err, fluxErrDex), fmt.Sprintf("with %.1f dex for its size", fluxErrDex)
+	}
 	out := Forecast{Band: line, Basis: fmt.Sprintf("line flux 10^%.2f erg/s/cm2, error %.2g dex %s; constant", f.Value, err, said)}
 	m := LineMag(f.Value).Mags()
-	mixture{{1, m, 2.5 * err}}.interval(&out, level)
+	out.fill(mixture{{1, m, 2.5 * err}}, q.level)
 	out.Steps = []Step{{"line magnitude", "-2.5 log F - 13.74", fmt.Sprintf("log F(%s) = %.2f", line, f.Value),
 		fmt.Sprintf("%.2f", m), cite.Jacoby1989.String()}}
+	if v := n.t.Nebula.CspnV; usable(v) {
+		out.Steps = append(out.Steps, Step{"central star", "as listed; a tenth to a fifth are close binaries and vary",
+			"the list", fmt.Sprintf("V = %.2f", v.Value), fromMemory})
+	}
 	n.surface(&out)
 	return out
 }

@@ -17,13 +17,16 @@ import (
 )
 
 // Models is what judging and forecasting draw on; made once, shared by all.
-type Models struct{ Stage *stage.Models }
+type Models struct {
+	Stage  *stage.Models
+	States *light.Shelf // states of brightness by content; nil: none are kept
+}
 
 // NewModels makes the models, for giants of the field.
 func NewModels() Models { return NewModelsFor(targets.PopulationField) }
 
 // NewModelsFor makes the models for a population of giants.
-func NewModelsFor(p targets.Population) Models { return Models{Stage: stage.NewModelsFor(p)} }
+func NewModelsFor(p targets.Population) Models { return Models{Stage: stage.NewModelsFor(p), States: light.NewShelf()} }
 
 // Prepared is a target with everything that does not depend on the night.
 type Prepared struct {
@@ -55,11 +58,16 @@ var typicalMotionWD = astro.Arcsec(0.25)
 //   - t: as read; the magnitudes are those of this target.
 //
 // Notes:
-//  1. Milliseconds; callers keep the answer for as long as the target and its
-//     magnitudes are the same.
+//  1. Under a millisecond; callers keep the answer for as long as the target and
+//     its magnitudes are the same. The state of its brightness is found again by
+//     its content, with all that was worked out from it.
 func Prepare(t targets.Target, mags []targets.Magnitude, m Models) Prepared {
 	p := Prepared{Target: t, Star: StarOf(&t), Verdict: m.Stage.Judge(t)}
-	p.Light = light.NewState(t, p.Verdict, mags)
+	if m.States != nil {
+		p.Light = m.States.State(t, p.Verdict, mags)
+	} else {
+		p.Light = light.NewState(t, p.Verdict, mags)
+	}
 	if !t.MotionKnown() {
 		p.Drift.MotionMissing = true
 		if t.Kind == targets.WD {

@@ -1,0 +1,136 @@
+package light
+
+import (
+	"fmt"
+	"math"
+
+	"evenfall/targets"
+)
+
+// between is a variable of no predictable kind: anywhere in its range.
+type between struct {
+	t      *targets.Target
+	steady *steady
+}
+
+func (b *between) tick() float64 { return forever }
+
+func (b *between) at(q query) Forecast {
+	own := bandOf(b.t.Var.MagBand)
+	if q.band != "" && q.band != own {
+		return single(b.steady.at(q))
+	}
+	f := Forecast{Band: own, Basis: fmt.Sprintf("variable of type %s: anywhere between its extremes", b.t.Var.Type)}
+	f.fill(spread(b.t.Var.MagMax.Value, b.t.Var.MagMin.Value), q.level)
+	f.Steps = []Step{{"expected brightness", "uniform between the extremes", fmt.Sprintf("%.2f to %.2f", b.t.Var.MagMax.Value, b.t.Var.MagMin.Value),
+		f.result(), "the list"}}
+	return f
+}
+
+// single says of a catalogue magnitude that it is one of many.
+func single(f Forecast) Forecast {
+	if f.Known {
+		f.Basis = "single catalogue magnitude of a variable star: " + f.Basis
+	}
+	return f
+}
+
+func (b *between) judge(n int) []verdict {
+	out := make([]verdict, n)
+	for i := range out {
+		out[i].why = "the star keeps no period that magnitudes could place it in"
+	}
+	return out
+}
+
+// Curve returns how far along from maximum (0) to minimum (1) a pulsating star
+// is at a phase.
+//
+//	x = phase/(1-f) on the fall, (1-phase)/f on the rise;  w = (1 - cos(pi x)) / 2
+//
+// Given:
+//   - phase: cycles after maximum, 0 to 1.
+//   - rise: f, rise time over period, above 0 and below 1.
+//
+// Source: common practice, no source.
+//
+// Checked: TestCurve, 0.001 mag.
+func Curve(phase, rise float64) float64 {
+	x := (1 - phase) / rise
+	if phase < 1-rise {
+		x = phase / (1 - rise)
+	}
+	return (1 - math.Cos(math.Pi*x)) / 2
+}
+
+const (
+	// usualRise is the rise time over the period where the list has none, and
+	// curveSD how far such a curve is off, mag. Common practice, no source.
+	usualRise, curveSD = 0.45, 0.15
+	phaseSteps         = 48
+)
+
+// riseOf returns the rise time as a fraction of the period.
+//
+// Source: common practice, no source, where the list has none.
+func riseOf(t *targets.Target) float64 {
+	if r := t.Var.RiseFraction; usable(r) && r.Value > 0.05 && r.Value < 0.95 {
+		return r.Value
+	}
+	switch p := t.Var.PeriodD; {
+	case !usable(p) || p.Value < 300:
+		return usualRise
+	case p.Value < 400:
+		return 0.42
+	}
+	return 0.38
+}
+
+// pulsing is a star that pulsates by the clock, as RR Lyrae stars do.
+type pulsing struct {
+	t        *targets.Target
+	timed    *timed
+	steady   *steady
+	readings []reading
+}
+
+func (p *pulsing) tick() float64 { return 0 }
+
+func (p *pulsing) judge(n int) []verdict { return (&between{p.t, p.steady}).judge(n) }
+
+func (p *pulsing) at(q query) Forecast {
+	own := bandOf(p.t.Var.MagBand)
+	if q.band != "" && q.band != own {
+		return single(p.steady.at(q))
+	}
+	_, phase, sigma, err := p.timed.clock.PhaseAt(q.t)
+	if err != nil || !(sigma < expiredCycles) {
+		f := (&between{p.t, p.steady}).at(q)
+		f.Basis += "; elements expired: phase unknown"
+		f.Phase = &Phase{Value: math.NaN(), Sigma: math.NaN(), Status: PhaseUnknown}
+		return f
+	}
+	rise := riseOf(p.t)
+	max, min := p.t.Var.MagMax.Value, p.t.Var.MagMin.Value
+	var m mixture
+	sum := 0.0
+	for i := range phaseSteps {
+		z := 6 * (float64(i)/(phaseSteps-1) - 0.5)
+		at := phase + z*sigma
+		w := math.Exp(-z * z / 2)
+		m = append(m, part{w, max + (min-max)*Curve(at-math.Floor(at), rise), curveSD})
+		sum += w
+	}
+	for i := range m {
+		m[i].p /= sum
+	}
+	f := Forecast{Band: own, Phase: &Phase{phase, sigma, PhaseKnown}, Rising: -1,
+		Basis: fmt.Sprintf("phase %.2f +- %.2g by the elements, curve between the extremes", phase, sigma)}
+	if phase > 1-rise {
+		f.Rising = 1
+	}
+	f.fill(m, q.level)
+	f.Steps = []Step{{"expected brightness", "mmax + (mmin - mmax) (1 - cos(pi x))/2, over the error of the phase; 0.15 mag added",
+		fmt.Sprintf("phase %.3f, rise %.2f of the period, %.2f to %.2f", phase, rise, max, min), f.result(), "common practice, no source"}}
+	return f
+}
