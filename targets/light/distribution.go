@@ -52,8 +52,13 @@ func (f *Forecast) CDF(m astro.Mag) (p float64, ok bool) {
 
 // fill sets median and bounds of a forecast from a distribution.
 func (f *Forecast) fill(d distribution, level float64) {
-	f.Known, f.dist = true, d
+	f.bounds(d, level)
 	f.Mag = astro.Mags(d.Quantile(0.5))
+}
+
+// bounds sets the bounds alone.
+func (f *Forecast) bounds(d distribution, level float64) {
+	f.Known, f.dist = true, d
 	f.Lo = astro.Mags(d.Quantile(0.5 - level/2))
 	f.Hi = astro.Mags(d.Quantile(0.5 + level/2))
 }
@@ -78,6 +83,9 @@ func (m mixture) CDF(x float64) float64 {
 func (m mixture) Quantile(q float64) float64 {
 	if !(q > 0 && q < 1) {
 		return math.NaN()
+	}
+	if len(m) == 1 {
+		return m[0].mean + m[0].sd*math.Sqrt2*math.Erfinv(2*q-1)
 	}
 	lo, hi := math.Inf(1), math.Inf(-1)
 	for _, c := range m {

@@ -206,7 +206,7 @@ func (s *states) at(q query) Forecast {
 		one.fill(mixture{{1, st.mag, st.sd}}, q.level)
 		f.States = append(f.States, StateForecast{st.name, st.p, one.Mag, one.Lo, one.Hi})
 	}
-	f.fill(m, q.level)
+	f.bounds(m, q.level)
 	f.Mag = f.States[best].Mag
 	f.Steps = []Step{{"expected brightness", "states with probabilities, by Bayes from the latest magnitudes; median of the likeliest, interval of all together",
 		s.how + words, fmt.Sprintf("%s: %s", f.States[best].Name, f.result()), s.source}}

@@ -6,6 +6,7 @@ import (
 
 	"pgregory.net/rapid"
 
+	"evenfall/astro"
 	"evenfall/astro/check"
 	"evenfall/targets"
 	"evenfall/targets/stage"
