@@ -2,6 +2,7 @@ package light
 
 import (
 	"math"
+	"sync"
 	"testing"
 	"time"
 
@@ -64,6 +65,46 @@ func TestGiantsVary(t *testing.T) {
 	if width < 0.2 || width > 0.4 {
 		t.Errorf("90 %% of an M5 giant lie within %.2f mag", width)
 	}
+}
+
+// Bands follow by published relations with route, error and source, or are
+// absent with the reason: never for stars with emission lines.
+func TestCarriedBands(t *testing.T) {
+	star := targets.Target{Name: "a", Kind: targets.Giant, Physics: targets.Physics{SpType: "M2III"},
+		Mags: map[targets.Band]targets.Measure{"V": targets.KnownErr(6, 0.01)}}
+	f := forecast(star, Ask{Band: "I"})
+	// giants_by_type.csv has V-I of M2 giants between 1.8 and 2.1
+	if !f.Known || f.Mag.Mags() < 3.9 || f.Mag.Mags() > 4.2 || f.Hi.Minus(f.Lo) < 0.1 {
+		t.Errorf("I of an M2 giant of V = 6: %v, %v..%v", f.Mag, f.Lo, f.Hi)
+	}
+	if s := f.Steps[0]; s.What != "carried to I" || s.Source == "" || s.Inputs == "" {
+		t.Errorf("working %+v", s)
+	}
+	if f := forecast(star, Ask{Band: "W1"}); f.Known || f.Basis == "" {
+		t.Errorf("W1: %+v", f)
+	}
+	star.Kind, star.Var.Type = targets.Interacting, "ZAND"
+	if f := forecast(star, Ask{Band: "I"}); f.Known || f.Basis == "" {
+		t.Errorf("I of a symbiotic star: %+v", f)
+	}
+}
+
+// One state serves several goroutines.
+func TestTogether(t *testing.T) {
+	s := NewState(aMira(150), stage.Verdict{}, miraMags(10, -30, "V"))
+	want := s.At(now, Ask{}).Mag
+	var all sync.WaitGroup
+	for i := range 8 {
+		all.Go(func() {
+			s.At(now.Add(time.Duration(i)*24*time.Hour), Ask{Band: "B"})
+			s.Past()
+			s.Next(now)
+			if got := s.At(now, Ask{}).Mag; got != want {
+				t.Errorf("%v, alone %v", got, want)
+			}
+		})
+	}
+	all.Wait()
 }
 
 // log F = -10 is magnitude 11.26 (Jacoby 1989, as in stages-and-brightness

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"regexp"
+	"strings"
 	"sync"
 
 	"evenfall/astro"
@@ -21,7 +22,7 @@ type longPeriod struct {
 	steady   *steady
 	elements wander.Elements // PeriodD is 0 where none is listed
 	home     targets.Band    // answered in where none is asked
-	small    bool            // varies less than the stars that the averages are of
+	small    bool            // unlike the stars that the averages are of: it varies less, or is a supergiant
 
 	mu   sync.Mutex
 	fits map[fitKey]*fitted
@@ -45,7 +46,8 @@ type fitted struct {
 
 const (
 	// Semiregulars that vary by less, in mag from brightest to faintest, are
-	// smaller than the averages' stars; so many magnitudes teach them. A choice.
+	// smaller than the averages' stars; so many magnitudes teach them, and
+	// supergiants. A choice.
 	smallRange, smallNeeds = 1.6, 10
 	// Periods found from magnitudes: so small a chance of noise is trusted, and
 	// this is the least error, of the period.
@@ -97,6 +99,7 @@ func newLongPeriod(t *targets.Target, list []reading, s *steady) model {
 		l.home = "V"
 	}
 	l.small = e.Class == wander.Semiregular && !e.NoMax && !e.NoMin && !e.MinIsLimit && e.MagMin-e.MagMax < smallRange && e.Band != wander.BandPhotographic
+	l.small = l.small || strings.HasPrefix(v.Type, "SRC") || strings.HasPrefix(v.Type, "LC")
 	l.elements = e
 	return l
 }
@@ -138,7 +141,7 @@ func (l *longPeriod) make(band targets.Band, n int) *fitted {
 		e.PeriodD, e.PeriodErrD, e.HasEpoch = f.found.Days, math.Max(f.found.SigmaD, leastPeriodErr*f.found.Days), false
 	}
 	if l.small && f.found == nil && len(own) < smallNeeds {
-		f.why = fmt.Sprintf("varies less than the stars whose averages are known; %d magnitudes would teach it", smallNeeds)
+		f.why = fmt.Sprintf("not like the semiregular giants whose averages are known; %d magnitudes would teach it", smallNeeds)
 		return f
 	}
 	if err := l.chain(f, e, band, teacher, own, n); err != nil {
