@@ -26,7 +26,9 @@ type Models struct {
 func NewModels() Models { return NewModelsFor(targets.PopulationField) }
 
 // NewModelsFor makes the models for a population of giants.
-func NewModelsFor(p targets.Population) Models { return Models{Stage: stage.NewModelsFor(p), States: light.NewShelf()} }
+func NewModelsFor(p targets.Population) Models {
+	return Models{Stage: stage.NewModelsFor(p), States: light.NewShelf()}
+}
 
 // Prepared is a target with everything that does not depend on the night.
 type Prepared struct {
