@@ -2,6 +2,7 @@ package logbook
 
 import (
 	"context"
+	"errors"
 	"fmt"
 	"slices"
 	"strings"
@@ -84,7 +85,35 @@ func (b *Book) AddMagnitude(ctx context.Context, m targets.Magnitude) (int64, er
 	return id, err
 }
 
-// Magnitudes returns the magnitudes entered in this run.
+// EnteredAt is the file that entered magnitudes name as where they stand, and
+// their number its line.
+const EnteredAt = "run.db, table magnitudes"
+
+// Entered returns the number under which a magnitude was entered in this run;
+// false: it comes from a file.
+func Entered(m *targets.Magnitude) (id int64, ok bool) {
+	return int64(m.At.Line), m.At.File == EnteredAt
+}
+
+// ErrNoMagnitude is returned for a magnitude that is not there or void.
+var ErrNoMagnitude = errors.New("no such magnitude was entered, or it is void already")
+
+// VoidMagnitude declares an entered magnitude void; it stays in the store.
+func (b *Book) VoidMagnitude(ctx context.Context, id int64) error {
+	return b.db.Do(ctx, func(tx *store.Tx) error {
+		rows, err := tx.Select(store.Magnitudes, "id = ? AND void IS NULL", id)
+		if err == nil && len(rows) == 0 {
+			return fmt.Errorf("magnitude %d: %w", id, ErrNoMagnitude)
+		}
+		if err != nil {
+			return err
+		}
+		_, err = tx.Update(store.Magnitudes, id, store.Row{"void": int64(1)})
+		return err
+	})
+}
+
+// Magnitudes returns the magnitudes entered in this run, without void ones.
 func (b *Book) Magnitudes(ctx context.Context) ([]targets.Magnitude, error) {
 	rows, err := b.db.Select(ctx, store.Magnitudes, "void IS NULL")
 	if err != nil {
@@ -93,6 +122,7 @@ func (b *Book) Magnitudes(ctx context.Context) ([]targets.Magnitude, error) {
 	out := make([]targets.Magnitude, len(rows))
 	for i, r := range rows {
 		m := targets.Magnitude{Target: r.Text("target"), TimeScale: r.Text("time_scale"), Band: targets.Band(r.Text("band")), Limit: r.Int("faint_limit") != 0, Source: r.Text("source")}
+		m.At = targets.Where{File: EnteredAt, Line: int(r.Int("id"))}
 		m.JD, _ = r.Real("jd")
 		m.Mag, _ = r.Real("mag")
 		m.Err, _ = r.Real("err")

@@ -357,8 +357,26 @@ func TestKeep(t *testing.T) {
 	if _, err := b.AddMagnitude(ctx, m); err != nil {
 		t.Fatal(err)
 	}
-	if list, err := b.Magnitudes(ctx); err != nil || len(list) != 1 || list[0] != m {
-		t.Errorf("magnitudes %+v, %v", list, err)
+	list, err := b.Magnitudes(ctx)
+	if err != nil || len(list) != 1 {
+		t.Fatalf("magnitudes %+v, %v", list, err)
+	}
+	number, ok := Entered(&list[0])
+	if list[0].At = (targets.Where{}); !ok || list[0] != m {
+		t.Errorf("magnitude %+v, entered %v", list[0], ok)
+	}
+	// a void one is not used and stays
+	if err := b.VoidMagnitude(ctx, number); err != nil {
+		t.Error(err)
+	}
+	if list, err := b.Magnitudes(ctx); err != nil || len(list) != 0 {
+		t.Errorf("void magnitudes %+v, %v", list, err)
+	}
+	if err := b.VoidMagnitude(ctx, number); !errors.Is(err, ErrNoMagnitude) {
+		t.Errorf("void twice: %v", err)
+	}
+	if rows, err := b.Store().Select(ctx, store.Magnitudes, ""); err != nil || len(rows) != 1 || rows[0].Int("void") != 1 {
+		t.Errorf("the void one reads %v, %v", rows, err)
 	}
 	b.SaveDraft(ctx, "s", "log", "half")
 	b.SaveDraft(ctx, "s", "log", "half a w")
