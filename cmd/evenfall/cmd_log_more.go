@@ -203,6 +203,9 @@ func logMagnitudeCommand(w world, o *options) *cobra.Command {
 					}
 					m.JD = instant.JDUTC()
 				}
+				if err := table.CheckMagnitude(&m, x.now); err != nil {
+					return usagef("%w", err)
+				}
 				id, err := x.book.AddMagnitude(cmd.Context(), m)
 				return x.acknowledge(id, err)
 			})

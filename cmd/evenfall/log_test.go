@@ -194,6 +194,8 @@ func refusals(t *testing.T, dir string) {
 		"log add --request vw-hyi-v --target R_Lep --start 2026-12-02T04:10:00Z":                "wants",
 		"log magnitude --target R_Lep --band V --mag 8 --jd NaN":                                "Julian",
 		"log magnitude --target R_Lep --band V --mag 8 --jd 2461000 --utc 2026-12-02T04:10:00Z": "not both",
+		"log magnitude --target R_Lep --band V --mag 81":                                        "outside -2 to 25",
+		"log magnitude --target R_Lep --band V --mag 8 --utc 2027-12-02T04:10:00Z":              "in the future",
 		"log closed --start 2026-12-02T04:10:00Z --end 2026-12-02T03:10:00Z":                    "--end comes before",
 		"log void one":                 "not the number",
 		"log conditions":               "say nothing",

@@ -44,7 +44,7 @@ func rootCommand(w world, args []string) *cobra.Command {
 	f.StringVar(&o.glyphs, "glyphs", "", "screen: `auto|ascii|unicode|braille` for drawings (default auto, or $EVENFALL_GLYPHS)")
 	f.StringVar(&o.observer, "observer", "", "screen: `NAME` of who observes (default $EVENFALL_OBSERVER, else asked once)")
 	f.StringVar(&o.tick, "tick", "1s", "screen: the clock goes on every `1s|10s|60s|off`; slower is kinder to a slow link")
-	root.AddCommand(listCommand(w, o), almanacCommand(w, o), showCommand(w, o),
+	root.AddCommand(listCommand(w, o), almanacCommand(w, o), showCommand(w, o), eventsCommand(w, o),
 		checkCommand(w, o), newCommand(w), readCommand(w, o), logCommand(w, o), exportCommand(w, o), importCommand(w, o), versionCommand(w))
 	root.InitDefaultHelpCmd()
 	root.InitDefaultCompletionCmd()

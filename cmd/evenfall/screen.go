@@ -254,7 +254,7 @@ func (s *session) nights() func(astro.Date) (*moment.Night, error) {
 		s.conditions = c
 		clear(kept)
 	}
-	const most = 8
+	const most = 48 // the month ahead that the screen of events may show
 	return func(date astro.Date) (*moment.Night, error) {
 		mu.Lock()
 		defer mu.Unlock()

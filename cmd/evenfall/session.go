@@ -177,7 +177,20 @@ func openSession(w world, o *options) (*session, error) {
 	if err := s.setTime(w, o); err != nil {
 		return nil, err
 	}
-	return s, nil
+	return s, s.setAside(w, o)
+}
+
+// setAside reports the magnitudes that cannot be believed: absurd ones, those
+// of the future, and those given twice.
+func (s *session) setAside(w world, o *options) error {
+	now, err := o.now(w, s.site)
+	if err != nil {
+		return err
+	}
+	kept, aside := table.SetAside(s.magnitudes, now.UTC())
+	s.magnitudes = kept
+	s.report(w, aside)
+	return nil
 }
 
 // readLists reads what the flags name in place of the run's own.
@@ -287,7 +300,7 @@ func (s *session) setTime(w world, o *options) error {
 		return err
 	}
 	if first != last {
-		return usagef("--until goes with almanac; this command looks at one night")
+		return usagef("--until goes with almanac and events; this command looks at one night")
 	}
 	at, err := o.now(w, s.site)
 	if err != nil {

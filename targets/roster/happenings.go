@@ -4,6 +4,7 @@ import (
 	"cmp"
 	"context"
 	"fmt"
+	"maps"
 	"slices"
 
 	"evenfall/astro"
@@ -132,10 +133,15 @@ func (r *Roster) known(n *moment.Night, i int) *moment.Course {
 //
 // Checked: TestWithMagnitudes.
 func (r *Roster) WithMagnitudes(change map[int][]targets.Magnitude) *Roster {
-	n := &Roster{entries: slices.Clone(r.entries), stars: r.stars, search: r.search, byName: r.byName, models: r.models, wants: r.wants,
+	n := &Roster{entries: r.entries, over: maps.Clone(r.over), stars: r.stars, search: r.search, byName: r.byName, models: r.models, wants: r.wants,
 		nights: map[*moment.Night]*nightly{}}
+	if n.over == nil {
+		n.over = map[int]*Entry{}
+	}
 	for i, mags := range change {
-		n.entries[i].Magnitudes = mags
+		e := *r.Entry(i)
+		e.Magnitudes = mags
+		n.over[i] = &e
 	}
 	r.mu.Lock()
 	defer r.mu.Unlock()
@@ -145,11 +151,7 @@ func (r *Roster) WithMagnitudes(change map[int][]targets.Magnitude) *Roster {
 	}
 	for night, k := range r.nights {
 		k.mu.Lock()
-		courses := make(map[int]*moment.Course, len(k.courses))
-		for i, c := range k.courses {
-			courses[i] = c
-		}
-		n.nights[night] = &nightly{courses: courses, sky: k.sky}
+		n.nights[night] = &nightly{courses: maps.Clone(k.courses), sky: k.sky}
 		k.mu.Unlock()
 	}
 	return n

@@ -36,6 +36,7 @@ type Wants func(n *moment.Night, i int, e *Entry) moment.Want
 // With returns another. It is safe for use by several goroutines.
 type Roster struct {
 	entries []Entry
+	over    map[int]*Entry // in place of those, after WithMagnitudes
 	stars   []frame.Star
 	search  []string // lower-case text that filters look into
 	byName  []int32  // rank by name
@@ -91,7 +92,12 @@ func New(entries []Entry, models moment.Models, wants Wants) *Roster {
 func (r *Roster) Len() int { return len(r.entries) }
 
 // Entry returns one target with what is wanted of it.
-func (r *Roster) Entry(i int) *Entry { return &r.entries[i] }
+func (r *Roster) Entry(i int) *Entry {
+	if e, ok := r.over[i]; ok {
+		return e
+	}
+	return &r.entries[i]
+}
 
 // Named tells whether a target bears a name; it looks at all of them.
 func (r *Roster) Named(name string) bool {
@@ -102,7 +108,11 @@ func (r *Roster) Named(name string) bool {
 // With returns a roster with one target more, at its end; what was prepared is
 // kept.
 func (r *Roster) With(e Entry) *Roster {
-	n := New(append(slices.Clone(r.entries), e), r.models, r.wants)
+	list := append(slices.Clone(r.entries), e)
+	for i, o := range r.over {
+		list[i] = *o
+	}
+	n := New(list, r.models, r.wants)
 	r.mu.Lock()
 	defer r.mu.Unlock()
 	copy(n.prepared, r.prepared)
@@ -118,7 +128,7 @@ func (r *Roster) Prepared(i int) *moment.Prepared {
 	if p != nil {
 		return p
 	}
-	made := moment.Prepare(r.entries[i].Target, r.entries[i].Magnitudes, r.models)
+	made := moment.Prepare(r.Entry(i).Target, r.Entry(i).Magnitudes, r.models)
 	r.mu.Lock()
 	defer r.mu.Unlock()
 	if r.prepared[i] == nil {
@@ -143,7 +153,7 @@ func (r *Roster) night(n *moment.Night) *nightly {
 }
 
 // Want returns what a target is wanted with in a night.
-func (r *Roster) Want(n *moment.Night, i int) moment.Want { return r.wants(n, i, &r.entries[i]) }
+func (r *Roster) Want(n *moment.Night, i int) moment.Want { return r.wants(n, i, r.Entry(i)) }
 
 // Course returns a target's night, worked out when first asked for.
 func (r *Roster) Course(n *moment.Night, i int) *moment.Course {

@@ -141,7 +141,7 @@ func Source(t testing.TB, every int) desk.Source {
 		list = append(list, roster.Entry{Target: stars[i], Want: moment.Want{Weight: 1, Level: 0.8}})
 	}
 	return desk.Source{Site: Site, Zone: time.UTC, Level: 0.8, Roster: roster.New(list, moment.NewModels(), nil), Every: time.Second,
-		Look: kit.Numbered(kit.ASCII), Limits: targets.DefaultLimits(), Lives: Lives{},
+		Look: kit.Numbered(kit.ASCII), Limits: targets.DefaultLimits(), Lives: Lives{}, Lights: Lights{},
 		Night: nights()}
 }
 

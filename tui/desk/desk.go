@@ -11,13 +11,10 @@ import (
 	"evenfall/targets"
 	"evenfall/targets/logbook"
 	"evenfall/targets/roster"
-	"evenfall/tui/diagram"
 	"evenfall/tui/entry"
 	"evenfall/tui/help"
 	"evenfall/tui/kit"
 	"evenfall/tui/next"
-	"evenfall/tui/plain"
-	"evenfall/tui/star"
 	"evenfall/tui/weather"
 )
 
@@ -40,7 +37,10 @@ type Desk struct {
 	keyAt      time.Time          // clock's time of the last key
 	anchor     int                // the star that the user selected, also while it is filtered out
 	works      int                // in flight
-	before     asked              // what held before the user's last question
+	under      map[int]underWay   // those of the screens, by number
+	workID     int                // the last number
+	foreseen   foreseen
+	before     asked // what held before the user's last question
 
 	queue     []write // not on the disk yet, the first being written
 	writing   bool
@@ -81,7 +81,7 @@ func (d *Desk) now() asked { return asked{d.filter, d.w.Filter, d.w.Sort, d.w.Sh
 // anchors are the actions after which the star that is selected is the user's
 // own choice, though it was never moved to.
 var anchors = map[kit.Action]bool{
-	kit.OpenStar: true, kit.OpenDiagram: true, kit.MarkStar: true, kit.CopyLines: true, kit.SortList: true, kit.ReverseSort: true, kit.RankAnew: true, kit.BackToNow: true,
+	kit.OpenStar: true, kit.OpenDiagram: true, kit.OpenEvents: true, kit.MarkStar: true, kit.CopyLines: true, kit.SortList: true, kit.ReverseSort: true, kit.RankAnew: true, kit.BackToNow: true,
 	kit.MinuteLess: true, kit.MinuteMore: true, kit.TenLess: true, kit.TenMore: true, kit.HourLess: true, kit.HourMore: true, kit.NightLess: true, kit.NightMore: true,
 }
 
@@ -92,11 +92,11 @@ const idleAfter = time.Minute
 // New opens the desk at a time of the clock.
 func New(src Source, now time.Time) (*Desk, []Task) {
 	d := &Desk{src: src, anchor: -1, entry: entry.New(), weather: weather.New(), screens: []kit.Screen{next.New()}, kept: map[string]string{},
-		drafts: map[string]string{}, takeRow: -1, began: now}
+		drafts: map[string]string{}, under: map[int]underWay{}, takeRow: -1, began: now}
 	d.w = kit.World{Look: src.Look, Site: src.Site, Title: src.Title, Demo: src.Demo, Zone: src.Zone, HandOver: src.HandOver,
 		Band: src.Band, Level: src.Level, Fixed: src.Fixed, Selected: -1, Place: -1, Wall: now, Shown: now, Live: true,
 		Marks: map[int]bool{}, Width: 80, Height: 24, Ticks: src.Every > 0,
-		Book: src.Book, Observer: src.Observer, Requests: src.Requests, Limits: src.Limits, ClockWords: src.ClockWords, Lives: src.Lives}
+		Book: src.Book, Observer: src.Observer, Requests: src.Requests, Limits: src.Limits, ClockWords: src.ClockWords, Lives: src.Lives, Lights: src.Lights, Night: src.Night}
 	if !src.Start.IsZero() {
 		d.w.Shown, d.w.Live = src.Start, false
 	}
@@ -225,6 +225,12 @@ func (d *Desk) common(a kit.Action) ([]Task, bool) {
 		return d.copy(), true
 	case kit.OpenDiagram:
 		d.open(kit.OnDiagram)
+	case kit.OpenEvents:
+		d.open(kit.OnEvents)
+	case kit.EnterMag:
+		d.enterMagnitude()
+	case kit.RemoveMag:
+		d.removeMagnitude()
 	case kit.ShowHelp:
 		d.screens = append(d.screens, help.New(d.up().Title(), d.last))
 	case kit.ChangeTheme:
@@ -261,54 +267,6 @@ func (d *Desk) leave() {
 		}
 	}
 	d.done = true
-}
-
-// open puts a screen of the selected star on top, or goes back to where it is
-// up already, so that going to and fro between two makes no pile of them.
-func (d *Desk) open(title string) {
-	for i, s := range d.screens {
-		if s.Title() == title {
-			d.screens = d.screens[:i+1]
-			return
-		}
-	}
-	switch title {
-	case kit.OnStar:
-		d.screens = append(d.screens, star.New())
-	case kit.OnDiagram:
-		d.screens = append(d.screens, diagram.New())
-	}
-}
-
-func (d *Desk) close() {
-	if len(d.screens) > 1 {
-		d.screens = d.screens[:len(d.screens)-1]
-	}
-}
-
-func (d *Desk) theme() {
-	for i, t := range kit.Themes {
-		if t == d.w.Look.Theme {
-			t = kit.Themes[(i+1)%len(kit.Themes)]
-			d.w.Look = kit.NewLook(t, d.w.Look.Level, d.w.Look.Glyphs)
-			d.say("theme "+string(t), false)
-			return
-		}
-	}
-}
-
-// copy shows the hand-over lines of the selected star plainly and sends them
-// to the clipboard.
-func (d *Desk) copy() []Task {
-	m := d.w.Moment()
-	if m == nil {
-		d.say("no star is selected, or it is still being worked out", false)
-		return nil
-	}
-	lines := d.w.HandOver.Lines(&d.w.Entry().Target, m, d.w.Snap.Roster.Prepared(d.w.Selected).Drift)
-	s := plain.New(lines)
-	d.screens = append(d.screens, s)
-	return d.do(kit.Copy{Text: s.Text()})
 }
 
 // do carries out what a key asked for.

@@ -25,12 +25,6 @@ type listed struct {
 	shown      time.Time
 }
 
-// brought is what another task brings back.
-type brought struct {
-	screen string
-	result kit.Result
-}
-
 // added is a roster with a new target.
 type added struct {
 	base, roster *roster.Roster
@@ -100,6 +94,9 @@ func (d *Desk) Apply(result any) []Task {
 		return d.arrived(r)
 	case brought:
 		d.works--
+		if d.over(r.id) {
+			return nil // its screen was left meanwhile
+		}
 		for i, s := range d.screens {
 			if s.Title() == r.screen {
 				d.screens[i] = s.Apply(&d.w, r.result)
@@ -139,6 +136,8 @@ func (d *Desk) Apply(result any) []Task {
 		return d.written(r)
 	case news:
 		return append(d.heard(r), d.follow()...)
+	case renewed:
+		return d.renewedBy(r)
 	case recalled:
 		d.remember(r)
 	case twice:
@@ -199,6 +198,7 @@ func (d *Desk) idle() bool { return d.w.Wall.Sub(d.keyAt) >= idleAfter }
 // long lists worked out that have come into sight.
 func (d *Desk) follow() []Task {
 	var tasks []Task
+	d.foresee()
 	if s, ok := d.up().(interface {
 		Refresh(*kit.World) (kit.Screen, kit.Job)
 	}); ok {
@@ -225,19 +225,6 @@ func (d *Desk) follow() []Task {
 		}
 		return nil, nil
 	}}))
-}
-
-// work makes the task of a screen's own work.
-func (d *Desk) work(j kit.Work) Task {
-	d.works++
-	screen := d.up().Title()
-	return Task{j.Name, func() any {
-		r, err := j.Run(context.Background())
-		if err != nil {
-			return brought{screen, kit.Failed{Name: j.Name, Err: err}}
-		}
-		return brought{screen, r}
-	}}
 }
 
 // find filters and orders.

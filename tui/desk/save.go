@@ -290,7 +290,7 @@ func (d *Desk) heard(n news) []Task {
 	for _, a := range n.added {
 		tasks = append(tasks, d.add(a.Entry, false))
 	}
-	return tasks
+	return append(tasks, d.renew()...)
 }
 
 // heed takes over the conditions that hold now; where they change what can be

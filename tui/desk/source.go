@@ -60,6 +60,9 @@ type Source struct {
 	// Notices are said once, at the start.
 	Notices []string
 	Look    *kit.Look
+	// Lights is where forecasts over time and dates come from; nil: the
+	// targets' own.
+	Lights kit.Lights
 	// Lives is where the diagram has its figures from; nil: the roster's own
 	// judgement.
 	Lives kit.Lives

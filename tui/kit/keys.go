@@ -67,6 +67,13 @@ const (
 	ZoomIn      Action = "zoom in"
 	ZoomOut     Action = "zoom out"
 	ZoomAll     Action = "zoom to all"
+	OpenEvents  Action = "events"
+	LongerRange Action = "longer range"
+	ShortRange  Action = "shorter range"
+	OnlyCan     Action = "only what can be observed"
+	LightCurve  Action = "light curve"
+	EnterMag    Action = "enter a magnitude"
+	RemoveMag   Action = "remove a magnitude"
 )
 
 // Binding is one row of the table of keys: it makes the handler, the footer,
@@ -92,13 +99,14 @@ const (
 	OnLog     = "log"
 	OnWeather = "conditions"
 	OnDiagram = "diagram"
+	OnEvents  = "events"
 )
 
 var (
-	lists = []string{OnNext, OnStar, OnHelp, OnCopy, OnLog}
-	work  = []string{OnNext, OnStar, OnDiagram, OnLog}
-	stars = []string{OnNext, OnStar, OnDiagram}
-	all   = []string{OnNext, OnStar, OnDiagram, OnHelp, OnCopy, OnLog}
+	lists = []string{OnNext, OnStar, OnEvents, OnHelp, OnCopy, OnLog}
+	work  = []string{OnNext, OnStar, OnDiagram, OnEvents, OnLog}
+	stars = []string{OnNext, OnStar, OnDiagram, OnEvents}
+	all   = []string{OnNext, OnStar, OnDiagram, OnEvents, OnHelp, OnCopy, OnLog}
 )
 
 // Bindings is the table of keys. Every movement has a letter; no key needs
@@ -111,7 +119,10 @@ var Bindings = []Binding{
 	{HalfUp, []string{"u", "pgup"}, "u, page up", "", "half a page up", lists},
 	{First, []string{"g", "home"}, "g, home", "", "to the first line", lists},
 	{Last, []string{"G", "end"}, "G, end", "", "to the last line", lists},
-	{OpenStar, []string{"enter"}, "enter", "star", "look at the selected star closely", []string{OnNext, OnDiagram}},
+	{OpenStar, []string{"enter"}, "enter", "star", "look at the selected star closely", []string{OnNext, OnDiagram, OnEvents}},
+	{LongerRange, []string{"]"}, "]", "[ ] nights", "more nights ahead: 1, 3, 7, 30", []string{OnEvents}},
+	{ShortRange, []string{"["}, "[", "", "fewer nights ahead", []string{OnEvents}},
+	{OnlyCan, []string{"y"}, "y", "only can", "only what can be observed, or everything", []string{OnEvents}},
 	{OtherAxes, []string{"h"}, "h", "axes", "luminosity against temperature, or absolute magnitude against colour", []string{OnDiagram}},
 	{ZoomIn, []string{"+", "="}, "+", "+ - 0 zoom", "twice as large, around the selected star", []string{OnDiagram}},
 	{ZoomOut, []string{"-"}, "-", "", "half as large", []string{OnDiagram}},
@@ -131,16 +142,20 @@ var Bindings = []Binding{
 	{CopyLines, []string{"c"}, "c", "copy", "send the hand-over lines to the clipboard and show them plainly", stars},
 	{NextStar, []string{"."}, ".", ". , stars", "the next star of the list", []string{OnStar, OnDiagram}},
 	{PriorStar, []string{","}, ",", "", "the star before", []string{OnStar, OnDiagram}},
-	{OpenDiagram, []string{"h"}, "h", "HR", "the Hertzsprung-Russell diagram: where in their lives the stars of the list stand", []string{OnNext, OnStar}},
+	{LightCurve, []string{"L"}, "L", "light", "the light curve, measured and forecast, in place of the night's course; high screens show both", []string{OnStar}},
+	{EnterMag, []string{"M"}, "M", "mag", "enter a magnitude measured now: 8.1, or <12.5 for not seen; another band or time behind it", stars},
+	{RemoveMag, []string{"R"}, "R", "", "remove the last magnitude entered for this star, or one by its number; it is kept as void (asks)", stars},
+	{OpenDiagram, []string{"h"}, "h", "HR", "the Hertzsprung-Russell diagram: where in their lives the stars of the list stand", []string{OnNext, OnStar, OnEvents}},
+	{OpenEvents, []string{"E"}, "E", "events", "what happens when: eclipses, maxima and other dated happenings of tonight and the coming nights", []string{OnNext, OnStar, OnDiagram}},
 	{TenLess, []string{"["}, "[", "[ ] time", "10 minutes earlier; the time shown is then one of your own", []string{OnNext, OnStar}},
 	{TenMore, []string{"]"}, "]", "", "10 minutes later", []string{OnNext, OnStar}},
 	{MinuteLess, []string{"-"}, "-", "", "1 minute earlier", []string{OnNext, OnStar}},
 	{MinuteMore, []string{"+", "="}, "+", "", "1 minute later", []string{OnNext, OnStar}},
 	{HourLess, []string{"{"}, "{", "", "1 hour earlier", []string{OnNext, OnStar}},
 	{HourMore, []string{"}"}, "}", "", "1 hour later", []string{OnNext, OnStar}},
-	{NightLess, []string{"<"}, "<", "", "the night before, same time", []string{OnNext, OnStar}},
-	{NightMore, []string{">"}, ">", "", "the night after, same time", []string{OnNext, OnStar}},
-	{BackToNow, []string{"n"}, "n", "", "back to now, and on with the clock", []string{OnNext, OnStar}},
+	{NightLess, []string{"<"}, "<", "", "the night before, same time", []string{OnNext, OnStar, OnEvents}},
+	{NightMore, []string{">"}, ">", "", "the night after, same time", []string{OnNext, OnStar, OnEvents}},
+	{BackToNow, []string{"n"}, "n", "", "back to now, and on with the clock", []string{OnNext, OnStar, OnEvents}},
 	{TakeNow, []string{"T"}, "T", "", "straight to exposing; then t accepts: a take in two keys", work},
 	{FrameDone, []string{"f"}, "f", "", "count a frame by hand", work},
 	{StopEarly, []string{"x"}, "x", "", "stop early: what is done is logged", work},
@@ -155,7 +170,7 @@ var Bindings = []Binding{
 	{BellSwitch, []string{"b"}, "b", "", "bell at the end of an exposure, before events and limits: on, off", work},
 	{ClockOffset, []string{"i"}, "i", "", "how many seconds the instrument's clock is ahead; logged with each take", work},
 	{ChangeTheme, []string{"v"}, "v", "", "theme: dark, red for night vision, plain", all},
-	{ShowHelp, []string{"?"}, "?", "help", "the keys and signs of this screen", []string{OnNext, OnStar, OnDiagram, OnCopy, OnLog}},
+	{ShowHelp, []string{"?"}, "?", "help", "the keys and signs of this screen", []string{OnNext, OnStar, OnDiagram, OnEvents, OnCopy, OnLog}},
 	{Back, []string{"esc", "backspace"}, "esc", "", "dismiss a message, else back; nothing typed is lost", all},
 	{Leave, []string{"q"}, "q", "leave", "leave this screen, from the list the program; asks once (y) if something is half typed", all},
 
@@ -225,7 +240,7 @@ func Footer(screen string, width int) string {
 
 var footers = func() map[string][]string {
 	out := map[string][]string{}
-	for _, screen := range []string{OnNext, OnStar, OnEntry, OnCopy, OnHelp, OnField, OnLog, OnWeather, OnDiagram} {
+	for _, screen := range []string{OnNext, OnStar, OnEntry, OnCopy, OnHelp, OnField, OnLog, OnWeather, OnDiagram, OnEvents} {
 		for _, b := range KeysOn(screen) {
 			switch {
 			case b.Short == "":

@@ -10,6 +10,7 @@ import (
 
 	"evenfall/astro"
 	"evenfall/targets"
+	"evenfall/targets/light"
 	"evenfall/targets/logbook"
 	"evenfall/targets/moment"
 	"evenfall/targets/roster"
@@ -50,6 +51,13 @@ type World struct {
 	Pending    []string // what the disk has not taken yet
 	Silent     bool     // no bell
 	ClockWords string   // whether the clock is kept right
+
+	// Night prepares a night; asked in tasks.
+	Night func(astro.Date) (*moment.Night, error)
+	// Lights is where forecasts and dates come from; nil: the targets' own.
+	Lights Lights
+	// Coming is what the selected target does next, from the moment shown on.
+	Coming []light.Event
 
 	Lives Lives // judgements and lines of lives, for the diagram; nil: the roster's own
 	Ticks bool  // the clock goes on by itself, not only with keys

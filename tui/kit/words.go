@@ -115,6 +115,14 @@ var shortestReasons = map[targets.Code]string{
 	targets.CodeMoon: "by Moon", targets.CodeWindow: "not ours",
 }
 
+// ReasonShort is a limit in at most ten columns.
+func ReasonShort(c targets.Code) string {
+	if w, ok := shortestReasons[c]; ok {
+		return w
+	}
+	return ShortReason(c)
+}
+
 // BlockedShort is BlockedWord in twenty columns.
 func BlockedShort(m *moment.Moment) string {
 	reason := FirstReason(m)
@@ -156,6 +164,18 @@ func Left(d time.Duration) string {
 		rest = "0" + rest
 	}
 	return strconv.Itoa(minutes/60) + "h" + rest
+}
+
+// Until writes how long it is until something: minutes under an hour, hours
+// and minutes under two days, then days; "past" for what was.
+func Until(d time.Duration) string {
+	switch {
+	case d < -30*time.Second:
+		return "past"
+	case d < 48*time.Hour:
+		return Left(max(d, 0))
+	}
+	return strconv.Itoa(int(math.Round(d.Hours()/24))) + " d"
 }
 
 // Duration writes seconds in the unit that suits them.

@@ -3,6 +3,7 @@ package next
 import (
 	"fmt"
 	"strings"
+	"time"
 
 	"evenfall/targets"
 	"evenfall/targets/light"
@@ -32,7 +33,18 @@ func reasons(w *kit.World, p *kit.Pen, lines int) {
 		p.Put(kit.Text, place) // never half a coordinate
 	}
 	p.Put(kit.Warn, flags(w, m)).Line()
-	for _, clauses := range [][]string{why(w, m), whatItIs(m), brightness(m)} {
+	// the next happening stands beside what the star is, where nothing is said
+	// twice
+	is, later := whatItIs(m), coming(w)
+	if len(later) > 0 && lines <= 3 {
+		is, later = append([]string{is[0], later[0]}, is[1:]...), nil
+		if len(is[0])+2+len(is[1]) > p.Width() {
+			is = []string{is[1], stageOf(m)}
+		}
+	} else if len(later) > 0 {
+		is, later = append([]string{later[0]}, is...), later[1:]
+	}
+	for _, clauses := range [][]string{why(w, m), is, brightness(m)} {
 		room := lines - (p.Lines() - from)
 		if room <= 0 {
 			return
@@ -48,7 +60,7 @@ func reasons(w *kit.World, p *kit.Pen, lines int) {
 	if p.Lines()-from >= lines {
 		return
 	}
-	for _, text := range append(warnings(w, m), events(w)...) {
+	for _, text := range append(warnings(w, m), later...) {
 		for _, line := range short(text, p.Width(), lines-(p.Lines()-from)) {
 			p.Put(kit.Text, line).Line()
 		}
@@ -193,12 +205,18 @@ func blocked(m *moment.Moment) []string {
 	return out
 }
 
-// whatItIs gives the likeliest stage and what speaks for it.
-func whatItIs(m *moment.Moment) []string {
+// stageOf is the likeliest stage with its probability.
+func stageOf(m *moment.Moment) string {
 	text := strings.Join(strings.Fields(kit.StageWord(&m.Stage)), " ")
 	if strings.ContainsAny(text, "0123456789") {
 		text += " %"
 	}
+	return text
+}
+
+// whatItIs gives the likeliest stage and what speaks for it.
+func whatItIs(m *moment.Moment) []string {
+	text := stageOf(m)
 	var out []string
 	for i, e := range m.Stage.Evidence {
 		if i == 0 {
@@ -246,11 +264,24 @@ func warnings(w *kit.World, m *moment.Moment) []string {
 	return out
 }
 
-// events dates the next eclipse or maximum.
-func events(w *kit.World) []string {
+// coming dates what the star does next, with a countdown, the soonest first.
+func coming(w *kit.World) []string {
 	var out []string
-	for _, e := range w.Snap.Roster.Prepared(w.Selected).Light.Next(w.Snap.Scene.Instant) {
-		out = append(out, fmt.Sprintf("next %s %s UTC, +- %s (%s)", e.Kind, e.At.UTC().Format("2006-01-02 15:04"), kit.Duration(e.SigmaS), e.Status))
+	for i := range w.Coming {
+		e := &w.Coming[i]
+		left := e.At.Sub(w.Snap.Scene.Instant)
+		layout := "2006-01-02 15:04 UTC"
+		switch {
+		case !(e.SigmaS < 86400):
+			layout = "2 Jan"
+		case left < 20*time.Hour:
+			layout = "15:04"
+		}
+		text := fmt.Sprintf("%s in %s, %s +- %s", e.Kind, kit.Until(left), e.At.UTC().Round(time.Minute).Format(layout), kit.Duration(e.SigmaS))
+		if e.Status != light.EventGood {
+			text += ", " + e.Status
+		}
+		out = append(out, text)
 	}
 	return out
 }

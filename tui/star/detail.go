@@ -10,6 +10,7 @@ import (
 
 	"evenfall/astro"
 	"evenfall/targets"
+	"evenfall/targets/light"
 	"evenfall/targets/moment"
 	"evenfall/targets/stage"
 	"evenfall/targets/table"
@@ -78,10 +79,10 @@ func (w *writer) dim(format string, a ...any) {
 }
 
 // known writes down everything known of a star, what decides first.
-func known(sc *moment.Scene, p *moment.Prepared, m *moment.Moment, st *stage.Study) ([]Line, error) {
+func known(sc *moment.Scene, p *moment.Prepared, m *moment.Moment, st *stage.Study, next []light.Event) ([]Line, error) {
 	var w writer
 	w.stage(m, st)
-	w.light(p, m)
+	w.light(next, m)
 	w.madeOf(st)
 	w.missing(m)
 	w.night(m)
@@ -162,7 +163,7 @@ func (w *writer) madeOf(st *stage.Study) {
 	}
 }
 
-func (w *writer) light(p *moment.Prepared, m *moment.Moment) {
+func (w *writer) light(next []light.Event, m *moment.Moment) {
 	f := &m.Expect
 	w.head("what you will see")
 	w.say("%s  (%.0f %% interval, brighter end first)", strings.TrimSpace(kit.ExpectWord(f)), 100*f.Level)
@@ -180,8 +181,13 @@ func (w *writer) light(p *moment.Prepared, m *moment.Moment) {
 	if f.Basis != "" {
 		w.dim("basis: %s", f.Basis)
 	}
-	for _, e := range p.Light.Next(m.At) {
-		w.say("next %s %s UTC, +- %s (%s)", e.Kind, e.At.UTC().Round(time.Second).Format("2006-01-02 15:04:05"), kit.Duration(e.SigmaS), e.Status)
+	for _, e := range next {
+		text := fmt.Sprintf("next %s %s UTC, in %s, +- %s (%s)", e.Kind, e.At.UTC().Round(time.Second).Format("2006-01-02 15:04:05"),
+			kit.Until(e.At.Sub(m.At)), kit.Duration(e.SigmaS), e.Status)
+		if e.Words != "" {
+			text += "; " + e.Words
+		}
+		w.say("%s", text)
 	}
 }
 

@@ -97,7 +97,7 @@ func (s Screen) Refresh(w *kit.World) (kit.Screen, kit.Job) {
 		s.detail = nil
 	}
 	s.asked = want
-	r, row, handOver := w.Snap.Roster, w.Selected, w.HandOver
+	r, row, handOver, lights := w.Snap.Roster, w.Selected, w.HandOver, kit.LightsOf(w)
 	return s, kit.Work{Name: "looking at " + w.Entry().Target.Name, Run: func(ctx context.Context) (kit.Result, error) {
 		m := r.Moment(&sc, row)
 		p := r.Prepared(row)
@@ -106,7 +106,7 @@ func (s Screen) Refresh(w *kit.World) (kit.Screen, kit.Job) {
 		d.Curve = moment.Curve(sc.Night, p, kit.Stretch(sc.Night))
 		var err error
 		st := r.Study(row)
-		d.Known, err = known(&sc, p, &m, &st)
+		d.Known, err = known(&sc, p, &m, &st, lights.Next(p, m.At))
 		return d, err
 	}}
 }
