@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"strconv"
+	"strings"
 	"time"
 
 	"evenfall/targets"
@@ -18,12 +19,14 @@ type layout struct {
 }
 
 func layoutOf(width, height int) layout {
-	l := layout{header: 2, lead: 2, heading: 1, detail: 3}
+	l := layout{header: 2, lead: 3, heading: 1, detail: 3}
 	switch {
 	case height < 12:
 		l.header, l.lead, l.detail = 1, 1, 1
-	case height < 18:
-		l.lead, l.detail = 1, 2
+	case height < 16:
+		l.lead, l.detail = 1, 1
+	case height < 20:
+		l.lead, l.detail = 2, 2
 	}
 	l.header = min(l.header, height)
 	l.lead = min(l.lead, height-l.header)
@@ -164,9 +167,10 @@ func (s Screen) lead(w *kit.World, p *kit.Pen, lines int) {
 	if lines > 1 && can > next {
 		leadLine(w, p, "next that can be observed: ", s.at(can), kit.Good)
 	}
-	for p.Lines()-from < lines {
+	if p.Lines()-from < lines {
 		p.Put(kit.Dim, s.about()).Line()
 	}
+	p.Fill(from + lines)
 }
 
 // about says how much is listed.
@@ -190,13 +194,31 @@ func (s Screen) about() string {
 
 func leadLine(w *kit.World, p *kit.Pen, what string, h *roster.Happening, role kit.Role) {
 	p.Put(role, what+h.Kind+" of "+name(w, h)+" in "+kit.Until(h.At.UTC().Sub(w.Shown)))
-	text := ", " + stamp(h, h.At.UTC()) + " UTC +- " + sigma(h.SigmaS)
+	last := ""
 	if h.Placed && h.Can {
-		text += fmt.Sprintf(", %.0f deg up", h.Apparent.Deg())
+		last = fmt.Sprintf(", %.0f deg up", h.Apparent.Deg())
 	} else if h.Placed {
-		text += ", " + canWord(h)
+		last = ", " + canWord(h)
 	}
-	p.Put(kit.Text, text).Line()
+	when := stamp(h, h.At.UTC())
+	if h.SigmaS < 86400 && h.At.UTC().Sub(w.Shown) < 20*time.Hour { // no other day can be meant
+		when = when[strings.LastIndexByte(when, ' ')+1:]
+	}
+	for _, piece := range []string{", " + when + " UTC", " +- " + sigma(h.SigmaS), last} {
+		if !whole(p, kit.Text, piece) {
+			break
+		}
+	}
+	p.Line()
+}
+
+// whole writes a piece where it fits on the line; never half a time.
+func whole(p *kit.Pen, role kit.Role, text string) bool {
+	if p.Used()+len(text) > p.Width() {
+		return false
+	}
+	p.Put(role, text)
+	return true
 }
 
 func name(w *kit.World, h *roster.Happening) string {
@@ -336,7 +358,12 @@ func (s Screen) detail(w *kit.World, p *kit.Pen, place, lines int) {
 	default:
 		p.Put(kit.Good, "  in "+left)
 	}
-	p.Put(kit.Text, "  "+t.Format("2006 ")+stamp(h, t)+" UTC  +- "+sigma(h.SigmaS)+"  "+h.Status).Line()
+	for _, piece := range []string{"  " + stamp(h, t) + " UTC", "  +- " + sigma(h.SigmaS), "  " + h.Status} {
+		if !whole(p, kit.Text, piece) {
+			break
+		}
+	}
+	p.Line()
 	if lines < 2 {
 		return
 	}

@@ -178,6 +178,18 @@ func Until(d time.Duration) string {
 	return strconv.Itoa(int(math.Round(d.Hours()/24))) + " d"
 }
 
+// Stamp writes a time as finely as it is known, by its sigma in seconds: the
+// date alone, to the minute, or to the second.
+func Stamp(t time.Time, sigmaS float64) string {
+	switch {
+	case !(sigmaS < 86400):
+		return t.Format("2006-01-02")
+	case sigmaS > 1800:
+		return t.Round(time.Minute).Format("2006-01-02 15:04 UTC")
+	}
+	return t.Round(time.Second).Format("2006-01-02 15:04:05 UTC")
+}
+
 // Duration writes seconds in the unit that suits them.
 func Duration(s float64) string {
 	switch {

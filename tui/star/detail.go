@@ -182,7 +182,7 @@ func (w *writer) light(next []light.Event, m *moment.Moment) {
 		w.dim("basis: %s", f.Basis)
 	}
 	for _, e := range next {
-		text := fmt.Sprintf("next %s %s UTC, in %s, +- %s (%s)", e.Kind, e.At.UTC().Round(time.Second).Format("2006-01-02 15:04:05"),
+		text := fmt.Sprintf("next %s %s, in %s, +- %s (%s)", e.Kind, kit.Stamp(e.At.UTC(), e.SigmaS),
 			kit.Until(e.At.Sub(m.At)), kit.Duration(e.SigmaS), e.Status)
 		if e.Words != "" {
 			text += "; " + e.Words

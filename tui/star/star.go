@@ -16,6 +16,10 @@ type Screen struct {
 	detail *Detail // nil: not worked out yet
 	asked  key
 	top    int // first line shown of what is known
+
+	light      bool   // the light curve stands in place of the night's course
+	chart      *chart // nil: not drawn yet
+	askedChart chartKey
 }
 
 // New returns the screen, empty.
@@ -40,17 +44,35 @@ func (s Screen) Prompt(*kit.World, *kit.Pen) bool { return false }
 
 // Key obeys a key.
 func (s Screen) Key(w *kit.World, press string) (kit.Screen, kit.Job) {
-	page := max(layoutOf(w.Width, w.Body(), s.detail).doc/2, 1)
+	page := max(s.layout(w.Width, w.Body()).doc/2, 1)
 	do := kit.Lookup(kit.OnStar, press)
 	switch do {
 	case kit.NextStar:
 		return s.other(w, 1)
 	case kit.PriorStar:
 		return s.other(w, -1)
+	case kit.LightCurve:
+		return s.toggle(w)
 	}
 	s.top = kit.Scroll(do, s.top, page)
 	s.top = s.clamp(w.Width, w.Body())
 	return s, nil
+}
+
+// toggle shows the light curve in place of the night's course, and back.
+func (s Screen) toggle(w *kit.World) (kit.Screen, kit.Job) {
+	switch {
+	case w.Body() >= tall:
+		return s, kit.Say{Text: "the screen is high enough for both"}
+	case w.Body() < leastForChart || w.Width < leastForLabels:
+		return s, kit.Say{Text: "the screen is too small for a light curve"}
+	}
+	s.light = !s.light
+	s.top = s.clamp(w.Width, w.Body())
+	if s.light {
+		return s, kit.Say{Text: "the light curve; L: the night's course"}
+	}
+	return s, kit.Say{Text: "the night's course; L: the light curve"}
 }
 
 // other goes to the star before or after in the list.
@@ -70,7 +92,7 @@ func (s Screen) clamp(width, height int) int {
 	if s.detail == nil {
 		return 0
 	}
-	l := layoutOf(width, height, s.detail)
+	l := s.layout(width, height)
 	return max(min(s.top, len(s.detail.document(width))-l.doc), 0)
 }
 
@@ -91,6 +113,9 @@ func (s Screen) Refresh(w *kit.World) (kit.Screen, kit.Job) {
 	sc := w.Snap.Scene
 	want := key{w.Selected, sc.Instant.UTC().Truncate(time.Minute), w.Snap.Roster, true}
 	if want == s.asked {
+		if job := s.redraw(w); job != nil {
+			return s, job
+		}
 		return s, nil
 	}
 	if want.row != s.asked.row {
@@ -119,8 +144,12 @@ func (s Screen) Apply(w *kit.World, r kit.Result) kit.Screen {
 			s.detail = r
 			s.top = s.clamp(w.Width, w.Body())
 		}
+	case *chart:
+		if r.key == s.askedChart {
+			s.chart = r
+		}
 	case kit.Failed:
-		s.asked = key{}
+		s.asked, s.askedChart = key{}, chartKey{}
 	}
 	return s
 }

@@ -10,24 +10,37 @@ import (
 )
 
 // layout is how the lines are shared out.
-type layout struct{ header, curve, doc int }
+type layout struct{ header, curve, chart, doc int }
 
 const (
 	labels     = 6 // columns left of the lanes
 	lanesBelow = 4 // take, sun, moon, hours
 )
 
-// layoutOf gives the drawing a third of a high screen, and none of a low one.
-func layoutOf(width, height int, d *Detail) layout {
+// The least heights and widths of a screen for what is drawn.
+const (
+	tall           = 50 // the night's course and the light curve
+	leastForChart  = 14
+	leastForLabels = 40
+	leastChart     = chartAxis + chartWords + 2 // lines of it
+)
+
+// layout gives the drawing a third of a high screen, and none of a low one;
+// the light curve half of it.
+func (s Screen) layout(width, height int) layout {
 	l := layout{header: 2}
 	if height < 12 {
 		l.header = 1
 	}
 	rest := height - l.header
-	if d != nil {
-		rest -= len(handOver(d, width)) + 1
+	if s.detail != nil {
+		rest -= len(handOver(s.detail, width)) + 1
 	}
 	switch {
+	case height >= tall:
+		l.curve, l.chart = 9, 18
+	case s.light && height >= leastForChart:
+		l.chart = height * 12 / 20
 	case height >= 46:
 		l.curve = 16
 	case height >= 34:
@@ -35,10 +48,16 @@ func layoutOf(width, height int, d *Detail) layout {
 	case height >= 20:
 		l.curve = 5
 	}
+	if l.curve > 0 && l.curve+lanesBelow > rest { // long hand-over lines
+		l.curve = 0
+	}
 	if l.curve > 0 {
 		rest -= l.curve + lanesBelow
 	}
-	l.doc = max(rest, 0)
+	if l.chart = min(l.chart, rest); l.chart < leastChart {
+		l.chart = 0
+	}
+	l.doc = max(rest-l.chart, 0)
 	return l
 }
 
@@ -58,7 +77,7 @@ func (s Screen) View(w *kit.World, width, height int) string {
 	if d != nil && d.Row != w.Selected {
 		d = nil
 	}
-	l := layoutOf(width, height, d)
+	l := s.layout(width, height)
 	kit.Header(w, p, l.header)
 	switch {
 	case w.Entry() == nil:
@@ -89,6 +108,9 @@ func (s Screen) draw(w *kit.World, p *kit.Pen, l layout, d *Detail, height int) 
 	}
 	if l.curve > 0 {
 		lanes(p, d, l.curve)
+	}
+	if l.chart > 0 {
+		s.lightCurve(w, p, l)
 	}
 	doc := d.document(p.Width())
 	top := s.clamp(p.Width(), height)
