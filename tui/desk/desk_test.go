@@ -527,7 +527,8 @@ func BenchmarkView(b *testing.B) {
 		keys []string
 		w, h int
 	}{{"next/80x24", nil, 80, 24}, {"next/200x60", nil, 200, 60}, {"star/80x24", []string{"enter"}, 80, 24}, {"entry/80x24", []string{"a", "x"}, 80, 24}, {"help/80x24", []string{"?"}, 80, 24},
-		{"diagram/80x24", []string{"j", "h"}, 80, 24}, {"diagram/200x60", []string{"j", "h"}, 200, 60}} {
+		{"diagram/80x24", []string{"j", "h"}, 80, 24}, {"diagram/200x60", []string{"j", "h"}, 200, 60},
+		{"events/80x24", []string{"E", "]", "]"}, 80, 24}, {"events/200x60", []string{"E", "]", "]"}, 200, 60}, {"light/80x24", []string{"enter", "L"}, 80, 24}, {"light/200x60", []string{"enter"}, 200, 60}} {
 		b.Run(s.name, func(b *testing.B) {
 			src := check.Source(b, 1)
 			src.Look = kit.NewLook(kit.DarkTheme, kit.Colours256, kit.Braille)

@@ -194,7 +194,7 @@ func TestMagnitude(t *testing.T) {
 }
 
 // Without a log nothing is taken; what the disk refuses stays and is tried
-// again; another session's magnitudes are heeded.
+// again.
 func TestMagnitudeTrouble(t *testing.T) {
 	src := check.Source(t, 5)
 	check.New(t, src, 80, 24).Press("M").See("there is no log here").Press("esc", "R").See("no magnitude of")

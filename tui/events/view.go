@@ -255,6 +255,8 @@ func canWord(h *roster.Happening) string {
 		return "can"
 	case h.Code == targets.CodeDaylight:
 		return "daylight"
+	case h.Code == targets.CodeInstrument:
+		return "unmounted"
 	}
 	return kit.ReasonShort(h.Code)
 }

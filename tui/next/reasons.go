@@ -35,7 +35,7 @@ func reasons(w *kit.World, p *kit.Pen, lines int) {
 	p.Put(kit.Warn, flags(w, m)).Line()
 	// the next happening stands beside what the star is, where nothing is said
 	// twice
-	is, later := whatItIs(m), coming(w)
+	is, later := whatItIs(m), coming(w, lines > 3)
 	if len(later) > 0 && lines <= 3 {
 		is, later = append([]string{is[0], later[0]}, is[1:]...), nil
 		if len(is[0])+2+len(is[1]) > p.Width() {
@@ -264,11 +264,15 @@ func warnings(w *kit.World, m *moment.Moment) []string {
 	return out
 }
 
-// coming dates what the star does next, with a countdown, the soonest first.
-func coming(w *kit.World) []string {
+// coming dates what the star does next, with a countdown, the soonest first;
+// expired dates where there is room for what says nothing.
+func coming(w *kit.World, expired bool) []string {
 	var out []string
 	for i := range w.Coming {
 		e := &w.Coming[i]
+		if e.Status == light.EventExpired && !expired {
+			continue
+		}
 		left := e.At.Sub(w.Snap.Scene.Instant)
 		layout := "2006-01-02 15:04 UTC"
 		switch {

@@ -12,7 +12,6 @@ import (
 	"evenfall/targets"
 	"evenfall/targets/light"
 	"evenfall/targets/moment"
-	"evenfall/targets/table"
 	"evenfall/tui/kit"
 )
 
@@ -92,7 +91,7 @@ func makeChart(ctx context.Context, key chartKey, row int, from kit.Lights) (*ch
 		return c, ctx.Err()
 	}
 	c.draw(&b, list, marks, tonight, band)
-	c.explain(marks, other, first[0].Level, b.ascii)
+	c.explain(marks, other, &first[0], b.ascii)
 	return c, nil
 }
 
@@ -191,8 +190,11 @@ func (c *chart) draw(b *sheet, list []light.Forecast, marks []mark, tonight astr
 		return
 	}
 	c.labels(b)
-	b.c.Text(1, 0, kit.Dim, string(band)+", mag")
-	now := b.col(0)
+	now, title := b.col(0), string(band)+", mag"
+	left := 1
+	if now <= len(title)+1 {
+		left = now + 2
+	}
 	for r := range b.rows {
 		b.c.Text(now, r, kit.Dim, "|")
 	}
@@ -201,6 +203,7 @@ func (c *chart) draw(b *sheet, list []light.Forecast, marks []mark, tonight astr
 	} else {
 		b.lines(list, now)
 	}
+	b.c.Text(left, 0, kit.Dim, title)
 	for _, m := range marks {
 		b.c.Text(b.col(m.days), b.row(m.mag), m.ink, string(m.sign))
 	}
@@ -319,7 +322,7 @@ func (c *chart) axis(b *sheet, tonight astro.Instant, now int) {
 }
 
 // explain writes what the signs mean, those that occur.
-func (c *chart) explain(marks []mark, other int, level float64, ascii bool) {
+func (c *chart) explain(marks []mark, other int, f *light.Forecast, ascii bool) {
 	words := map[byte]string{signSeen: "measured", signLimit: "fainter than", signUnlikely: "unlikely, kept", signAside: "set aside"}
 	say := func(s string) { c.legend = append(c.legend, s) }
 	for _, sign := range []byte{signSeen, signLimit, signUnlikely, signAside} {
@@ -330,10 +333,15 @@ func (c *chart) explain(marks []mark, other int, level float64, ascii bool) {
 			}
 		}
 	}
-	if c.raster != nil && ascii {
-		say(fmt.Sprintf("= median, . %.0f %%", 100*level))
-	} else if c.raster != nil {
-		say(fmt.Sprintf("line median, dots %.0f %%", 100*level))
+	line, band := "line median, ", "dots"
+	if ascii {
+		line, band = "= median, ", "."
+	}
+	if math.IsNaN(median(f)) {
+		line = "" // the phase is unknown
+	}
+	if c.raster != nil {
+		say(fmt.Sprintf("%s%s %.0f %%", line, band, 100*f.Level))
 	}
 	if other > 0 {
 		say(fmt.Sprintf("%d in other bands", other))
@@ -348,7 +356,7 @@ func (s *Screen) wanted(w *kit.World) (chartKey, bool) {
 	if w.Moment() == nil || s.detail == nil {
 		return chartKey{}, false
 	}
-	l := s.layout(w.Width, w.Body())
+	l := s.full(w.Width, w.Body())
 	if l.chart == 0 {
 		return chartKey{}, false
 	}
@@ -356,9 +364,6 @@ func (s *Screen) wanted(w *kit.World) (chartKey, bool) {
 	n := w.Snap.Scene.Night
 	want := w.Snap.Roster.Want(n, w.Selected)
 	ask := light.Ask{Band: want.Band, Level: want.Level}
-	if want.Mode != nil && want.Mode.Band != "" && want.Band == "" && table.KnownBand(want.Mode.Band) {
-		ask.Band = want.Mode.Band
-	}
 	return chartKey{w.Snap.Roster.Prepared(w.Selected), n, ask, cols, rows, w.Look}, cols >= 10 && rows >= 2
 }
 

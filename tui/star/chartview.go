@@ -26,20 +26,21 @@ func (l layout) plot(width int) (cols, rows int) {
 // lightCurve draws the chart, and beside or below it why the forecast is what
 // it is.
 func (s Screen) lightCurve(w *kit.World, p *kit.Pen, l layout) {
-	cols, rows := l.plot(p.Width())
+	full := s.full(p.Width(), w.Body())
+	cols, rows := full.plot(p.Width())
 	from := p.Lines()
 	c := s.chart
-	switch {
-	case c == nil || c.row != w.Selected || c.key.cols != cols || c.key.rows != rows:
-		p.To(chartLabels+1).Put(kit.Dim, "drawing the light curve ...").Line()
-		p.Fill(from + l.chart)
-		return
-	case c.raster == nil:
+	if c != nil && c.raster == nil && c.row == w.Selected {
 		for _, line := range kit.Wrap("no light curve: "+c.basis, p.Width()-chartLabels, 2) {
 			if p.Lines() < from+l.chart {
 				p.To(chartLabels).Put(kit.Dim, line).Line()
 			}
 		}
+		p.Fill(from + l.chart)
+		return
+	}
+	if c == nil || c.row != w.Selected || c.key.cols != cols || c.key.rows != rows {
+		p.To(chartLabels+1).Put(kit.Dim, "drawing the light curve ...").Line()
 		p.Fill(from + l.chart)
 		return
 	}

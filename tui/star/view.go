@@ -25,9 +25,22 @@ const (
 	leastChart     = chartAxis + chartWords + 2 // lines of it
 )
 
-// layout gives the drawing a third of a high screen, and none of a low one;
-// the light curve half of it.
+// bare is how many lines a light curve takes of which there is nothing to draw.
+const bare = 2
+
+// layout shares the lines out as they are shown.
 func (s Screen) layout(width, height int) layout {
+	l := s.full(width, height)
+	if c := s.chart; l.chart > bare && c != nil && c.raster == nil && c.key == s.askedChart {
+		l.doc += l.chart - bare
+		l.chart = bare
+	}
+	return l
+}
+
+// full gives the drawing a third of a high screen, and none of a low one; the
+// light curve half of it.
+func (s Screen) full(width, height int) layout {
 	l := layout{header: 2}
 	if height < 12 {
 		l.header = 1
