@@ -140,7 +140,7 @@ func (d *Desk) Rings() bool {
 // eventsOf lists the eclipses of a target; maxima are no matter of minutes.
 func (d *Desk) eventsOf(row int, at astro.Instant) []light.Event {
 	var out []light.Event
-	for _, e := range d.src.Roster.Prepared(row).Light.Next(at) {
+	for _, e := range kit.LightsOf(&d.w).Next(d.src.Roster.Prepared(row), at) {
 		if e.Kind == "eclipse" {
 			out = append(out, e)
 		}

@@ -60,7 +60,7 @@ var signs = []string{
 	"Mn: degrees from the Moon   Sun, Moon above the list: altitude in degrees (d), how much of the Moon is lit; left and the loop: h hours, m minutes",
 	"night strip: s Sun up, c civil, n nautical, a astronomical twilight, . dark, m dark with the Moon up, | the moment shown, figures: hours UTC",
 	"star: = should, - can be taken, b best; the curve is its airmass, 1 at the top",
-	"light curve: o measured, v fainter than, ? the forecast gave it less than 0.1 (kept all the same), x set aside, | ^ tonight; then the forecast: = or a line its median, dots its interval; brighter is up",
+	"light curve: o measured, v fainter than, ? V the forecast gave it less than 0.1 (kept all the same), x set aside, | ^ tonight; then the forecast: = or a line its median, dots its interval; brighter is up",
 	"events: +- one sigma, X: airmass; observe: can, or what forbids it at that instant; status: assumed where an error of the elements had to be, expired where it is uncertain by over a tenth of the period, past",
 	"diagram: m main sequence, s subgiant, g red giant, c clump, h horizontal branch, e t early and pulsing AGB, p past it, n k nebula and kernel,",
 	"  b subdwarf, w white dwarf, r massive, a accretes, ? undecided; a capital: several; [ ] the selected star with 68 % bars, +3: three more in its cell; the track follows when you rest on it",

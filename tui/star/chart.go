@@ -54,7 +54,7 @@ type mark struct {
 
 // The signs of measured magnitudes.
 const (
-	signSeen, signLimit, signUnlikely, signAside = 'o', 'v', '?', 'x'
+	signSeen, signLimit, signUnlikely, signDoubted, signAside = 'o', 'v', '?', 'V', 'x'
 )
 
 // makeChart works out and draws a light curve.
@@ -74,7 +74,7 @@ func makeChart(ctx context.Context, key chartKey, row int, from kit.Lights) (*ch
 		band = key.ask.Band
 	}
 	c.basis = first[0].Basis
-	c.head = tonight.UTC().Format("tonight, 2 Jan 2006, ") + strings.Join(strings.Fields(kit.ExpectWord(&first[0])), " ")
+	c.head = key.night.Date.Midnight().Format("tonight, 2 Jan 2006, ") + strings.Join(strings.Fields(kit.ExpectWord(&first[0])), " ")
 	marks, other := marksOf(from.Past(key.p), band, tonight)
 	back := float64(leastBack)
 	for _, m := range marks {
@@ -112,6 +112,8 @@ func marksOf(list []light.Seen, band targets.Band, tonight astro.Instant) (marks
 		switch {
 		case !s.Used:
 			m.sign, m.ink = signAside, kit.Dim
+		case s.Limit && s.Unlikely:
+			m.sign, m.ink = signDoubted, kit.Warn
 		case s.Limit:
 			m.sign, m.ink = signLimit, kit.Text
 		case s.Unlikely:
@@ -323,9 +325,9 @@ func (c *chart) axis(b *sheet, tonight astro.Instant, now int) {
 
 // explain writes what the signs mean, those that occur.
 func (c *chart) explain(marks []mark, other int, f *light.Forecast, ascii bool) {
-	words := map[byte]string{signSeen: "measured", signLimit: "fainter than", signUnlikely: "unlikely, kept", signAside: "set aside"}
+	words := map[byte]string{signSeen: "measured", signLimit: "fainter than", signUnlikely: "unlikely, kept", signDoubted: "unlikely limit", signAside: "set aside"}
 	say := func(s string) { c.legend = append(c.legend, s) }
-	for _, sign := range []byte{signSeen, signLimit, signUnlikely, signAside} {
+	for _, sign := range []byte{signSeen, signLimit, signUnlikely, signDoubted, signAside} {
 		for _, m := range marks {
 			if m.sign == sign {
 				say(string(sign) + " " + words[sign])
