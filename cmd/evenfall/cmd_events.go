@@ -243,7 +243,7 @@ func (d *dated) text(out io.Writer, width int) error {
 		}
 		utc, here, alt, air, can := d.row(h)
 		line := fmt.Sprintf("%-8s %s%-13s %-10s %6s %5s %5s %-17s %s", utc, local(here), kit.Cut(d.targets[h.Row].Name, 13), kit.Cut(h.Kind, 10), sigma(h.SigmaS), alt, air, can, h.Status)
-		if h.Words != "" && (width == 0 || len(line)+2+len(h.Words) <= width) {
+		if h.Words != "" && len(line)+2+len(h.Words) <= width {
 			line += "  " + h.Words
 		}
 		fmt.Fprintln(&b, strings.TrimRight(line, " "))
