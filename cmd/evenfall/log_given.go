@@ -159,7 +159,7 @@ func (x *writing) preparedFor(g *given, e *logbook.Entry) (*moment.Prepared, err
 	}
 	if i, err := table.Match(x.targets, e.Target); err == nil {
 		e.Target = x.targets[i].Name
-		p := moment.Prepare(x.targets[i], x.magnitudesByTarget()[i], moment.NewModels())
+		p := moment.Prepare(x.targets[i], x.magnitudesByTarget()[i], x.newModels(x.o))
 		return &p, nil
 	} else if g.ra == "" || g.dec == "" {
 		return nil, usagef("--target %s: %s; give --ra and --dec for one that the run does not know", quote(e.Target), strings.TrimPrefix(err.Error(), "table: "))
@@ -170,6 +170,6 @@ func (x *writing) preparedFor(g *given, e *logbook.Entry) (*moment.Prepared, err
 			return nil, usagef("--ra %s --dec %s: %s", quote(g.ra), quote(g.dec), p.Text)
 		}
 	}
-	p := moment.Prepare(t, nil, moment.NewModels())
+	p := moment.Prepare(t, nil, x.newModels(x.o))
 	return &p, nil
 }

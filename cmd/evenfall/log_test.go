@@ -39,7 +39,7 @@ func runFolder(t *testing.T) string {
 func called(t *testing.T, args ...string) (int, string, string) {
 	t.Helper()
 	var out, errs bytes.Buffer
-	w := world{in: strings.NewReader(""), out: &out, err: &errs, clock: clock.Fixed{At: time.Date(2026, 12, 2, 7, 0, 0, 0, time.UTC)}}
+	w := world{in: strings.NewReader(""), out: &out, err: &errs, clock: clock.Fixed{At: time.Date(2026, 12, 2, 7, 0, 0, 0, time.UTC)}, models: sharedModels}
 	status := execute(w, args)
 	return status, out.String(), errs.String()
 }

@@ -14,6 +14,8 @@ import (
 	_ "evenfall/tui/early" // before anything asks the terminal
 
 	"evenfall/astro/clock"
+	"evenfall/targets"
+	"evenfall/targets/moment"
 	"evenfall/tui/term"
 )
 
@@ -40,12 +42,13 @@ type world struct {
 	in       io.Reader
 	out, err io.Writer
 	clock    clock.Clock
-	width    int  // columns of the terminal; 0: output is no terminal
+	width    int // columns of the terminal; 0: output is no terminal
+	models   func(targets.Population) moment.Models
 	terminal bool // both input and output are a terminal
 }
 
 func main() {
-	w := world{in: os.Stdin, out: os.Stdout, err: os.Stderr, clock: clock.System{}}
+	w := world{in: os.Stdin, out: os.Stdout, err: os.Stderr, clock: clock.System{}, models: moment.NewModelsFor}
 	w.width, w.terminal = terminalSize()
 	os.Exit(execute(w, os.Args[1:]))
 }

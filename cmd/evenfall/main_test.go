@@ -7,15 +7,28 @@ import (
 	"os"
 	"path/filepath"
 	"strings"
+	"sync"
 	"testing"
 	"time"
 	"unicode"
 
 	"evenfall/astro/check"
 	"evenfall/astro/clock"
+	"evenfall/targets"
+	"evenfall/targets/moment"
 )
 
 var fixed = clock.Fixed{At: time.Date(2026, 12, 2, 4, 0, 0, 0, time.UTC)}
+
+// fieldModels are made once for all calls; those of other populations anew.
+var fieldModels = sync.OnceValue(moment.NewModels)
+
+func sharedModels(p targets.Population) moment.Models {
+	if p == targets.PopulationField {
+		return fieldModels()
+	}
+	return moment.NewModelsFor(p)
+}
 
 // result is what a call printed and how it ended.
 type result struct {
@@ -26,7 +39,7 @@ type result struct {
 // call runs the program in this process.
 func call(stdin string, args ...string) result {
 	var out, err bytes.Buffer
-	w := world{in: strings.NewReader(stdin), out: &out, err: &err, clock: fixed}
+	w := world{in: strings.NewReader(stdin), out: &out, err: &err, clock: fixed, models: sharedModels}
 	code := execute(w, args)
 	return result{out.String(), err.String(), code}
 }
@@ -238,7 +251,7 @@ func TestListSorted(t *testing.T) {
 func TestWidth(t *testing.T) {
 	for _, width := range []int{80, 120, 200} {
 		var out bytes.Buffer
-		w := world{in: strings.NewReader(""), out: &out, err: &bytes.Buffer{}, clock: fixed, width: width}
+		w := world{in: strings.NewReader(""), out: &out, err: &bytes.Buffer{}, clock: fixed, width: width, models: sharedModels}
 		if code := execute(w, at("list")); code != 0 {
 			t.Fatalf("exit %d", code)
 		}

@@ -145,6 +145,7 @@ type session struct {
 	moments    []moment.Moment
 	order      []int
 	models     moment.Models
+	makes      func(targets.Population) moment.Models
 }
 
 // openSession reads everything a call needs and works out every target's
@@ -154,7 +155,7 @@ func openSession(w world, o *options) (*session, error) {
 	if err != nil {
 		return nil, err
 	}
-	s := &session{siteChoice: site, limits: targets.DefaultLimits()}
+	s := &session{siteChoice: site, limits: targets.DefaultLimits(), makes: w.models}
 	if site.run != nil {
 		s.limits = site.run.Config.Limits
 		s.targets, s.requests, s.magnitudes = site.run.Targets, site.run.Requests, site.run.Magnitudes
@@ -357,7 +358,7 @@ func (s *session) newModels(o *options) moment.Models {
 	if o.population != "" {
 		p = targets.Population(o.population)
 	}
-	return moment.NewModelsFor(p)
+	return s.makes(p)
 }
 
 // compute prepares the targets and works out each one's moment.

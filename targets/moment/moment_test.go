@@ -3,6 +3,7 @@ package moment
 import (
 	"math"
 	"slices"
+	"sync"
 	"testing"
 	"time"
 
@@ -15,6 +16,9 @@ import (
 	"evenfall/targets"
 	"evenfall/targets/light"
 )
+
+// sharedModels are made once for all tests of the package.
+var sharedModels = sync.OnceValue(NewModels)
 
 // Every field of a moment is what its own package says.
 func TestOfAgreesWithParts(t *testing.T) {
@@ -83,7 +87,7 @@ func TestBuiltinAgainstPlain(t *testing.T) {
 func TestOfMissingData(t *testing.T) {
 	n := testNight(t, targets.DefaultLimits())
 	bare := targets.Target{Name: "bare", Kind: targets.WD, Place: targets.Place{RA: astro.Deg(80), Dec: astro.Deg(-40), EpochJyr: 2000}}
-	p := Prepare(bare, nil, NewModels())
+	p := Prepare(bare, nil, sharedModels())
 	c := Tonight(n, &p, Want{})
 	s := NewScene(n, testInstant(t, "2026-12-02T04:00:00Z"))
 	m := Of(&s, &p, &c, Want{})

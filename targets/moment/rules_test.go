@@ -145,7 +145,7 @@ func TestHandOver(t *testing.T) {
 func TestSteps(t *testing.T) {
 	n, stars := testNight(t, targets.DefaultLimits()), testStars(t)
 	s := NewScene(n, testInstant(t, "2026-12-02T04:00:00Z"))
-	models := NewModels()
+	models := sharedModels()
 	for i := range stars {
 		c := Tonight(n, &stars[i], Want{})
 		m := Of(&s, &stars[i], &c, Want{})

@@ -1,6 +1,7 @@
 package reckon
 
 import (
+	"sync"
 	"testing"
 	"time"
 
@@ -12,6 +13,9 @@ import (
 	"evenfall/targets/logbook"
 	"evenfall/targets/moment"
 )
+
+// sharedModels are made once for all tests of the package.
+var sharedModels = sync.OnceValue(moment.NewModels)
 
 // Every figure is that of moment.Of at the instant it is for.
 func TestFill(t *testing.T) {
@@ -25,7 +29,7 @@ func TestFill(t *testing.T) {
 	}
 	start := time.Date(2026, 12, 2, 3, 0, 0, 0, time.UTC)
 	for i := 0; i < len(stars); i += 17 {
-		p := moment.Prepare(stars[i], nil, moment.NewModels())
+		p := moment.Prepare(stars[i], nil, sharedModels())
 		e := logbook.Entry{Type: "science", Target: stars[i].Name, Start: start, End: start.Add(40 * time.Minute)}
 		if err := Fill(&e, &p, Sky{site, night}); err != nil {
 			t.Fatal(err)
@@ -66,7 +70,7 @@ func TestFill(t *testing.T) {
 	}
 	e.Start = time.Date(1700, 1, 1, 0, 0, 0, 0, time.UTC)
 	e.End = time.Time{}
-	p := moment.Prepare(stars[0], nil, moment.NewModels())
+	p := moment.Prepare(stars[0], nil, sharedModels())
 	if err := Fill(&e, &p, Sky{site, night}); err == nil {
 		t.Error("the year 1700 is reckoned with")
 	}

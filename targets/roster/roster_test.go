@@ -7,6 +7,7 @@ import (
 	"math/rand"
 	"slices"
 	"strings"
+	"sync"
 	"testing"
 	"time"
 
@@ -18,6 +19,9 @@ import (
 	"evenfall/targets/moment"
 	"evenfall/targets/sweep"
 )
+
+// sharedModels are made once for all tests of the package.
+var sharedModels = sync.OnceValue(moment.NewModels)
 
 var site = astro.Site{Lat: astro.Deg(-29.26), Lon: astro.Deg(-70.73), HeightM: 2400, Air: astro.DefaultWeather(2400)}
 
@@ -48,7 +52,7 @@ func builtinRoster(t testing.TB) *Roster {
 	for _, s := range stars {
 		list = append(list, Entry{Target: s, Want: moment.Want{Weight: 1, Level: 0.8}})
 	}
-	return New(list, moment.NewModels(), nil)
+	return New(list, sharedModels(), nil)
 }
 
 // many makes a list of random white dwarfs all over the sky.
@@ -61,7 +65,7 @@ func many(n int) *Roster {
 				PMRA: targets.Known(100 * r.NormFloat64()), PMDec: targets.Known(100 * r.NormFloat64())},
 			Mags: map[targets.Band]targets.Measure{"G": targets.Known(12 + 8*r.Float64())}}}
 	}
-	return New(list, moment.NewModels(), nil)
+	return New(list, sharedModels(), nil)
 }
 
 func TestSnapshotRanks(t *testing.T) {

@@ -24,6 +24,9 @@ import (
 	"evenfall/tui/kit"
 )
 
+// models are made once for all tests of a package.
+var models = sync.OnceValue(moment.NewModels)
+
 // Grid is what a terminal shows.
 type Grid struct {
 	*vt.Emulator
@@ -140,7 +143,7 @@ func Source(t testing.TB, every int) desk.Source {
 	for i := 0; i < len(stars); i += every {
 		list = append(list, roster.Entry{Target: stars[i], Want: moment.Want{Weight: 1, Level: 0.8}})
 	}
-	return desk.Source{Site: Site, Zone: time.UTC, Level: 0.8, Roster: roster.New(list, moment.NewModels(), nil), Every: time.Second,
+	return desk.Source{Site: Site, Zone: time.UTC, Level: 0.8, Roster: roster.New(list, models(), nil), Every: time.Second,
 		Look: kit.Numbered(kit.ASCII), Limits: targets.DefaultLimits(), Lives: Lives{}, Lights: Lights{},
 		Night: nights()}
 }

@@ -8,6 +8,7 @@ import (
 	"os"
 	"path/filepath"
 	"strings"
+	"sync"
 	"testing"
 	"time"
 
@@ -18,6 +19,9 @@ import (
 	"evenfall/tui/check"
 	"evenfall/tui/kit"
 )
+
+// sharedModels are made once for all tests of the package.
+var sharedModels = sync.OnceValue(moment.NewModels)
 
 var update = flag.Bool("update", false, "write the golden screens anew; read them afterwards")
 
@@ -469,7 +473,7 @@ func TestLongList(t *testing.T) {
 		e.Target.Name = fmt.Sprint(e.Target.Name, " ", i)
 		list = append(list, e)
 	}
-	src.Roster = roster.New(list, moment.NewModels(), nil)
+	src.Roster = roster.New(list, sharedModels(), nil)
 	src.Every = 20 * time.Second
 	d := check.New(t, src, 80, 24)
 	d.See("1/3200").Press("s", "b").See("filter to 3000 or fewer first").Press("esc").Not("filter to").Not("order best")

@@ -6,7 +6,6 @@ import (
 	"testing"
 	"time"
 
-	"evenfall/targets/moment"
 	"evenfall/targets/roster"
 	"evenfall/tui/check"
 )
@@ -53,7 +52,7 @@ func TestDiagramLong(t *testing.T) {
 		e.Target.Name = fmt.Sprint(e.Target.Name, " ", i)
 		list = append(list, e)
 	}
-	src.Roster = roster.New(list, moment.NewModels(), nil)
+	src.Roster = roster.New(list, sharedModels(), nil)
 	d := check.New(t, src, 120, 40)
 	d.Press("h").See("the first 5000 of 6000", "[")
 	d.Press("esc", "G", "h").See("the first 5000 of 6000", "[").Press("left").See("[")

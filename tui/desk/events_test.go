@@ -64,7 +64,7 @@ func TestEventsLong(t *testing.T) {
 		e.Target.Name = fmt.Sprint(e.Target.Name, " ", i)
 		list = append(list, e)
 	}
-	src.Roster = roster.New(list, moment.NewModels(), nil)
+	src.Roster = roster.New(list, sharedModels(), nil)
 	d := check.New(t, src, 80, 24)
 	d.Press("E").See("3500 targets are too many to date", "filter the list first")
 	d.Press("j", "y", "]", "esc", "/").Type("kind=interacting").Press("enter", "E").See("next: eclipse")

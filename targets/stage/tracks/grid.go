@@ -75,18 +75,16 @@ func NewGrid(r Recipe) (*Grid, error) {
 	if !r.valid() {
 		return nil, ErrRecipe
 	}
-	s := newSower(&r)
-	for node := range r.FeH {
-		if err := s.node(node); err != nil {
-			return nil, err
-		}
+	all, total, err := sowAll(&r)
+	if err != nil {
+		return nil, err
 	}
-	g := &Grid{recipe: r, total: s.total}
+	g := &Grid{recipe: r, total: total}
 	g.shares = map[targets.Stage]float64{}
-	for i := range s.all {
-		g.shares[stages[s.all[i].code]] += s.all[i].w / g.total
+	for i := range all {
+		g.shares[stages[all[i].code]] += all[i].w / g.total
 	}
-	fine := s.all
+	fine := all
 	for _, size := range [][2]int{{1, 1}, {4, 1}, {16, 1}} {
 		fine = merge(fine, size[0], size[1])
 		g.levels = append(g.levels, newLevel(fine, size[0], size[1]))
@@ -94,6 +92,27 @@ func NewGrid(r Recipe) (*Grid, error) {
 		g.levels = append(g.levels, newLevel(tall, size[0], 4))
 	}
 	return g, nil
+}
+
+// sowAll follows the stars of all metallicities, each on its own, and puts them
+// together in order, so that the grid is the same whoever is first.
+func sowAll(r *Recipe) (all []seed, total float64, err error) {
+	var wait sync.WaitGroup
+	sowers, errs := make([]*sower, len(r.FeH)), make([]error, len(r.FeH))
+	for node := range r.FeH {
+		wait.Go(func() {
+			sowers[node] = newSower(r)
+			errs[node] = sowers[node].node(node)
+		})
+	}
+	wait.Wait()
+	for node, s := range sowers {
+		if errs[node] != nil {
+			return nil, 0, errs[node]
+		}
+		all, total = append(all, s.all...), total+s.total
+	}
+	return all, total, nil
 }
 
 // Lazily returns a function that makes the grid when first called, and returns
@@ -130,7 +149,7 @@ type sower struct {
 }
 
 func newSower(r *Recipe) *sower {
-	s := &sower{r: r, where: make([]int32, codes*cellsT*cellsL), all: make([]seed, 0, 150000)}
+	s := &sower{r: r, where: make([]int32, codes*cellsT*cellsL), all: make([]seed, 0, 30000)}
 	for p := Phase(0); p < phases; p++ {
 		for i, code := range stages {
 			if code == p.Stage(1) {
