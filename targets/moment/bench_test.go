@@ -1,6 +1,7 @@
 package moment
 
 import (
+	"sync"
 	"testing"
 	"time"
 
@@ -38,17 +39,21 @@ func testInstant(t testing.TB, s string) astro.Instant {
 
 func testStars(t testing.TB) []Prepared {
 	t.Helper()
+	return preparedStars()
+}
+
+// preparedStars are the built-in stars, made once; nobody changes them.
+var preparedStars = sync.OnceValue(func() []Prepared {
 	stars, err := builtin.Stars()
 	if err != nil {
-		t.Fatal(err)
+		panic(err)
 	}
-	models := NewModels()
 	out := make([]Prepared, len(stars))
 	for i := range stars {
-		out[i] = Prepare(stars[i], nil, models)
+		out[i] = Prepare(stars[i], nil, sharedModels())
 	}
 	return out
-}
+})
 
 func BenchmarkPrepare(b *testing.B) {
 	stars, err := builtin.Stars()

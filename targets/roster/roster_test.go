@@ -44,16 +44,21 @@ func scene(t testing.TB, utc string) moment.Scene {
 
 func builtinRoster(t testing.TB) *Roster {
 	t.Helper()
+	return builtinOnce()
+}
+
+// builtinOnce is the built-in list, made once; a roster never changes.
+var builtinOnce = sync.OnceValue(func() *Roster {
 	stars, err := builtin.Stars()
 	if err != nil {
-		t.Fatal(err)
+		panic(err)
 	}
 	var list []Entry
 	for _, s := range stars {
 		list = append(list, Entry{Target: s, Want: moment.Want{Weight: 1, Level: 0.8}})
 	}
 	return New(list, sharedModels(), nil)
-}
+})
 
 // many makes a list of random white dwarfs all over the sky.
 func many(n int) *Roster {
