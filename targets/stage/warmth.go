@@ -74,7 +74,7 @@ func (s *sight) temperatureOf(t *targets.Target) (factor, bool) {
 // Present masses of stages that the tracks give none for, Msun, with their
 // spread; common practice, no source.
 var stageMass = map[targets.Stage][2]float64{
-	targets.SDB: {0.47, 0.05}, targets.HB: {0.60, 0.08}, targets.PAGB: {0.60, 0.1}, targets.CSPN: {0.60, 0.1}, targets.Dwarf: {0.6, 0.15},
+	targets.SDB: {0.47, 0.05}, targets.HB: {0.60, 0.08}, targets.PAGB: {0.60, 0.1}, targets.CSPN: {0.60, 0.1}, targets.Dwarf: {0.6, 0.2},
 	targets.RC: {1.3, 0.5}, targets.RGB: {1.2, 0.4}, targets.EAGB: {1.2, 0.5}, targets.TPAGB: {1.2, 0.6}, targets.SG: {1.2, 0.3},
 }
 
@@ -103,11 +103,10 @@ func (s *sight) gravityHere() (factor, bool) {
 		off, sd := s.gravityOff(code)
 		f.weight[code] = math.Max(math.Exp(-off*off/sd/sd/2), math.Exp(-8))
 	}
-	for _, code := range []targets.Stage{targets.MS, targets.ACC, targets.Neb} {
-		off, sd := s.gravityOff(code)
-		f.weight[code] = math.Max(math.Exp(-off*off/sd/sd/2), math.Exp(-8))
-	}
+	off, sd := s.gravityOff(targets.MS)
+	f.weight[targets.MS] = math.Max(math.Exp(-off*off/sd/sd/2), math.Exp(-8))
 	f.weight[targets.RSG] = f.weight[targets.RC] // the mass of one may be anything
+	f.weight[targets.ACC], f.weight[targets.Neb] = f.weight[targets.Dwarf], f.weight[targets.CSPN]
 	return f, true
 }
 
