@@ -140,6 +140,9 @@ type Conditions struct {
 	CloudTo     Measure // from through to, eastward
 	WindFromDeg Measure
 	WindMS      Measure
+	Seeing      Measure // arcsec
+	Extinction  Measure // of thin cloud on top of the air, mag
+	Hazy        bool    // said not to be photometric
 }
 
 // Code names a limit or a reason in the words of the JSON contract.

@@ -146,6 +146,7 @@ type session struct {
 	order      []int
 	models     moment.Models
 	makes      func(targets.Population) moment.Models
+	goals      goals
 }
 
 // openSession reads everything a call needs and works out every target's
@@ -331,7 +332,7 @@ func (s *session) setTime(w world, o *options) error {
 func (s *session) nightOf(date astro.Date) (*moment.Night, error) {
 	n, err := moment.NewNight(s.site, date, s.limits, s.conditions)
 	if err == nil && s.run != nil {
-		n.Sky = s.skySite(n.Sky)
+		n.Sky, n.Seeing = s.skySite(n.Sky), s.run.Config.Sky.SeeingArcsec
 		n.Allocated = s.run.Config.AllocatedOn(n.Span, date)
 	}
 	return n, err

@@ -2,9 +2,13 @@ package main
 
 import (
 	"slices"
+	"strings"
+	"sync"
 
 	"evenfall/astro"
 	"evenfall/targets"
+	"evenfall/targets/exposure"
+	"evenfall/targets/instrument"
 	"evenfall/targets/moment"
 	"evenfall/targets/table"
 )
@@ -61,19 +65,66 @@ func (s *session) want(o *options, wishes map[int]wish, date astro.Date, i int, 
 		return w
 	}
 	night, listed := s.run.Config.NightOn(date)
-	request, ok := s.run.Config.DefaultRequest(kind, night.Instruments...)
-	if asked.request != nil {
-		request, ok = *asked.request, true
+	request := asked.request
+	if request == nil {
+		request = s.defaultOf(kind, night.Instruments)
 	}
-	if !ok {
+	if request == nil {
 		return w
 	}
 	if w.Instrument, ok = s.run.Config.Instrument(request.Instrument); !ok {
 		return w
 	}
 	w.Mode, _ = w.Instrument.Mode(request.Mode)
+	w.Goal, w.Request = s.goalOf(request, w.Instrument)
 	if listed && len(night.Instruments) > 0 && !slices.Contains(night.Instruments, w.Instrument.Name) {
 		w.NotMounted = w.Instrument.Name
 	}
 	return w
+}
+
+// goals keeps what many targets share: the default request of each kind and
+// what every request wants of an exposure. Safe for several goroutines.
+type goals struct {
+	mu       sync.Mutex
+	defaults map[string]*targets.Request
+	goals    map[*targets.Request]*exposure.Goal
+}
+
+// defaultOf is the default request of a kind with what is mounted; nil: none.
+func (s *session) defaultOf(kind targets.Kind, mounted []string) *targets.Request {
+	g := &s.goals
+	g.mu.Lock()
+	defer g.mu.Unlock()
+	key := strings.Join(append([]string{string(kind)}, mounted...), "\x00")
+	q, ok := g.defaults[key]
+	if !ok {
+		if r, found := s.run.Config.DefaultRequest(kind, mounted...); found {
+			q = &r
+		}
+		if g.defaults == nil {
+			g.defaults = map[string]*targets.Request{}
+		}
+		g.defaults[key] = q
+	}
+	return q
+}
+
+// goalOf reads what a request wants of an exposure; nil where it cannot be read,
+// which reading the request has reported.
+func (s *session) goalOf(q *targets.Request, i *instrument.Instrument) (*exposure.Goal, *targets.Request) {
+	g := &s.goals
+	g.mu.Lock()
+	defer g.mu.Unlock()
+	goal, ok := g.goals[q]
+	if !ok {
+		if read, err := exposure.GoalOf(q, i.Kind); err == nil {
+			goal = &read
+		}
+		if g.goals == nil {
+			g.goals = map[*targets.Request]*exposure.Goal{}
+		}
+		g.goals[q] = goal
+	}
+	return goal, q
 }

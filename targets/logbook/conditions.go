@@ -244,5 +244,6 @@ func (c *Conditions) Warnings(l *targets.Limits) []string {
 
 // Of returns what the rest of the program computes with.
 func (c *Conditions) Of() targets.Conditions {
-	return targets.Conditions{Closed: c.Dome == "closed", WindFromDeg: c.WindFrom, WindMS: c.WindMS, CloudFrom: c.CloudFrom, CloudTo: c.CloudTo}
+	return targets.Conditions{Closed: c.Dome == "closed", WindFromDeg: c.WindFrom, WindMS: c.WindMS, CloudFrom: c.CloudFrom, CloudTo: c.CloudTo,
+		Seeing: c.Seeing, Extinction: c.Extinction, Hazy: c.Photometric == "no"}
 }

@@ -8,6 +8,7 @@ import (
 	"evenfall/astro/air"
 	"evenfall/astro/frame"
 	"evenfall/targets"
+	"evenfall/targets/exposure"
 	"evenfall/targets/instrument"
 )
 
@@ -19,6 +20,11 @@ type Want struct {
 	Mode       *instrument.Mode       // nil: none
 	Weight     float64                // of the target's request, 1 by default
 	NotMounted string                 // the instrument wanted is not on the telescope tonight: its name
+	// Goal is what is wanted of an exposure, nil: none is worked out. How fast a
+	// series must be and the level are filled in for each target. Request is what
+	// it was read from; its limits on sky and air hold. Many targets share both.
+	Goal    *exposure.Goal
+	Request *targets.Request
 }
 
 // limit is one limit and the times tonight at which it is kept.
@@ -32,6 +38,7 @@ type limit struct {
 type Course struct {
 	Can, Should   []astro.Span
 	Best          *astro.Instant // nil: no window tonight
+	BestS         float64        // exposure then, by the clock; 0: least airmass decided
 	BestAirmass   astro.Airmass
 	BestAltitude  astro.Angle // refracted
 	Transit       *astro.Instant
@@ -41,6 +48,7 @@ type Course struct {
 	SetAside      []targets.Code // limits that close the whole night by themselves
 	ClosedAllOver bool           // no window tonight
 	NotMounted    string         // as wanted
+	asked         *targets.Request
 }
 
 // Tonight works out a target's night.
@@ -48,10 +56,12 @@ type Course struct {
 // Notes:
 //  1. Every edge is exact to a second: limits on refracted altitude are turned
 //     into airless ones, sampled every 10 minutes and closed in on.
-//  2. Best is the moment of least airmass in the wished-for windows, or, where
-//     there are none, in the possible ones; the earlier of equals.
+//  2. Best is the moment of least exposure time in the wished-for windows, or,
+//     where there are none, in the possible ones, to the nodes of the night; the
+//     earlier of equals. Without an exposure, or where its time is given, it is
+//     that of least airmass.
 //
-// Checked: TestWindowsDense, TestBest.
+// Checked: TestWindowsDense, TestBest, TestBestByExposure.
 func Tonight(n *Night, p *Prepared, w Want) Course {
 	t := tracker{night: n, star: &p.Star, limits: limitsOf(n, w)}
 	t.edges = n.edges
@@ -59,20 +69,21 @@ func Tonight(n *Night, p *Prepared, w Want) Course {
 		t.edges = findEdges(t.limits, n.Site.Air)
 	}
 	t.track()
-	c := Course{Limits: t.limits}
-	sunAt := DefaultSunAltitude
-	if w.Mode != nil && w.Mode.MaxSunAltitudeOK {
-		sunAt = w.Mode.MaxSunAltitude
-	}
-	c.limits = t.hard(sunAt)
+	c := Course{Limits: t.limits, asked: w.Request}
+	c.limits = t.hard(w.sunAt())
 	if w.NotMounted != "" {
 		c.NotMounted = w.NotMounted
 		c.limits = append(c.limits, limit{targets.CodeInstrument, nil})
 	}
+	c.limits = append(c.limits, t.asked(w)...)
 	c.wished = t.wish()
 	c.Can = []astro.Span{n.Span}
 	for _, l := range c.limits {
 		c.Can = astro.Intersect(c.Can, l.kept)
+	}
+	costs := costing{tracker: &t, p: p, w: w}
+	costs.work(&c)
+	for _, l := range c.limits {
 		if len(l.kept) == 0 {
 			c.SetAside = append(c.SetAside, l.code)
 		}
@@ -83,7 +94,9 @@ func Tonight(n *Night, p *Prepared, w Want) Course {
 	}
 	c.ClosedAllOver = len(c.Can) == 0
 	c.Transit = t.transit()
-	t.best(&c)
+	if !costs.best(&c) {
+		t.best(&c)
+	}
 	return c
 }
 
@@ -93,6 +106,14 @@ func limitsOf(n *Night, w Want) targets.Limits {
 		return w.Instrument.Limits
 	}
 	return n.Limits
+}
+
+// sunAt is how high the Sun may stand.
+func (w *Want) sunAt() astro.Angle {
+	if w.Mode != nil && w.Mode.MaxSunAltitudeOK {
+		return w.Mode.MaxSunAltitude
+	}
+	return DefaultSunAltitude
 }
 
 // tracker follows one star through a night.
@@ -142,10 +163,6 @@ const siderealDay = time.Duration(86164.0905 * 1e9)
 
 // best finds the moment of least airmass in the windows.
 func (t *tracker) best(c *Course) {
-	windows := c.Should
-	if len(windows) == 0 {
-		windows = c.Can
-	}
 	highest := math.Inf(-1)
 	try := func(at astro.Instant) {
 		p := t.place(at)
@@ -157,7 +174,7 @@ func (t *tracker) best(c *Course) {
 			c.BestAltitude = air.Refract(p.Alt, t.night.Site.Air)
 		}
 	}
-	for _, w := range windows {
+	for _, w := range c.windows() {
 		last := w.Until.Add(-time.Millisecond)
 		try(w.From)
 		if c.Transit != nil {
@@ -174,6 +191,14 @@ func (t *tracker) best(c *Course) {
 			c.BestAirmass = m
 		}
 	}
+}
+
+// windows are those that the best moment is sought in.
+func (c *Course) windows() []astro.Span {
+	if len(c.Should) > 0 {
+		return c.Should
+	}
+	return c.Can
 }
 
 // Window returns the window to speak of at an instant: the one that holds it,

@@ -9,6 +9,7 @@ import (
 	"evenfall/astro/air"
 	"evenfall/astro/frame"
 	"evenfall/targets"
+	"evenfall/targets/exposure"
 	"evenfall/targets/light"
 	"evenfall/targets/stage"
 )
@@ -30,7 +31,12 @@ type Moment struct {
 
 	Stage  stage.Verdict
 	Expect light.Forecast
-	Sky    SkyNow // behind the target, in the band wanted
+	Sky    SkyNow // behind the target, in the band wanted, else that of the mode
+	// Exposure is what is booked in the mode wanted; ExposureOK: there is one.
+	// ExposureWhy says why there is none, "" where none is wanted.
+	Exposure    exposure.Answer
+	ExposureOK  bool
+	ExposureWhy string
 
 	Course    Course
 	Window    astro.Span // the window spoken of, see Course.Window
@@ -72,7 +78,7 @@ type Block struct {
 //  1. Same arguments, same answer: no clock, file, random number or package
 //     variable is read.
 //
-// Checked: TestOfAgreesWithParts, TestOfMissingData, BenchmarkOf.
+// Checked: TestOfAgreesWithParts, TestOfMissingData, TestExposureAgrees, BenchmarkOf.
 func Of(s *Scene, p *Prepared, c *Course, w Want) Moment {
 	m := Moment{At: s.Instant, Course: *c, Stage: p.Verdict, Weight: w.Weight}
 	m.Place = s.Frame.Horizontal(&p.Star)
@@ -90,8 +96,9 @@ func Of(s *Scene, p *Prepared, c *Course, w Want) Moment {
 	if m.Barycentric.Coarse {
 		m.Why = append(m.Why, "date outside 2010 to 2053: barycentric times to 0.1 s, Sun to 36 arcsec")
 	}
-	m.Sky = s.SkyAt(&m.Place, w.Band)
+	m.Sky = s.SkyAt(&m.Place, w.skyBand())
 	m.Expect = p.Light.At(s.Instant, light.Ask{Band: w.Band, Level: w.Level})
+	m.expose(s, p, w)
 	m.windows(s, c)
 	m.Why = append(m.Why, missing(s, p)...)
 	return m

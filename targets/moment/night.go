@@ -18,6 +18,7 @@ const nodeStep = 10 * time.Minute
 
 // node is the sky at one of those instants.
 type node struct {
+	index     int
 	at        astro.Instant
 	frame     frame.Frame
 	sun, moon ephem.Body
@@ -30,10 +31,15 @@ type Night struct {
 	Limits     targets.Limits
 	Conditions targets.Conditions
 	Sky        *skyglow.Site // dark sky, air, lamps; a dark site of that height unless set
+	Seeing     float64       // at the zenith, 500 nm, arcsec, unless the conditions say otherwise; 0: 1
 	Allocated  []astro.Span  // when the telescope is ours; nil: the whole night
 
 	nodes []node
 	edges edges
+	skies struct {
+		once sync.Once
+		at   []*skyglow.Sky // at the nodes; nil: none
+	}
 
 	mu       sync.Mutex
 	sunBelow map[float64][]astro.Span // by threshold, degrees
@@ -63,7 +69,7 @@ func NewNight(site astro.Site, date astro.Date, limits targets.Limits, condition
 	for i := 0; i <= count; i++ {
 		t := e.Span.From.Add(time.Duration(i) * nodeStep)
 		f := frame.At(site, t)
-		n.nodes = append(n.nodes, node{t, f, ephem.Sun(&f), ephem.Moon(&f)})
+		n.nodes = append(n.nodes, node{i, t, f, ephem.Sun(&f), ephem.Moon(&f)})
 	}
 	n.edges = findEdges(limits, site.Air)
 	return n, nil

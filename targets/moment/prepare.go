@@ -12,6 +12,7 @@ import (
 	"evenfall/astro"
 	"evenfall/astro/frame"
 	"evenfall/targets"
+	"evenfall/targets/exposure"
 	"evenfall/targets/light"
 	"evenfall/targets/stage"
 )
@@ -37,6 +38,7 @@ type Prepared struct {
 	Verdict stage.Verdict
 	Light   *light.State
 	Drift   Drift
+	Colours map[targets.Band]float64 // for the shape of its spectrum; nil: nothing is listed
 }
 
 // Drift says how uncertain the position is because the motion is not known.
@@ -64,7 +66,7 @@ var typicalMotionWD = astro.Arcsec(0.25)
 //     its magnitudes are the same. The state of its brightness is found again by
 //     its content, with all that was worked out from it.
 func Prepare(t targets.Target, mags []targets.Magnitude, m Models) Prepared {
-	p := Prepared{Target: t, Star: StarOf(&t), Verdict: m.Stage.Judge(t)}
+	p := Prepared{Target: t, Star: StarOf(&t), Verdict: m.Stage.Judge(t), Colours: exposure.ColoursOf(&t)}
 	if m.States != nil {
 		p.Light = m.States.State(t, p.Verdict, mags)
 	} else {

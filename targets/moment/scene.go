@@ -28,7 +28,7 @@ func NewScene(n *Night, t astro.Instant) Scene {
 		Night: n, Instant: t, Frame: f, Sun: sun, Moon: moon,
 		Phase: ephem.MoonPhase(moon, sun), Part: partOf(sun.Place.Alt),
 	}
-	s.makeSky()
+	s.Sky = makeSky(n.Sky, sun, moon)
 	return s
 }
 

@@ -4,6 +4,7 @@ import (
 	"math"
 
 	"evenfall/astro"
+	"evenfall/astro/ephem"
 	"evenfall/astro/frame"
 	"evenfall/astro/skyglow"
 	"evenfall/targets"
@@ -42,15 +43,25 @@ func defaultSky(site astro.Site) *skyglow.Site {
 }
 
 // makeSky makes the sky of an instant; nil where there is none to be had.
-func (s *Scene) makeSky() {
-	if s.Night.Sky == nil {
-		return
+func makeSky(site *skyglow.Site, sun, moon ephem.Body) *skyglow.Sky {
+	if site == nil {
+		return nil
 	}
-	sky, err := skyglow.NewSky(skyglow.Scene{Site: s.Night.Sky, Sun: skyglow.Direction{Dir: s.Sun.Dir, Alt: s.Sun.Place.Alt},
-		Moon: skyglow.Direction{Dir: s.Moon.Dir, Alt: s.Moon.Place.Alt}, MoonPhase: s.Phase.Angle, MoonDistKm: s.Moon.DistanceKm})
-	if err == nil {
-		s.Sky = sky
+	sky, err := skyglow.NewSky(skyglow.Scene{Site: site, Sun: skyglow.Direction{Dir: sun.Dir, Alt: sun.Place.Alt},
+		Moon: skyglow.Direction{Dir: moon.Dir, Alt: moon.Place.Alt}, MoonPhase: ephem.MoonPhase(moon, sun).Angle, MoonDistKm: moon.DistanceKm})
+	if err != nil {
+		return nil
 	}
+	return sky
+}
+
+// skyName is the band that the sky behind a band is told in; nebulae's lines
+// have the sky of V.
+func skyName(band targets.Band) targets.Band {
+	if band == "" || lineBand(band) {
+		return SkyBand
+	}
+	return band
 }
 
 // SkyAt returns how bright the sky is at a place in a band; nebulae's lines
@@ -59,10 +70,7 @@ func (s *Scene) makeSky() {
 // Notes:
 //  1. Below the horizon there is none; nor close to the Sun.
 func (s *Scene) SkyAt(p *frame.Place, band targets.Band) SkyNow {
-	name := band
-	if name == "" || lineBand(name) {
-		name = SkyBand
-	}
+	name := skyName(band)
 	out := SkyNow{Band: name, MoonCost: 1}
 	b, ok := skyglow.BandOf(string(name))
 	switch {

@@ -13,7 +13,7 @@ type Step struct{ What, Formula, Inputs, Result, Source string }
 
 // Steps returns the workings of a moment's figures, in the order in which one
 // leads to the next; those of the study of what the target is come before its
-// brightness.
+// brightness, those of its exposure after it.
 //
 // Checked: TestSteps: each has all five parts, and the results are those of
 // the moment.
@@ -62,6 +62,11 @@ func Steps(s *Scene, p *Prepared, m *Moment, st *stage.Study) []Step {
 	}
 	for _, x := range m.Expect.Steps {
 		steps = append(steps, Step(x))
+	}
+	if m.ExposureOK {
+		for _, x := range m.Exposure.Steps() {
+			steps = append(steps, Step(x))
+		}
 	}
 	return steps
 }

@@ -44,6 +44,14 @@ func words(s *Scene, m *Moment, b Block) string {
 		text = "outside the hours allocated tonight"
 	case targets.CodeInstrument:
 		text = m.Course.NotMounted + " is not mounted tonight"
+	case targets.CodeSeeing:
+		text = fmt.Sprintf("seeing %.1f arcsec, the request wants %.1f", s.Night.seeing(), m.Course.asked.MaxSeeingArcsec.Value)
+	case targets.CodeSky:
+		text = fmt.Sprintf("the sky is %s, the request wants %.1f mag per square arcsec or darker", m.Sky.words(), m.Course.asked.SkyAtLeast.Value)
+	case targets.CodeExtinction:
+		text = hazeWords(s.Night, m.Course.asked)
+	case targets.CodeSaturates, targets.CodeTooFaint:
+		text = m.exposureWords(b.Code)
 	case targets.CodeClosed:
 		text = "the dome is closed"
 	default:

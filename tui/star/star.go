@@ -128,7 +128,7 @@ func (s Screen) Refresh(w *kit.World) (kit.Screen, kit.Job) {
 		p := r.Prepared(row)
 		d := &Detail{Row: row, Name: p.Target.Name, Scene: sc, Moment: m, asked: want}
 		d.HandOver = handOver.Lines(&p.Target, &m, p.Drift)
-		d.Curve = moment.Curve(sc.Night, p, kit.Stretch(sc.Night))
+		d.Curve = moment.Curve(sc.Night, p, r.Want(sc.Night, row), kit.Stretch(sc.Night))
 		var err error
 		st := r.Study(row)
 		d.Known, err = known(&sc, p, &m, &st, lights.Next(p, m.At))
