@@ -49,6 +49,7 @@ var layers = map[string][]string{
 	"targets/run":     {"targets", "targets/table", "targets/instrument", "astro", "astro/timescale"},
 	"targets/builtin": {"targets", "targets/table"},
 	"targets/roster":  {"targets", "targets/moment", "targets/sweep", "targets/light", "targets/stage", "astro/..."},
+	"targets/taking":  {"targets", "targets/exposure", "targets/finding", "targets/instrument", "targets/moment", "astro/..."},
 	"targets/finding": {"targets", "targets/exposure", "astro/..."},
 	"targets/store":   {},
 	"targets/logbook": {"targets", "targets/store", "targets/table"},

@@ -150,7 +150,7 @@ func (s *session) listShape() jsonList {
 		round(m.DistanceKm, 1), round(s.scene.Phase.Illuminated, 5), round(s.scene.Phase.Angle.Deg(), 4),
 	}
 	for _, i := range s.order {
-		out.Targets = append(out.Targets, targetShape(&s.targets[i], &s.prepared[i], &s.moments[i]))
+		out.Targets = append(out.Targets, targetShape(&s.targets[i], &s.prepared[i], &s.moments[i], &s.wants[i]))
 	}
 	return out
 }
@@ -158,13 +158,14 @@ func (s *session) listShape() jsonList {
 var csvHeader = strings.Split("rank,id,name,kind,ra_deg,dec_deg,apparent_ra_deg,apparent_dec_deg,az_deg,alt_deg,"+
 	"alt_refracted_deg,ha_h,parallactic_deg,airmass,rising,moon_sep_deg,sun_sep_deg,rv_correction_kms,bjd_tdb,"+
 	"stage,stage_p,band,mag,lo,hi,level,sb_mag_arcsec2,ends_by,window_until_utc,best_utc,best_airmass,blocked_by,"+
-	"blocked_until_utc,unconfirmed", ",")
+	"blocked_until_utc,unconfirmed,sky_mag_arcsec2,sky_band,instrument,mode,booked_s,frames,each_s,up_to_s,p_reached,"+
+	"saturates_at_mag,limited_by,snr,snr_per,position_angle_deg,standard", ",")
 
 func (s *session) listCSV(w io.Writer) error {
 	c := csv.NewWriter(w)
 	c.Write(csvHeader)
 	for _, i := range s.order {
-		e := targetShape(&s.targets[i], &s.prepared[i], &s.moments[i])
+		e := targetShape(&s.targets[i], &s.prepared[i], &s.moments[i], &s.wants[i])
 		c.Write(csvRow(&e, &s.moments[i]))
 	}
 	c.Flush()
@@ -195,10 +196,20 @@ func csvRow(e *jsonTarget, m *moment.Moment) []string {
 	if next := m.NextOpen(); next != nil {
 		open = stamp(*next)
 	}
-	return []string{rank, e.ID, e.Name, e.Kind, num(e.RA), num(e.Dec), num(e.ApparentRA), num(e.ApparentDec),
+	row := []string{rank, e.ID, e.Name, e.Kind, num(e.RA), num(e.Dec), num(e.ApparentRA), num(e.ApparentDec),
 		num(e.Az), num(e.Alt), num(e.AltRefracted), num(e.HA), num(e.Parallactic), opt(e.Airmass),
 		fmt.Sprint(e.Rising), num(e.MoonSep), num(e.SunSep), num(e.RVCorrection), num(e.BJD),
 		e.Stage.Best, num(round(m.Stage.Sureness(), 4)), e.Expect.Band, opt(e.Expect.Mag), opt(e.Expect.Lo), opt(e.Expect.Hi),
 		num(e.Expect.Level), opt(e.Expect.SB), e.EndsBy, window, e.BestUTC, opt(e.BestAirmass),
-		strings.Join(codes, " "), open, strings.Join(e.Unconfirmed, " ")}
+		strings.Join(codes, " "), open, strings.Join(e.Unconfirmed, " "), opt(e.SkyMag), e.SkyBand}
+	x := e.Exposure
+	if x == nil {
+		return append(row, make([]string, len(csvHeader)-len(row))...)
+	}
+	standard := ""
+	if x.Standard != nil {
+		standard = *x.Standard
+	}
+	return append(row, x.Instrument, x.Mode, num(x.BookedS), strconv.Itoa(x.Frames), num(x.EachS), opt(x.UpToS), opt(x.PReached),
+		opt(x.SaturatesAt), x.LimitedBy, opt(x.SNR), x.Per, opt(x.PA), standard)
 }

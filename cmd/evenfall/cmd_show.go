@@ -52,7 +52,7 @@ func runShow(w world, o *options, name string) error {
 	if o.handover {
 		i = 0
 	}
-	v := view{s: s, t: &s.targets[i], p: &s.prepared[i], m: &s.moments[i]}
+	v := view{s: s, t: &s.targets[i], p: &s.prepared[i], m: &s.moments[i], w: &s.wants[i]}
 	if !o.handover {
 		v.study = v.p.Study(s.models)
 	}
@@ -85,6 +85,7 @@ type view struct {
 	t *targets.Target
 	p *moment.Prepared
 	m *moment.Moment
+	w *moment.Want
 
 	study stage.Study
 }
@@ -158,7 +159,7 @@ func (v view) showShape() (jsonShow, error) {
 	}
 	out := jsonShow{
 		Demonstration: v.s.demo, Site: siteShape(v.s.site), At: stamp(v.m.At), Night: v.s.night.Date.String(),
-		jsonTarget: targetShape(v.t, v.p, v.m), HandOver: v.handOver(), Listed: listed, Derived: v.derived(), Events: v.events(),
+		jsonTarget: targetShape(v.t, v.p, v.m, v.w), HandOver: v.handOver(), Listed: listed, Derived: v.derived(), Events: v.events(),
 		Notes: v.study.Notes, Decide: v.study.Decide,
 	}
 	for _, st := range moment.Steps(&v.s.scene, v.p, v.m, &v.study) {
@@ -192,6 +193,7 @@ func (v view) text(w io.Writer) error {
 	v.stageText(&b)
 	v.studyText(&b)
 	v.lightText(&b)
+	v.takingText(&b)
 	if err := v.listText(&b); err != nil {
 		return err
 	}

@@ -2,13 +2,14 @@ package main
 
 import (
 	"evenfall/targets"
+	"evenfall/targets/exposure"
 	"evenfall/targets/light"
 	"evenfall/targets/moment"
 	"evenfall/targets/stage"
 )
 
 // targetShape turns a moment into the list's entry.
-func targetShape(t *targets.Target, p *moment.Prepared, m *moment.Moment) jsonTarget {
+func targetShape(t *targets.Target, p *moment.Prepared, m *moment.Moment, w *moment.Want) jsonTarget {
 	out := jsonTarget{
 		ID: t.ID, Name: t.Name, Kind: string(t.Kind), KindNote: t.KindNote, KindInferred: t.KindInferred,
 		RA: round(m.RA.Deg(), placeDigits), Dec: round(m.Dec.Deg(), placeDigits),
@@ -29,6 +30,10 @@ func targetShape(t *targets.Target, p *moment.Prepared, m *moment.Moment) jsonTa
 	if m.AirOK {
 		out.Airmass = rounded(float64(m.Airmass), airDigits)
 	}
+	if m.ExposureOK {
+		out.Exposure = exposeShape(&m.Exposure, w)
+	}
+	out.ExposureWhy = m.ExposureWhy
 	if m.Course.Best != nil {
 		out.BestUTC = stamp(*m.Course.Best)
 		out.BestAirmass = rounded(float64(m.Course.BestAirmass), airDigits)
@@ -39,6 +44,33 @@ func targetShape(t *targets.Target, p *moment.Prepared, m *moment.Moment) jsonTa
 	}
 	if u := p.Drift.Uncertainty(t.Place.EpochJyr, m.At); u.Arcsec() > 0 {
 		out.PosUncertain = rounded(u.Arcsec(), 1)
+	}
+	return out
+}
+
+// exposeShape is an exposure for scripts.
+func exposeShape(a *exposure.Answer, w *moment.Want) *jsonExpose {
+	known := func(v targets.Measure, figures int) *float64 {
+		if !v.Known {
+			return nil
+		}
+		return rounded(v.Value, figures)
+	}
+	out := &jsonExpose{Mode: a.Mode, Band: string(a.Band), BookedS: figures(a.BookedS, derivedFigures), Frames: a.Frames,
+		EachS: figures(a.EachS, derivedFigures), ClockS: figures(a.ClockS, derivedFigures), MedianS: known(a.MedianS, 4), UpToS: known(a.UpToS, 4),
+		PReached: known(a.PReached, 4), SaturatesAt: known(a.SaturatesAt, magDigits), LimitedBy: string(a.LimitedBy), Per: a.Per,
+		PA: known(a.SlitPA, 3), Words: a.Words}
+	if w.Instrument != nil {
+		out.Instrument = w.Instrument.Name
+	}
+	if a.AtNm > 0 {
+		out.AtNm = rounded(a.AtNm, 1)
+	}
+	if a.SNR > 0 {
+		out.SNR = rounded(figures(a.SNR, derivedFigures), 4)
+	}
+	if a.Standard != "" {
+		out.Standard = &a.Standard
 	}
 	return out
 }

@@ -74,6 +74,8 @@ type jsonTarget struct {
 	EndsBy        string      `json:"ends_by,omitempty"`
 	BestUTC       string      `json:"best_utc,omitempty"`
 	BestAirmass   *float64    `json:"best_airmass,omitempty"`
+	Exposure      *jsonExpose `json:"exposure,omitempty"`
+	ExposureWhy   string      `json:"exposure_why,omitempty"`
 	BlockedBy     []jsonBlock `json:"blocked_by"`
 	Rank          *int        `json:"rank"`
 	Unconfirmed   []string    `json:"unconfirmed"`
@@ -85,6 +87,28 @@ type jsonTarget struct {
 type jsonSpan struct {
 	From  string `json:"from_utc"`
 	Until string `json:"until_utc"`
+}
+
+// jsonExpose is what is booked for a target in the mode wanted.
+type jsonExpose struct {
+	Instrument  string   `json:"instrument"`
+	Mode        string   `json:"mode"`
+	Band        string   `json:"band,omitempty"`
+	AtNm        *float64 `json:"at_nm,omitempty"`
+	BookedS     float64  `json:"booked_s"`
+	Frames      int      `json:"frames"`
+	EachS       float64  `json:"each_s"`
+	ClockS      float64  `json:"clock_s"`
+	MedianS     *float64 `json:"median_s"`
+	UpToS       *float64 `json:"up_to_s"`
+	PReached    *float64 `json:"p_reached"`
+	SaturatesAt *float64 `json:"saturates_at_mag"`
+	LimitedBy   string   `json:"limited_by,omitempty"`
+	SNR         *float64 `json:"snr"`
+	Per         string   `json:"snr_per,omitempty"`
+	PA          *float64 `json:"position_angle_deg"`
+	Standard    *string  `json:"standard"`
+	Words       []string `json:"words,omitempty"`
 }
 
 type jsonBlock struct {

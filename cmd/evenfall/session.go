@@ -377,6 +377,7 @@ func (s *session) compute(o *options) {
 		s.moments[i] = moment.Of(&s.scene, &s.prepared[i], &s.courses[i], s.wants[i])
 	}
 	s.order = moment.Rank(s.moments)
+	s.standards()
 }
 
 // find returns the target that a name or id means.

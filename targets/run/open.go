@@ -58,6 +58,30 @@ func Open(fsys fs.FS, name string) (*Run, []*table.Error) {
 	return r, f.problems
 }
 
+// Field reads the neighbours of targets, lists in the folder field: stars to
+// offset from and to compare with.
+//
+// Returns:
+//   - what could be read, and every problem; nothing where there is no such
+//     folder.
+//
+// Checked: TestField.
+func Field(fsys fs.FS, name string) ([]targets.Target, []*table.Error) {
+	f := &folder{fsys: fsys, prefix: strings.TrimSuffix(name, "/") + "/"}
+	if name == "" || name == "." {
+		f.prefix = ""
+	}
+	var out []targets.Target
+	for _, file := range f.dir("field") {
+		if data, ok := f.read(file, true); ok {
+			list, problems := table.Read(strings.NewReader(string(data)), f.prefix+file)
+			out = append(out, list...)
+			f.problems = append(f.problems, problems...)
+		}
+	}
+	return out, f.problems
+}
+
 // folder is a run folder being read.
 type folder struct {
 	fsys     fs.FS
