@@ -66,7 +66,7 @@ func Tonight(n *Night, p *Prepared, w Want) Course {
 	t := tracker{night: n, star: &p.Star, limits: limitsOf(n, w)}
 	t.edges = n.edges
 	if w.Instrument != nil {
-		t.edges = findEdges(t.limits, n.Site.Air)
+		t.edges = findEdges(t.limits, n.Site)
 	}
 	t.track()
 	c := Course{Limits: t.limits, asked: w.Request}

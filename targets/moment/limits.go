@@ -85,7 +85,7 @@ func (t *tracker) rules() []rule {
 			return math.Min(d-l.DeclinationDeg[0], l.DeclinationDeg[1]-d)
 		}},
 	}
-	if l.MaxAltitude.Deg() < 90 {
+	if Top(l, t.night.Site.Lat).Deg() < 90 {
 		rules = append(rules, rule{targets.CodeZenith, func(k look) float64 { return t.edges.top.Minus(k.place.Alt).Deg() }})
 	}
 	if len(l.Horizon) > 0 {

@@ -71,12 +71,13 @@ func NewNight(site astro.Site, date astro.Date, limits targets.Limits, condition
 		f := frame.At(site, t)
 		n.nodes = append(n.nodes, node{i, t, f, ephem.Sun(&f), ephem.Moon(&f)})
 	}
-	n.edges = findEdges(limits, site.Air)
+	n.edges = findEdges(limits, site)
 	return n, nil
 }
 
 // findEdges turns limits on refracted altitude into airless ones.
-func findEdges(l targets.Limits, w astro.Weather) edges {
+func findEdges(l targets.Limits, site astro.Site) edges {
+	w := site.Air
 	wish := l.WishAltitude
 	if a := AltitudeOfAirmass(l.WishAirmass); wish.Less(a) {
 		wish = a
@@ -85,7 +86,7 @@ func findEdges(l targets.Limits, w astro.Weather) edges {
 		horizon: air.Unrefract(astro.Angle{}, w),
 		hard:    air.Unrefract(l.MinAltitude, w),
 		wish:    air.Unrefract(wish, w),
-		top:     air.Unrefract(l.MaxAltitude, w),
+		top:     air.Unrefract(Top(&l, site.Lat), w),
 		flat:    len(l.Horizon) == 0,
 	}
 }

@@ -33,7 +33,7 @@ func words(s *Scene, m *Moment, b Block) string {
 		text = fmt.Sprintf("declination %s, the limits are %+.0f and %+.0f deg",
 			degrees(m.Place.Dec), l.DeclinationDeg[0], l.DeclinationDeg[1])
 	case targets.CodeZenith:
-		text = fmt.Sprintf("too near the zenith: altitude %s, the limit is %s", degrees(m.Apparent), degrees(l.MaxAltitude))
+		text = fmt.Sprintf("too near the zenith: altitude %s, the limit is %s", degrees(m.Apparent), degrees(Top(l, s.Night.Site.Lat)))
 	case targets.CodeMoon:
 		text = fmt.Sprintf("only %s from the Moon, the limit is %s", degrees(m.MoonSep), degrees(l.Moon))
 	case targets.CodeWind:

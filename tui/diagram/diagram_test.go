@@ -332,15 +332,15 @@ func TestSigns(t *testing.T) {
 			t.Errorf("no %q in\n%s", want, v)
 		}
 	}
-	for i := range groups {
-		for j := range groups[:i] {
-			if groups[i].sign == groups[j].sign {
-				t.Errorf("%s and %s share a letter", groups[i].code, groups[j].code)
+	for i := range kit.Stages {
+		for j := range kit.Stages[:i] {
+			if kit.Stages[i].Sign == kit.Stages[j].Sign {
+				t.Errorf("%s and %s share a letter", kit.Stages[i].Code, kit.Stages[j].Code)
 			}
 		}
 	}
 	for _, code := range targets.Stages {
-		if signOf(string(code)) == '?' {
+		if kit.StageSign(string(code)) == '?' {
 			t.Errorf("%s has no letter", code)
 		}
 	}

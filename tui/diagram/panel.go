@@ -56,12 +56,12 @@ func (s Screen) legend(width int) []words {
 		return nil
 	}
 	out := []words{{{kit.Title, "letters"}, {kit.Dim, ", capitals for several"}}}
-	for _, g := range groups {
-		n := s.placed.signs[g.sign]
+	for _, g := range kit.Stages {
+		n := s.placed.signs[g.Sign]
 		if n == 0 {
 			continue
 		}
-		out = append(out, words{{kit.Text, fmt.Sprintf("%c %5d  ", g.sign, n)}, {kit.Dim, kit.Cut(g.words, width-9)}})
+		out = append(out, words{{kit.Text, fmt.Sprintf("%c %5d  ", g.Sign, n)}, {kit.Dim, kit.Cut(g.Words, width-9)}})
 	}
 	out = append(out, words{{kit.Selected, "[ ]"}, {kit.Dim, " selected, bars 68 %"}}, words{{kit.Mark, "*"}, {kit.Dim, "   marked"}})
 	return out

@@ -155,7 +155,7 @@ func (b *board) stars(spots []spot, marks map[int]bool, count []uint16) (beyond 
 // letters, so that it can still be followed.
 func (b *board) letter(cell int, letter byte, n int, marked, crowd bool) {
 	if n > 1 {
-		letter = several(letter)
+		letter = kit.Several(letter)
 	}
 	ink, onTrack := kit.Text, b.taken[cell]
 	switch {

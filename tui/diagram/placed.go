@@ -82,7 +82,7 @@ func (p *placed) further(lives kit.Lives, n int) *placed {
 
 func judged(lives kit.Lives, r *roster.Roster, row int32) spot {
 	v := lives.Verdict(r, int(row))
-	return spot{row, signOf(v.Best), v}
+	return spot{row, kit.StageSign(v.Best), v}
 }
 
 // whyNot says why a target stands nowhere.

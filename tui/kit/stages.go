@@ -1,17 +1,17 @@
-package diagram
+package kit
 
 import "evenfall/targets"
 
-// group is a sign of the diagram and the stages that it stands for.
-type group struct {
-	sign  byte // small: one star; its capital: several in the cell, most of them so
-	code  string
-	words string
+// StageGroup is a sign for stages and the stages that it stands for.
+type StageGroup struct {
+	Sign  byte // small: one star; its capital: several in the cell, most of them so
+	Code  string
+	Words string
 }
 
-// groups are in order of evolution. Each has a letter of its own, so that
+// Stages are in order of evolution. Each has a letter of its own, so that
 // nothing hangs on colour.
-var groups = []group{
+var Stages = []StageGroup{
 	{'m', string(targets.MS), "main sequence"},
 	{'s', string(targets.SG), "subgiant"},
 	{'g', string(targets.RGB), "red giant branch"},
@@ -29,22 +29,22 @@ var groups = []group{
 	{'?', targets.Undecided, "undecided"},
 }
 
-// signOf returns the letter of a judgement. Giants of which it is open on
+// StageSign returns the letter of a judgement. Giants of which it is open on
 // which branch they are go with the first.
-func signOf(best string) byte {
+func StageSign(best string) byte {
 	if best == targets.Merged {
 		best = string(targets.RGB)
 	}
-	for i := range groups {
-		if groups[i].code == best {
-			return groups[i].sign
+	for i := range Stages {
+		if Stages[i].Code == best {
+			return Stages[i].Sign
 		}
 	}
 	return '?'
 }
 
-// several is the sign of more than one star in a cell.
-func several(sign byte) byte {
+// Several is the sign of more than one star in a cell.
+func Several(sign byte) byte {
 	if sign >= 'a' && sign <= 'z' {
 		return sign - 'a' + 'A'
 	}
