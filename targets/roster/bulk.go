@@ -110,8 +110,8 @@ func boundsOf(s *moment.Scene) bounds {
 	if middle, half, cloudy := moment.CloudSector(c); cloudy {
 		b.sectors = append(b.sectors, sector{middle.Rad(), astro.Deg(half).Rad()})
 	}
-	if l.MaxAltitude.Deg() < 90 {
-		b.sinTop = sin(l.MaxAltitude)
+	if top := moment.Top(l, s.Night.Site.Lat); top.Deg() < 90 {
+		b.sinTop = sin(top)
 	}
 	can, should := s.Night.CanDark(), s.Night.SunBelow(moment.ShouldSunAltitude)
 	if ours := s.Night.Allocated; ours != nil {

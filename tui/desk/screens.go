@@ -8,6 +8,7 @@ import (
 	"evenfall/targets/light"
 	"evenfall/targets/moment"
 	"evenfall/tui/diagram"
+	"evenfall/tui/dome"
 	"evenfall/tui/events"
 	"evenfall/tui/kit"
 	"evenfall/tui/plain"
@@ -31,6 +32,8 @@ func (d *Desk) open(title string) {
 		d.screens = append(d.screens, diagram.New())
 	case kit.OnEvents:
 		d.screens = append(d.screens, events.New())
+	case kit.OnDome:
+		d.screens = append(d.screens, dome.New())
 	}
 }
 

@@ -74,6 +74,13 @@ const (
 	LightCurve  Action = "light curve"
 	EnterMag    Action = "enter a magnitude"
 	RemoveMag   Action = "remove a magnitude"
+	OpenDome    Action = "dome"
+	CursorLeft  Action = "cursor left"
+	CursorRight Action = "cursor right"
+	CursorUp    Action = "cursor up"
+	CursorDown  Action = "cursor down"
+	CursorAway  Action = "cursor away"
+	TurnDome    Action = "turn"
 )
 
 // Binding is one row of the table of keys: it makes the handler, the footer,
@@ -100,13 +107,15 @@ const (
 	OnWeather = "conditions"
 	OnDiagram = "diagram"
 	OnEvents  = "events"
+	OnDome    = "dome"
 )
 
 var (
 	lists = []string{OnNext, OnStar, OnEvents, OnHelp, OnCopy, OnLog}
-	work  = []string{OnNext, OnStar, OnDiagram, OnEvents, OnLog}
-	stars = []string{OnNext, OnStar, OnDiagram, OnEvents}
-	all   = []string{OnNext, OnStar, OnDiagram, OnEvents, OnHelp, OnCopy, OnLog}
+	work  = []string{OnNext, OnStar, OnDiagram, OnEvents, OnDome, OnLog}
+	stars = []string{OnNext, OnStar, OnDiagram, OnEvents, OnDome}
+	all   = []string{OnNext, OnStar, OnDiagram, OnEvents, OnDome, OnHelp, OnCopy, OnLog}
+	timed = []string{OnNext, OnStar, OnDome} // where the keys of time are
 )
 
 // Bindings is the table of keys. Every movement has a letter; no key needs
@@ -119,7 +128,7 @@ var Bindings = []Binding{
 	{HalfUp, []string{"u", "pgup"}, "u, page up", "", "half a page up", lists},
 	{First, []string{"g", "home"}, "g, home", "", "to the first line", lists},
 	{Last, []string{"G", "end"}, "G, end", "", "to the last line", lists},
-	{OpenStar, []string{"enter"}, "enter", "star", "look at the selected star closely", []string{OnNext, OnDiagram, OnEvents}},
+	{OpenStar, []string{"enter"}, "enter", "star", "look at the selected star closely", []string{OnNext, OnDiagram, OnEvents, OnDome}},
 	{ShortRange, []string{"["}, "[", "[ ] nights", "fewer nights ahead: 30, 7, 3, 1", []string{OnEvents}},
 	{LongerRange, []string{"]"}, "]", "", "more nights ahead", []string{OnEvents}},
 	{OnlyCan, []string{"y"}, "y", "only can", "only what can be observed, or everything", []string{OnEvents}},
@@ -131,6 +140,12 @@ var Bindings = []Binding{
 	{NearRight, []string{"right", ")"}, "right, )", "", "the nearest on the right: cooler, redder", []string{OnDiagram}},
 	{NearUp, []string{"k", "up"}, "k, up", "", "the nearest above: more luminous", []string{OnDiagram}},
 	{NearDown, []string{"j", "down"}, "j, down", "", "the nearest below: fainter", []string{OnDiagram}},
+	{CursorLeft, []string{"left", "("}, "left, (", "arrows cursor", "the cursor over the sky: azimuth, altitude, airmass, brightness and distance from the Moon there; enter selects the nearest target", []string{OnDome}},
+	{CursorRight, []string{"right", ")"}, "right, )", "", "the cursor to the right", []string{OnDome}},
+	{CursorUp, []string{"up", "K"}, "up, K", "", "the cursor up", []string{OnDome}},
+	{CursorDown, []string{"down", "J"}, "down, J", "", "the cursor down", []string{OnDome}},
+	{CursorAway, []string{"0"}, "0", "", "the cursor away", []string{OnDome}},
+	{TurnDome, []string{"y"}, "y", "turn", "turn by 90 degrees: another azimuth in the middle", []string{OnDome}},
 	{FilterList, []string{"/"}, "/", "filter", "filter by words and conditions: lep kind=wd alt>35 V<16 stage=TPAGB", []string{OnNext}},
 	{SortList, []string{"s"}, "s", "sort", "order by a column, named by a letter", []string{OnNext}},
 	{ReverseSort, []string{"S"}, "S", "", "reverse the order", []string{OnNext}},
@@ -140,22 +155,26 @@ var Bindings = []Binding{
 	{OpenLog, []string{"l"}, "l", "log", "the log of the night and what is owed", stars},
 	{AddStar, []string{"a"}, "a", "add", "type or paste a new target", stars},
 	{CopyLines, []string{"c"}, "c", "copy", "send the hand-over lines to the clipboard and show them plainly", stars},
+	{NextStar, []string{"j"}, "j", "j k stars", "the next star of the list", []string{OnDome}},
+	{PriorStar, []string{"k"}, "k", "", "the star before", []string{OnDome}},
 	{NextStar, []string{"."}, ".", ". , stars", "the next star of the list", []string{OnStar, OnDiagram}},
-	{PriorStar, []string{","}, ",", "", "the star before", []string{OnStar, OnDiagram}},
+	{NextStar, []string{"."}, ".", "", "the next star of the list", []string{OnDome}},
+	{PriorStar, []string{","}, ",", "", "the star before", []string{OnStar, OnDiagram, OnDome}},
 	{LightCurve, []string{"L"}, "L", "light", "the light curve, measured and forecast, in place of the night's course; high screens show both", []string{OnStar}},
 	{EnterMag, []string{"M"}, "M", "mag", "enter a magnitude measured now: 8.1, or <12.5 for not seen; another band or time behind it", stars},
 	{RemoveMag, []string{"R"}, "R", "", "remove the last magnitude entered for this star, or one by its number; it is kept as void (asks)", stars},
-	{OpenDiagram, []string{"h"}, "h", "HR", "the Hertzsprung-Russell diagram: where in their lives the stars of the list stand", []string{OnNext, OnStar, OnEvents}},
-	{OpenEvents, []string{"E"}, "E", "events", "what happens when: eclipses, maxima and other dated happenings of tonight and the coming nights", []string{OnNext, OnStar, OnDiagram}},
-	{TenLess, []string{"["}, "[", "[ ] time", "10 minutes earlier; the time shown is then one of your own", []string{OnNext, OnStar}},
-	{TenMore, []string{"]"}, "]", "", "10 minutes later", []string{OnNext, OnStar}},
-	{MinuteLess, []string{"-"}, "-", "", "1 minute earlier", []string{OnNext, OnStar}},
-	{MinuteMore, []string{"+", "="}, "+", "", "1 minute later", []string{OnNext, OnStar}},
-	{HourLess, []string{"{"}, "{", "", "1 hour earlier", []string{OnNext, OnStar}},
-	{HourMore, []string{"}"}, "}", "", "1 hour later", []string{OnNext, OnStar}},
-	{NightLess, []string{"<"}, "<", "", "the night before, same time", []string{OnNext, OnStar, OnEvents}},
-	{NightMore, []string{">"}, ">", "", "the night after, same time", []string{OnNext, OnStar, OnEvents}},
-	{BackToNow, []string{"n"}, "n", "", "back to now, and on with the clock", []string{OnNext, OnStar, OnEvents}},
+	{OpenDiagram, []string{"h"}, "h", "HR", "the Hertzsprung-Russell diagram: where in their lives the stars of the list stand", []string{OnNext, OnStar, OnEvents, OnDome}},
+	{OpenEvents, []string{"E"}, "E", "events", "what happens when: eclipses, maxima and other dated happenings of tonight and the coming nights", []string{OnNext, OnStar, OnDiagram, OnDome}},
+	{OpenDome, []string{"z"}, "z", "sky", "where in the sky: zenith, horizon, Moon, the selected star and where it is going, how bright the sky is, the limits", []string{OnNext, OnStar, OnDiagram, OnEvents}},
+	{TenLess, []string{"["}, "[", "[ ] time", "10 minutes earlier; the time shown is then one of your own", timed},
+	{TenMore, []string{"]"}, "]", "", "10 minutes later", timed},
+	{MinuteLess, []string{"-"}, "-", "", "1 minute earlier", timed},
+	{MinuteMore, []string{"+", "="}, "+", "", "1 minute later", timed},
+	{HourLess, []string{"{"}, "{", "", "1 hour earlier", timed},
+	{HourMore, []string{"}"}, "}", "", "1 hour later", timed},
+	{NightLess, []string{"<"}, "<", "", "the night before, same time", []string{OnNext, OnStar, OnEvents, OnDome}},
+	{NightMore, []string{">"}, ">", "", "the night after, same time", []string{OnNext, OnStar, OnEvents, OnDome}},
+	{BackToNow, []string{"n"}, "n", "", "back to now, and on with the clock", []string{OnNext, OnStar, OnEvents, OnDome}},
 	{TakeNow, []string{"T"}, "T", "", "straight to exposing; then t accepts: a take in two keys", work},
 	{FrameDone, []string{"f"}, "f", "", "count a frame by hand", work},
 	{StopEarly, []string{"x"}, "x", "", "stop early: what is done is logged", work},
@@ -170,7 +189,7 @@ var Bindings = []Binding{
 	{BellSwitch, []string{"b"}, "b", "", "bell at the end of an exposure, before events and limits: on, off", work},
 	{ClockOffset, []string{"i"}, "i", "", "how many seconds the instrument's clock is ahead; logged with each take", work},
 	{ChangeTheme, []string{"v"}, "v", "", "theme: dark, red for night vision, plain", all},
-	{ShowHelp, []string{"?"}, "?", "help", "the keys and signs of this screen", []string{OnNext, OnStar, OnDiagram, OnEvents, OnCopy, OnLog}},
+	{ShowHelp, []string{"?"}, "?", "help", "the keys and signs of this screen", []string{OnNext, OnStar, OnDiagram, OnEvents, OnDome, OnCopy, OnLog}},
 	{Back, []string{"esc", "backspace"}, "esc", "", "dismiss a message, else back; nothing typed is lost", all},
 	{Leave, []string{"q"}, "q", "leave", "leave this screen, from the list the program; asks once (y) if something is half typed", all},
 
@@ -240,7 +259,7 @@ func Footer(screen string, width int) string {
 
 var footers = func() map[string][]string {
 	out := map[string][]string{}
-	for _, screen := range []string{OnNext, OnStar, OnEntry, OnCopy, OnHelp, OnField, OnLog, OnWeather, OnDiagram, OnEvents} {
+	for _, screen := range []string{OnNext, OnStar, OnEntry, OnCopy, OnHelp, OnField, OnLog, OnWeather, OnDiagram, OnEvents, OnDome} {
 		for _, b := range KeysOn(screen) {
 			switch {
 			case b.Short == "":
