@@ -13,6 +13,7 @@ import (
 
 	"evenfall/astro"
 	"evenfall/astro/ephem"
+	"evenfall/targets/light"
 	"evenfall/targets/roster"
 	"evenfall/tui/desk"
 	"evenfall/tui/kit"
@@ -112,7 +113,9 @@ func (d *dated) work(ctx context.Context, src *desk.Source) error {
 	}
 	span := astro.Span{From: d.spans[d.first].From, Until: d.spans[d.last].Until}
 	var err error
-	if d.list, err = d.roster.Happenings(ctx, d.rows, d.site, span, nil); err != nil {
+	if d.list, err = d.roster.Happenings(ctx, d.rows, d.site, span, func(row int, from, until astro.Instant) []light.Event {
+		return d.roster.Prepared(row).Light.EventsAsOf(d.site, d.at, from, until)
+	}); err != nil {
 		return err
 	}
 	for from := 0; from < len(d.list); {
@@ -186,12 +189,30 @@ func (d *dated) csv(out io.Writer) error {
 	return c.Error()
 }
 
+// vagueS is the uncertainty, s, from which a time of day says nothing.
+const vagueS = 43200
+
+// stretch is from when until when it lasts; "" for an instant.
+func stretch(h *roster.Happening) string {
+	if h.Start == nil || h.End == nil || h.SigmaS > vagueS {
+		return ""
+	}
+	layout, round := "15:04:05", time.Second
+	if !(h.SigmaS <= 60) {
+		layout, round = "15:04", time.Minute
+	}
+	return h.Start.UTC().Round(round).Format(layout) + "-" + h.End.UTC().Round(round).Format(layout)
+}
+
 // row is a happening as people read it.
 func (d *dated) row(h *roster.Happening) (utc, local, alt, air, can string) {
 	layout := "15:04:05"
 	round := time.Second
 	if !(h.SigmaS <= 1800) {
 		layout, round = "15:04", time.Minute
+	}
+	if h.SigmaS > vagueS { // a day is all that can be said
+		return "about", "", "-", "-", "-"
 	}
 	utc = h.At.UTC().Round(round).Format(layout)
 	local = h.At.UTC().Round(time.Minute).In(d.location()).Format("15:04")
@@ -243,11 +264,12 @@ func (d *dated) text(out io.Writer, width int) error {
 		}
 		utc, here, alt, air, can := d.row(h)
 		line := fmt.Sprintf("%-8s %s%-13s %-10s %6s %5s %5s %-17s %s", utc, local(here), kit.Cut(d.targets[h.Row].Name, 13), kit.Cut(h.Kind, 10), sigma(h.SigmaS), alt, air, can, h.Status)
-		if h.Words != "" && len(line)+2+len(h.Words) <= width {
-			line += "  " + h.Words
+		if s := stretch(h); s != "" {
+			line += "  " + s
 		}
 		fmt.Fprintln(&b, strings.TrimRight(line, " "))
 	}
+	d.footnotes(&b)
 	fmt.Fprintf(&b, "\n%s", d.summary())
 	if zone {
 		fmt.Fprintf(&b, "; %s", d.zoneName())
@@ -258,14 +280,36 @@ func (d *dated) text(out io.Writer, width int) error {
 	return err
 }
 
+// footnotes explains what was assumed, once for each target.
+func (d *dated) footnotes(b *strings.Builder) {
+	said := map[string]bool{}
+	for i := range d.list {
+		h := &d.list[i]
+		line := d.targets[h.Row].Name + ": " + h.Words
+		if h.Words == "" || said[line] || len(said) >= mostNotes {
+			continue
+		}
+		if len(said) == 0 {
+			b.WriteString("\n")
+		}
+		said[line] = true
+		for _, part := range kit.Wrap(line, 86, 2) {
+			fmt.Fprintln(b, part)
+		}
+	}
+}
+
+// mostNotes is how many explanations a table is followed by.
+const mostNotes = 40
+
 func (d *dated) markdown(out io.Writer) error {
 	var b strings.Builder
-	fmt.Fprintf(&b, "%s\n\n| UTC | %s | target | kind | +- | alt, deg | X | observable | status |\n|---|---|---|---|---|---|---|---|---|\n", d.heading(), d.zoneName())
+	fmt.Fprintf(&b, "%s\n\n| UTC | %s | target | kind | +- | alt, deg | X | observable | status | from-until |\n|---|---|---|---|---|---|---|---|---|---|\n", d.heading(), d.zoneName())
 	for i := range d.list {
 		h := &d.list[i]
 		utc, here, alt, air, can := d.row(h)
-		fmt.Fprintf(&b, "| %s %s | %s | %s | %s | %s | %s | %s | %s | %s |\n", h.At.UTC().Format("2006-01-02"), utc, here,
-			strings.ReplaceAll(d.targets[h.Row].Name, "|", "\\|"), h.Kind, sigma(h.SigmaS), alt, air, can, h.Status)
+		fmt.Fprintf(&b, "| %s %s | %s | %s | %s | %s | %s | %s | %s | %s | %s |\n", h.At.UTC().Format("2006-01-02"), utc, here,
+			strings.ReplaceAll(d.targets[h.Row].Name, "|", "\\|"), h.Kind, sigma(h.SigmaS), alt, air, can, h.Status, stretch(h))
 	}
 	_, err := fmt.Fprintf(out, "%s\n%s\n", b.String(), d.summary())
 	return err

@@ -147,7 +147,7 @@ type jsonEvent struct {
 func (v view) events() []jsonEvent {
 	out := []jsonEvent{}
 	for _, e := range v.p.Light.Next(v.m.At) {
-		out = append(out, jsonEvent{e.Kind, stamp(e.At), round(e.BJDTDB, 6), round(e.SigmaS, 1), e.Status})
+		out = append(out, jsonEvent{e.Kind, stamp(e.At), round(e.BJDTDB, jdDigits), round(e.SigmaS, 1), e.Status})
 	}
 	return out
 }
@@ -270,6 +270,7 @@ func (v view) lightText(b *strings.Builder) {
 		fmt.Fprintf(b, "  basis: %s\n", f.Basis)
 	}
 	for _, e := range v.p.Light.Next(v.m.At) {
-		fmt.Fprintf(b, "  next %s %s, +- %s (%s)\n", e.Kind, e.At.UTC().Round(time.Second).Format("2006-01-02 15:04:05 UTC"), kit.Duration(e.SigmaS), e.Status)
+		fmt.Fprintf(b, "  next %s %s, +- %s (%s)\n", e.Kind, dateOf(&e), kit.Duration(e.SigmaS), e.Status)
 	}
+	v.tonightText(b)
 }

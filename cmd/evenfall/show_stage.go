@@ -6,8 +6,11 @@ import (
 	"math"
 	"slices"
 	"strings"
+	"time"
 
 	"evenfall/targets"
+	"evenfall/targets/light"
+	"evenfall/targets/roster"
 	"evenfall/targets/stage"
 	"evenfall/tui/kit"
 )
@@ -88,5 +91,31 @@ func (v view) studyText(b *strings.Builder) {
 	}
 	for _, n := range v.study.Notes {
 		fmt.Fprintf(b, "  note: %s\n", n)
+	}
+}
+
+// dateOf writes when something happens, no finer than it is known.
+func dateOf(e *light.Event) string {
+	switch {
+	case e.SigmaS > 86400:
+		return e.At.UTC().Format("2006-01-02")
+	case e.SigmaS > 600:
+		return e.At.UTC().Round(time.Minute).Format("2006-01-02 15:04 UTC")
+	}
+	return e.At.UTC().Round(time.Second).Format("2006-01-02 15:04:05 UTC")
+}
+
+// tonightText lists what happens this night, with when it begins and ends.
+func (v view) tonightText(b *strings.Builder) {
+	span := v.s.night.Span
+	for _, e := range v.p.Light.EventsAsOf(v.s.site, v.m.At, span.From, span.Until) {
+		if e.SigmaS > vagueS {
+			continue
+		}
+		fmt.Fprintf(b, "  tonight: %s %s, +- %s (%s)", e.Kind, dateOf(&e), kit.Duration(e.SigmaS), e.Status)
+		if h := (roster.Happening{Event: e}); stretch(&h) != "" {
+			fmt.Fprintf(b, ", %s", stretch(&h))
+		}
+		b.WriteString("\n")
 	}
 }

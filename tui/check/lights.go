@@ -49,7 +49,7 @@ func rhythm(t *targets.Target) (kind string, period, first time.Duration) {
 }
 
 // Events dates what a target does.
-func (Lights) Events(p *moment.Prepared, _ astro.Site, from, until astro.Instant) []light.Event {
+func (Lights) Events(p *moment.Prepared, _ astro.Site, _, from, until astro.Instant) []light.Event {
 	kind, period, first := rhythm(&p.Target)
 	if period == 0 {
 		return nil
@@ -101,7 +101,7 @@ func complete(e light.Event, name string) light.Event {
 
 // Next dates the next event.
 func (l Lights) Next(p *moment.Prepared, from astro.Instant) []light.Event {
-	list := l.Events(p, Site, from, from.Add(500*24*time.Hour))
+	list := l.Events(p, Site, from, from, from.Add(500*24*time.Hour))
 	return list[:min(len(list), 1)]
 }
 

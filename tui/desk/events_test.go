@@ -78,7 +78,7 @@ type slow struct {
 
 func (s slow) Events(p *moment.Prepared, site astro.Site, from, until astro.Instant) []light.Event {
 	*s.asked++
-	return s.Lights.Events(p, site, from, until)
+	return s.Lights.Events(p, site, from, from, until)
 }
 
 // The dates are worked out in portions, with progress, and no further when the

@@ -108,10 +108,11 @@ func (d *dated) further(ctx context.Context, w *source) (*dated, error) {
 type source struct {
 	night  func(astro.Date) (*moment.Night, error)
 	lights kit.Lights
+	asOf   astro.Instant // magnitudes teach up to there
 }
 
 func (w *source) dates(r *roster.Roster, site astro.Site) roster.Dates {
 	return func(row int, from, until astro.Instant) []light.Event {
-		return w.lights.Events(r.Prepared(row), site, from, until)
+		return w.lights.Events(r.Prepared(row), site, w.asOf, from, until)
 	}
 }

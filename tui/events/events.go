@@ -18,6 +18,7 @@ import (
 type Screen struct {
 	rangeAt int // which of ranges
 	onlyCan bool
+	quarter bool   // quadratures too
 	data    *dated // what is shown; nil: nothing yet
 	next    *dated // what is being worked out; the same as data when done
 	busy    bool   // with that
@@ -26,6 +27,10 @@ type Screen struct {
 	chosen  happening // that the cursor was put on
 	top     int
 }
+
+// quadrature is the kind that is left out unless asked for: there are two of
+// them for each eclipse.
+const quadrature = "quadrature"
 
 // happening tells one from another.
 type happening struct {
@@ -78,6 +83,13 @@ func (s Screen) Key(w *kit.World, press string) (kit.Screen, kit.Job) {
 			return s, kit.Say{Text: "only what can be observed"}
 		}
 		return s, kit.Say{Text: "everything"}
+	case kit.Quadratures:
+		s.quarter = !s.quarter
+		s.see()
+		if s.quarter {
+			return s, kit.Say{Text: "quadratures too"}
+		}
+		return s, kit.Say{Text: "without quadratures"}
 	case kit.Down:
 		if place < 0 {
 			return s.goTo(w, s.upcoming(w.Shown))
@@ -167,7 +179,7 @@ func (s *Screen) see() {
 	}
 	s.visible = make([]int32, 0, len(s.data.list))
 	for i := range s.data.list {
-		if h := &s.data.list[i]; !s.onlyCan || h.Placed && h.Can {
+		if h := &s.data.list[i]; (!s.onlyCan || h.Placed && h.Can) && (s.quarter || h.Kind != quadrature) {
 			s.visible = append(s.visible, int32(i))
 		}
 	}
@@ -207,7 +219,7 @@ func (s Screen) Refresh(w *kit.World) (kit.Screen, kit.Job) {
 		return s, nil
 	}
 	s.busy = true
-	was, from := s.next, source{w.Night, kit.LightsOf(w)}
+	was, from := s.next, source{w.Night, kit.LightsOf(w), w.Snap.Scene.Instant}
 	return s, kit.Work{Name: "dating what happens", Run: func(ctx context.Context) (kit.Result, error) {
 		got, err := was.further(ctx, &from)
 		return portioned{was, got}, err

@@ -71,6 +71,7 @@ const (
 	LongerRange Action = "longer range"
 	ShortRange  Action = "shorter range"
 	OnlyCan     Action = "only what can be observed"
+	Quadratures Action = "quadratures"
 	LightCurve  Action = "light curve"
 	EnterMag    Action = "enter a magnitude"
 	RemoveMag   Action = "remove a magnitude"
@@ -131,6 +132,7 @@ var Bindings = []Binding{
 	{OpenStar, []string{"enter"}, "enter", "star", "look at the selected star closely", []string{OnNext, OnDiagram, OnEvents, OnDome}},
 	{ShortRange, []string{"["}, "[", "[ ] nights", "fewer nights ahead: 30, 7, 3, 1", []string{OnEvents}},
 	{LongerRange, []string{"]"}, "]", "", "more nights ahead", []string{OnEvents}},
+	{Quadratures, []string{"Q"}, "Q", "quadratures", "quadratures too, or without them", []string{OnEvents}},
 	{OnlyCan, []string{"y"}, "y", "only can", "only what can be observed, or everything", []string{OnEvents}},
 	{OtherAxes, []string{"h"}, "h", "axes", "luminosity against temperature, or absolute magnitude against colour", []string{OnDiagram}},
 	{ZoomIn, []string{"+", "="}, "+", "+ - 0 zoom", "twice as large, around the selected star", []string{OnDiagram}},

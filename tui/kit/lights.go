@@ -14,7 +14,7 @@ type Lights interface {
 	// Past returns the measured magnitudes, oldest first.
 	Past(p *moment.Prepared) []light.Seen
 	// Events dates what a target does between two instants.
-	Events(p *moment.Prepared, site astro.Site, from, until astro.Instant) []light.Event
+	Events(p *moment.Prepared, site astro.Site, asOf, from, until astro.Instant) []light.Event
 	// Next dates the next happening of each kind.
 	Next(p *moment.Prepared, from astro.Instant) []light.Event
 }
@@ -31,8 +31,8 @@ func (Forecast) Chart(p *moment.Prepared, at []astro.Instant, ask light.Ask) []l
 func (Forecast) Past(p *moment.Prepared) []light.Seen { return p.Light.Past() }
 
 // Events dates what a target does.
-func (Forecast) Events(p *moment.Prepared, site astro.Site, from, until astro.Instant) []light.Event {
-	return p.Light.Events(site, from, until)
+func (Forecast) Events(p *moment.Prepared, site astro.Site, asOf, from, until astro.Instant) []light.Event {
+	return p.Light.EventsAsOf(site, asOf, from, until)
 }
 
 // Next dates the next happening of each kind.

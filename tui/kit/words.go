@@ -195,6 +195,8 @@ func Duration(s float64) string {
 	switch {
 	case s < 300:
 		return fmt.Sprintf("%.0f s", s)
+	case s < 5400:
+		return fmt.Sprintf("%.0f min", s/60)
 	case s < 86400:
 		return fmt.Sprintf("%.1f h", s/3600)
 	}
