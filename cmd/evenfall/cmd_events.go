@@ -264,7 +264,7 @@ func (d *dated) text(out io.Writer, width int) error {
 		}
 		utc, here, alt, air, can := d.row(h)
 		line := fmt.Sprintf("%-8s %s%-13s %-10s %6s %5s %5s %-17s %s", utc, local(here), kit.Cut(d.targets[h.Row].Name, 13), kit.Cut(h.Kind, 10), sigma(h.SigmaS), alt, air, can, h.Status)
-		if s := stretch(h); s != "" {
+		if s := stretch(h); s != "" && (width == 0 || len(line)+2+len(s) <= width) {
 			line += "  " + s
 		}
 		fmt.Fprintln(&b, strings.TrimRight(line, " "))

@@ -80,7 +80,7 @@ func TestEventsFormats(t *testing.T) {
 	}
 	got = call("", at("events", "--zone", "America/Santiago")...)
 	for _, line := range strings.Split(got.out, "\n") {
-		if len(line) > 88 {
+		if len(line) > 106 {
 			t.Errorf("a line of %d columns: %q", len(line), line)
 		}
 	}

@@ -76,9 +76,9 @@ type slow struct {
 	asked *int
 }
 
-func (s slow) Events(p *moment.Prepared, site astro.Site, from, until astro.Instant) []light.Event {
+func (s slow) Events(p *moment.Prepared, site astro.Site, asOf, from, until astro.Instant) []light.Event {
 	*s.asked++
-	return s.Lights.Events(p, site, from, from, until)
+	return s.Lights.Events(p, site, asOf, from, until)
 }
 
 // The dates are worked out in portions, with progress, and no further when the
