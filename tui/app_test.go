@@ -177,7 +177,9 @@ func TestBytes(t *testing.T) {
 	if testing.Short() {
 		t.Skip("some seconds of the real loop; not with -short")
 	}
-	s := start(t, source(t, 1), 80, 24, 10, false)
+	src := check.Equipped(t, 1)
+	src.Look = source(t, 200).Look
+	s := start(t, src, 80, 24, 10, false)
 	s.see("1/256")
 	settle := func(what string) {
 		s.see(what)

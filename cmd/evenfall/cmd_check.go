@@ -91,6 +91,9 @@ func checkStore(ctx context.Context, w world, dir string) error {
 
 func runCheck(w world, fsys fs.FS, dir string) error {
 	r, problems := run.Open(fsys, dir)
+	if _, wrong := run.Field(fsys, dir); len(wrong) > 0 {
+		problems = append(problems, wrong...)
+	}
 	refused, warned := 0, 0
 	for _, p := range problems {
 		fmt.Fprintln(w.out, p)

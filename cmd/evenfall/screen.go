@@ -144,7 +144,7 @@ func (s *session) source(o *options) desk.Source {
 	src := desk.Source{Site: s.site, Title: s.title, Demo: s.demo, Zone: s.location(), HandOver: s.handOverFormat(),
 		Band: targets.Band(o.band), Level: o.level, Roster: roster.New(entries, s.newModels(o), wants),
 		Night: s.nights(), Fixed: o.at != ""}
-	src.Changed = s.renew
+	src.Changed, src.Field = s.renew, sync.OnceValue(s.field)
 	if o.night != "" && o.at == "" {
 		src.Start = s.at.UTC()
 	}

@@ -46,6 +46,21 @@ func (t *tracker) cost(p *Prepared, w Want, k look, at astro.Instant) price {
 	return price{at, clock, err}
 }
 
+// slitTonight is the slit that suits the image at the least airmass of the
+// windows; 0: none, or one is wanted.
+func (t *tracker) slitTonight(c *Course, p *Prepared, w Want) float64 {
+	if w.Goal == nil || !w.slit() || w.Goal.SlitArcsec > 0 {
+		return 0
+	}
+	t.best(c)
+	if c.Best == nil || c.BestAirmass == 0 {
+		return 0
+	}
+	f := frame.At(t.night.Site, *c.Best)
+	k := look{f.Look(f.Observed(t.star)), &f, nil}
+	return exposure.Solve(w.setting(t.night, p, *c.Best, &k.place, c.BestAirmass, t.skyOf(&k))).SlitArcsec
+}
+
 // costAt is the price between the nodes.
 func (c *costing) costAt(at astro.Instant) price {
 	f := frame.At(c.night.Site, at)

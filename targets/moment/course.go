@@ -49,6 +49,7 @@ type Course struct {
 	ClosedAllOver bool           // no window tonight
 	NotMounted    string         // as wanted
 	asked         *targets.Request
+	slit          float64 // that serves all night, arcsec; 0: as wanted, or none
 }
 
 // Tonight works out a target's night.
@@ -81,7 +82,9 @@ func Tonight(n *Night, p *Prepared, w Want) Course {
 	for _, l := range c.limits {
 		c.Can = astro.Intersect(c.Can, l.kept)
 	}
-	costs := costing{tracker: &t, p: p, w: w}
+	c.Transit = t.transit()
+	c.slit = t.slitTonight(&c, p, w)
+	costs := costing{tracker: &t, p: p, w: w.with(c.slit)}
 	costs.work(&c)
 	for _, l := range c.limits {
 		if len(l.kept) == 0 {
@@ -93,7 +96,6 @@ func Tonight(n *Night, p *Prepared, w Want) Course {
 		c.Should = astro.Intersect(c.Should, l.kept)
 	}
 	c.ClosedAllOver = len(c.Can) == 0
-	c.Transit = t.transit()
 	if !costs.best(&c) {
 		t.best(&c)
 	}
@@ -163,6 +165,7 @@ const siderealDay = time.Duration(86164.0905 * 1e9)
 
 // best finds the moment of least airmass in the windows.
 func (t *tracker) best(c *Course) {
+	c.Best = nil
 	highest := math.Inf(-1)
 	try := func(at astro.Instant) {
 		p := t.place(at)

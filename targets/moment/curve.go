@@ -28,9 +28,10 @@ const curveStep = 5 * time.Minute
 //     mode needs.
 //
 // Checked: TestCurve: the points are those of Of.
-func Curve(n *Night, p *Prepared, w Want, s astro.Span) []Point {
+func Curve(n *Night, p *Prepared, c *Course, w Want, s astro.Span) []Point {
 	var out []Point
 	t := tracker{night: n, star: &p.Star}
+	w = w.with(c.slit)
 	dark := n.SunBelow(w.sunAt())
 	for at := s.From; ; at = at.Add(curveStep) {
 		if at.After(s.Until) {

@@ -110,6 +110,17 @@ func (w *Want) goal(p *Prepared) exposure.Goal {
 	return g
 }
 
+// with is the want with a slit, where none is wanted of its own.
+func (w Want) with(slitArcsec float64) Want {
+	if w.Goal == nil || w.Goal.SlitArcsec > 0 || !(slitArcsec > 0) {
+		return w
+	}
+	g := *w.Goal
+	g.SlitArcsec = slitArcsec
+	w.Goal = &g
+	return w
+}
+
 // setting is an exposure to be worked out under a sky.
 func (w *Want) setting(n *Night, p *Prepared, at astro.Instant, place *frame.Place, x astro.Airmass, sky *skyglow.Sky) exposure.Setting {
 	f := w.forecast(p, at)
@@ -134,6 +145,10 @@ func (w *Want) setting(n *Night, p *Prepared, at astro.Instant, place *frame.Pla
 // SettingAt is what an exposure of a target is worked out from at the instant
 // of a scene, for all that exposure and finding have to say beyond the answer.
 //
+// Notes:
+//  1. A slit that is not wanted by its width is the one that suits the image at
+//     the least airmass of the night, all night long: moments can be compared.
+//
 // Returns:
 //   - false where no exposure is wanted, or the target is below the horizon.
 //
@@ -142,6 +157,7 @@ func SettingAt(s *Scene, p *Prepared, m *Moment, w Want) (exposure.Setting, bool
 	if w.Goal == nil || !m.AirOK {
 		return exposure.Setting{}, false
 	}
+	w = w.with(m.Course.slit)
 	return w.setting(s.Night, p, s.Instant, &m.Place, m.Airmass, s.Sky), true
 }
 

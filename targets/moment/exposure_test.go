@@ -75,6 +75,9 @@ func TestExposureAgrees(t *testing.T) {
 			f = p.Light.At(at, light.Ask{Level: w.Level})
 		}
 		g := *w.Goal
+		if g.SlitArcsec == 0 {
+			g.SlitArcsec = c.slit
+		}
 		g.CycleS, g.Level = exposure.CycleOf(&p.Target), w.Level
 		want := exposure.Solve(exposure.Setting{Instrument: w.Instrument, Mode: w.Mode, Goal: g,
 			Source: exposure.SourceOf(&p.Target, f.Band, spreadOf(f), exposure.ColoursOf(&p.Target)),
@@ -123,7 +126,7 @@ func TestBestByExposure(t *testing.T) {
 		for _, span := range c.windows() {
 			for at := span.From; at.Before(span.Until); at = at.Add(3 * time.Minute) {
 				f := frame.At(n.Site, at)
-				if q := tr.cost(p, w, look{f.Look(f.Observed(&p.Star)), &f, nil}, at); q.err == nil {
+				if q := tr.cost(p, w.with(c.slit), look{f.Look(f.Observed(&p.Star)), &f, nil}, at); q.err == nil {
 					least = math.Min(least, q.clockS)
 				}
 			}

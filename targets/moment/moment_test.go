@@ -190,7 +190,7 @@ func TestCurve(t *testing.T) {
 	n, stars := testNight(t, targets.DefaultLimits()), testStars(t)
 	for i := 0; i < len(stars); i += 51 {
 		span := astro.Span{From: n.Midnight.Add(-3 * time.Hour), Until: n.Midnight.Add(173 * time.Minute)}
-		points := Curve(n, &stars[i], Want{}, span)
+		points := Curve(n, &stars[i], &Course{}, Want{}, span)
 		if last := points[len(points)-1].At; last.Sub(span.Until) != 0 {
 			t.Errorf("%s: ends at %v", stars[i].Target.Name, last.UTC())
 		}

@@ -100,6 +100,14 @@ func Short(m *moment.Moment) []string {
 	return out
 }
 
+// Brief is frames times seconds and the mode alone; "" without an exposure.
+func Brief(m *moment.Moment) string {
+	if !m.ExposureOK {
+		return ""
+	}
+	return Frames(&m.Exposure) + " in " + m.Exposure.Mode
+}
+
 // Exposure says how long to expose and how to set the slit.
 //
 // Returns:

@@ -96,7 +96,7 @@ func New(src Source, now time.Time) (*Desk, []Task) {
 	d.w = kit.World{Look: src.Look, Site: src.Site, Title: src.Title, Demo: src.Demo, Zone: src.Zone, HandOver: src.HandOver,
 		Band: src.Band, Level: src.Level, Fixed: src.Fixed, Selected: -1, Place: -1, Wall: now, Shown: now, Live: true,
 		Marks: map[int]bool{}, Width: 80, Height: 24, Ticks: src.Every > 0,
-		Book: src.Book, Observer: src.Observer, Requests: src.Requests, Limits: src.Limits, ClockWords: src.ClockWords, Lives: src.Lives, Lights: src.Lights, Night: src.Night}
+		Book: src.Book, Observer: src.Observer, Requests: src.Requests, Limits: src.Limits, ClockWords: src.ClockWords, Lives: src.Lives, Lights: src.Lights, Night: src.Night, Field: src.Field}
 	if !src.Start.IsZero() {
 		d.w.Shown, d.w.Live = src.Start, false
 	}

@@ -40,6 +40,9 @@ var scenes = []struct {
 	{"own_time", []string{"}", "}", ">"}},
 	{"star", []string{"j", "j", "enter"}},
 	{"star_below", []string{"G", "enter", "d"}},
+	{"exposure_next", nil},
+	{"exposure_star", []string{"/", "g", "d", "enter", "enter"}},
+	{"exposure_more", []string{"j", "enter", "d"}},
 	{"diagram", []string{"j", "m", "j", "j", "h"}},
 	{"diagram_colour", []string{"j", "j", "j", "h", "h"}},
 	{"diagram_zoomed", []string{"G", "h", ",", "m", "+", "+", "left"}},
@@ -67,7 +70,12 @@ func TestGolden(t *testing.T) {
 	dir := filepath.Join(corecheck.Root(t), "testdata", "screens")
 	src := check.Source(t, 5)
 	src.Copy = func(string) (string, error) { return "the clipboard", nil }
+	equipped := check.Equipped(t, 5)
 	for _, s := range scenes {
+		src := src
+		if strings.HasPrefix(s.name, "exposure") {
+			src = equipped
+		}
 		check.Logged(t, &src, "observer 1")
 		d := check.New(t, src, 80, 24)
 		d.Press(s.keys...)

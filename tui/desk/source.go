@@ -46,6 +46,9 @@ type Source struct {
 	// for.
 	Requests []targets.Request
 	Request  func(target string) (targets.Request, bool)
+	// Field lists the neighbours of the run's targets; called from tasks. nil:
+	// none are listed.
+	Field func() []targets.Target
 	// Readout returns the time between frames of an instrument, seconds; nil: 0.
 	Readout func(instrument string) float64
 	// Changed tells that other conditions hold; nights made from then on are

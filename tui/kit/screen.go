@@ -54,6 +54,8 @@ type World struct {
 
 	// Night prepares a night; asked in tasks.
 	Night func(astro.Date) (*moment.Night, error)
+	// Field lists the neighbours of the run's targets; nil: none are.
+	Field func() []targets.Target
 	// Lights is where forecasts and dates come from; nil: the targets' own.
 	Lights Lights
 	// Coming is what the selected target does next, from the moment shown on.

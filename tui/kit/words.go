@@ -34,7 +34,8 @@ var shortReasons = map[targets.Code]string{
 	targets.CodeAltitude: "too low", targets.CodeHorizon: "behind the horizon", targets.CodeZenith: "near the zenith",
 	targets.CodeHourAngle: "hour angle", targets.CodeDeclination: "declination", targets.CodeMoon: "near the Moon",
 	targets.CodeWind: "wind", targets.CodeWindow: "not our hours", targets.CodeClosed: "closed",
-	targets.CodeInstrument: "not mounted", targets.CodeCloud: "cloud",
+	targets.CodeInstrument: "not mounted", targets.CodeCloud: "cloud", targets.CodeSeeing: "seeing", targets.CodeSky: "sky too bright",
+	targets.CodeExtinction: "not clear", targets.CodeSaturates: "saturates", targets.CodeTooFaint: "too faint",
 }
 
 // FirstReason shortens the most telling block for a list.

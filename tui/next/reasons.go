@@ -2,12 +2,14 @@ package next
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 	"time"
 
 	"evenfall/targets"
 	"evenfall/targets/light"
 	"evenfall/targets/moment"
+	"evenfall/targets/taking"
 	"evenfall/tui/kit"
 )
 
@@ -44,7 +46,8 @@ func reasons(w *kit.World, p *kit.Pen, lines int) {
 	} else if len(later) > 0 {
 		is, later = append([]string{later[0]}, is...), later[1:]
 	}
-	for _, clauses := range [][]string{why(w, m), is, brightness(m)} {
+	reason, is := how(m, why(w, m), is, p.Width(), lines <= 3)
+	for _, clauses := range [][]string{reason, is, brightness(m)} {
 		room := lines - (p.Lines() - from)
 		if room <= 0 {
 			return
@@ -65,6 +68,27 @@ func reasons(w *kit.World, p *kit.Pen, lines int) {
 			p.Put(kit.Text, line).Line()
 		}
 	}
+}
+
+// how puts the exposure behind the reason. Where lines are dear it is but
+// frames times seconds, on the line that has room; the columns say when the star
+// is best.
+func how(m *moment.Moment, why, is []string, width int, brief bool) (first, second []string) {
+	switch {
+	case !m.InCan || len(taking.Short(m)) == 0:
+	case !brief:
+		why = append(slices.Clone(why), taking.Short(m)...)
+	default:
+		text := taking.Brief(m)
+		if text == "" {
+			break
+		}
+		if len(why[0])+2+len(text) <= width {
+			return []string{why[0], text}, is
+		}
+		return why, append([]string{text}, is...)
+	}
+	return why, is
 }
 
 // short wraps a text onto at most two lines.

@@ -79,13 +79,17 @@ func (w *writer) dim(format string, a ...any) {
 }
 
 // known writes down everything known of a star, what decides first.
-func known(sc *moment.Scene, p *moment.Prepared, m *moment.Moment, st *stage.Study, next []light.Event) ([]Line, error) {
+func known(sc *moment.Scene, p *moment.Prepared, m *moment.Moment, st *stage.Study, next []light.Event, taken [][]Line) ([]Line, error) {
 	var w writer
 	w.stage(m, st)
 	w.light(next, m)
+	w.lines = append(w.lines, taken[0]...)
 	w.madeOf(st)
 	w.missing(m)
 	w.night(m)
+	for _, part := range taken[1:] {
+		w.lines = append(w.lines, part...)
+	}
 	w.sky(m)
 	w.evidence(m)
 	err := w.listed(&p.Target)
@@ -197,6 +201,8 @@ var kept = map[targets.Code]string{
 	targets.CodeAltitude: "high enough", targets.CodeHorizon: "above the site's horizon", targets.CodeZenith: "clear of the zenith",
 	targets.CodeHourAngle: "hour angle allowed", targets.CodeDeclination: "declination allowed", targets.CodeMoon: "far enough from the Moon",
 	targets.CodeWind: "out of the wind", targets.CodeCloud: "out of the cloud", targets.CodeWindow: "in our hours", targets.CodeClosed: "open", targets.CodeInstrument: "instrument mounted",
+	targets.CodeSky: "dark enough", targets.CodeSeeing: "sharp enough", targets.CodeExtinction: "clear enough", targets.CodeSaturates: "does not saturate",
+	targets.CodeTooFaint: "bright enough",
 }
 
 func (w *writer) night(m *moment.Moment) {

@@ -122,16 +122,16 @@ func (s Screen) Refresh(w *kit.World) (kit.Screen, kit.Job) {
 		s.detail = nil
 	}
 	s.asked = want
-	r, row, handOver, lights := w.Snap.Roster, w.Selected, w.HandOver, kit.LightsOf(w)
+	r, row, handOver, lights, neighbours := w.Snap.Roster, w.Selected, w.HandOver, kit.LightsOf(w), w.Field
 	return s, kit.Work{Name: "looking at " + w.Entry().Target.Name, Run: func(ctx context.Context) (kit.Result, error) {
 		m := r.Moment(&sc, row)
 		p := r.Prepared(row)
 		d := &Detail{Row: row, Name: p.Target.Name, Scene: sc, Moment: m, asked: want}
 		d.HandOver = handOver.Lines(&p.Target, &m, p.Drift)
-		d.Curve = moment.Curve(sc.Night, p, r.Want(sc.Night, row), kit.Stretch(sc.Night))
+		d.Curve = moment.Curve(sc.Night, p, r.Course(sc.Night, row), r.Want(sc.Night, row), kit.Stretch(sc.Night))
 		var err error
 		st := r.Study(row)
-		d.Known, err = known(&sc, p, &m, &st, lights.Next(p, m.At))
+		d.Known, err = known(&sc, p, &m, &st, lights.Next(p, m.At), howTaken(&sc, r, row, &m, neighbours))
 		return d, err
 	}}
 }

@@ -5,7 +5,7 @@ import (
 	"strings"
 
 	"evenfall/astro"
-	"evenfall/targets/moment"
+	"evenfall/targets/taking"
 	"evenfall/tui/kit"
 )
 
@@ -48,6 +48,9 @@ func (s Screen) full(width, height int) layout {
 	rest := height - l.header
 	if s.detail != nil {
 		rest -= len(handOver(s.detail, width)) + 1
+		if len(taking.Short(&s.detail.Moment)) > 0 {
+			rest--
+		}
 	}
 	switch {
 	case height >= tall:
@@ -119,6 +122,9 @@ func (s Screen) draw(w *kit.World, p *kit.Pen, l layout, d *Detail, height int) 
 	if p.Lines() < height {
 		summary(w, p, d)
 	}
+	if how := taking.Short(&d.Moment); len(how) > 0 && p.Lines() < height {
+		exposureLine(p, d, how)
+	}
 	if l.curve > 0 {
 		lanes(p, d, l.curve)
 	}
@@ -162,27 +168,32 @@ func summary(w *kit.World, p *kit.Pen, d *Detail) {
 	p.Line()
 }
 
-// lowestAirmass and highestAirmass are the ends of the lane: 1 at the top.
-const (
-	lowestAirmass  = 1.0
-	highestAirmass = 3.0
-)
+// exposureLine says how long to expose, in as many whole clauses as fit.
+func exposureLine(p *kit.Pen, d *Detail, how []string) {
+	role := kit.Text
+	if !d.Moment.ExposureOK {
+		role = kit.Warn
+	}
+	text := how[0]
+	for _, c := range how[1:] {
+		if len(text)+2+len(c) <= p.Width() {
+			text += "; " + c
+		}
+	}
+	p.Put(role, kit.Cut(text, p.Width())).Line()
+}
 
-// lanes draws the night's course: what the star costs in airmass, when it may
-// be taken, how dark it is, when the Moon is up.
+// lanes draws the night's course: what the star costs, when it may be taken,
+// how dark it is, when the Moon is up.
 func lanes(p *kit.Pen, d *Detail, rows int) {
 	n := d.Scene.Night
 	span := kit.Stretch(n)
 	columns := max(p.Width()-labels-1, 10)
 	canvas := kit.NewCanvas(columns, rows)
-	trace(canvas, d.Curve, span, columns, rows)
+	sc := scaleOf(d.Curve)
+	trace(canvas, d.Curve, sc, span, columns, rows)
 	for r := range rows {
-		value := lowestAirmass + (highestAirmass-lowestAirmass)*float64(r)/float64(rows)
-		label := fmt.Sprintf("%5.1f|", value)
-		if r == 0 {
-			label = fmt.Sprintf("X %3.1f|", value)
-		}
-		p.Put(kit.Dim, label)
+		p.Put(kit.Dim, sc.label(float64(r)/float64(rows), r == 0))
 		canvas.Row(p, r)
 		p.Line()
 	}
@@ -209,27 +220,6 @@ func lanes(p *kit.Pen, d *Detail, rows int) {
 	p.Put(kit.Dim, "  UTC|")
 	kit.HourLine(p, span, columns, d.Scene.Instant)
 	p.Line()
-}
-
-// trace draws the curve of airmass.
-func trace(c *kit.Canvas, curve []moment.Point, span astro.Span, columns, rows int) {
-	length := span.Length().Seconds()
-	dot := func(pt *moment.Point) (x, y int, ok bool) {
-		if !pt.AirOK || float64(pt.Airmass) > highestAirmass || length <= 0 {
-			return 0, 0, false
-		}
-		x = int(pt.At.Sub(span.From).Seconds() / length * float64(2*columns))
-		y = int((float64(pt.Airmass) - lowestAirmass) / (highestAirmass - lowestAirmass) * float64(4*rows))
-		return min(x, 2*columns-1), min(max(y, 0), 4*rows-1), true
-	}
-	px, py, was := 0, 0, false
-	for i := range curve {
-		x, y, ok := dot(&curve[i])
-		if ok && was {
-			c.Line(px, py, x, y, kit.Curve)
-		}
-		px, py, was = x, y, ok
-	}
 }
 
 // takeLane draws = where the star should and - where it merely can be taken, b
