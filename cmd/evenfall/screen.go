@@ -133,7 +133,7 @@ func (s *session) source(o *options) desk.Source {
 	byTarget, wishes := s.magnitudesByTarget(), s.wishes()
 	entries := make([]roster.Entry, len(s.targets))
 	for i := range s.targets {
-		entries[i] = roster.Entry{Target: s.targets[i], Magnitudes: byTarget[i], Want: s.want(o, wishes, s.night.Date, i, s.targets[i].Kind)}
+		entries[i] = roster.Entry{Target: s.targets[i], Magnitudes: byTarget[i], Phases: s.phases(i), Want: s.want(o, wishes, s.night.Date, i, s.targets[i].Kind)}
 	}
 	wants := func(n *moment.Night, i int, e *roster.Entry) moment.Want {
 		if n.Date == s.night.Date && !e.Session {
@@ -149,6 +149,20 @@ func (s *session) source(o *options) desk.Source {
 		src.Start = s.at.UTC()
 	}
 	return src
+}
+
+// phases are the windows of phase that requests want a target in.
+func (s *session) phases(i int) [][2]float64 {
+	t := &s.targets[i]
+	var out [][2]float64
+	for k := range s.requests {
+		q := &s.requests[k]
+		key := targets.Key(q.Target)
+		if q.PhaseFrom.Known && q.PhaseTo.Known && key != "" && (key == targets.Key(t.Name) || key == targets.Key(t.ID)) {
+			out = append(out, [2]float64{q.PhaseFrom.Value, q.PhaseTo.Value})
+		}
+	}
+	return out
 }
 
 // openLog opens run.db of the run folder; the demonstration and places without

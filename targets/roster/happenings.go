@@ -55,7 +55,7 @@ func (r *Roster) Happenings(ctx context.Context, rows []int32, site astro.Site, 
 		if k%checkEvery == 0 && ctx.Err() != nil {
 			return nil, fmt.Errorf("dating what %d targets do: %w", len(rows), ctx.Err())
 		}
-		for _, e := range dates(int(row), span.From, span.Until) {
+		for _, e := range append(dates(int(row), span.From, span.Until), r.phases(int(row), site, span)...) {
 			if span.Contains(e.At) {
 				out = append(out, Happening{Row: row, Event: e, Night: ephem.DateAt(site, e.At.UTC())})
 			}
@@ -63,6 +63,18 @@ func (r *Roster) Happenings(ctx context.Context, rows []int32, site astro.Site, 
 	}
 	SortHappenings(out)
 	return out, nil
+}
+
+// phases dates the windows of phase that requests want a target in; none where
+// its phase is not known.
+func (r *Roster) phases(row int, site astro.Site, span astro.Span) []light.Event {
+	var out []light.Event
+	for _, p := range r.entries[row].Phases {
+		if list, err := r.Prepared(row).Light.PhaseWindows(site, p[0], p[1], span.From, span.Until); err == nil {
+			out = append(out, list...)
+		}
+	}
+	return out
 }
 
 // SortHappenings puts happenings into the order of time; of the same instant,

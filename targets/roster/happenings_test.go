@@ -3,11 +3,13 @@ package roster
 import (
 	"context"
 	"errors"
+	"math"
 	"slices"
 	"testing"
 	"time"
 
 	"evenfall/astro"
+	"evenfall/astro/timescale"
 	"evenfall/targets"
 	"evenfall/targets/light"
 	"evenfall/targets/moment"
@@ -123,5 +125,35 @@ func TestWithMagnitudes(t *testing.T) {
 	}
 	if n.Len() != r.Len() || n.byName[3] != r.byName[3] {
 		t.Error("another list")
+	}
+}
+
+// A request's window of phase is dated, with its beginning and end.
+func TestHappeningsPhases(t *testing.T) {
+	list := []Entry{{Want: moment.Want{Weight: 1, Level: 0.8}, Phases: [][2]float64{{0.9, 0.1}},
+		Target: targets.Target{Name: "a", Kind: targets.Interacting, Place: targets.Place{RA: astro.Deg(50), Dec: astro.Deg(-20), EpochJyr: 2000},
+			Var: targets.Variability{Type: "EA", PeriodD: targets.KnownErr(0.5, 1e-9), EpochMinJD: targets.KnownErr(2461000.25, 1e-5), TimeScale: "BJD_TDB"}}}}
+	r := New(list, sharedModels(), nil)
+	site := astro.Site{Lat: astro.Deg(-29), Lon: astro.Deg(-70), HeightM: 2400, Air: astro.DefaultWeather(2400)}
+	from, err := timescale.At(time.Date(2026, 12, 1, 17, 0, 0, 0, time.UTC))
+	if err != nil {
+		t.Fatal(err)
+	}
+	got, err := r.Happenings(context.Background(), []int32{0}, site, astro.Span{From: from, Until: from.Add(24 * time.Hour)}, nil)
+	if err != nil {
+		t.Fatal(err)
+	}
+	phases := 0
+	for _, h := range got {
+		if h.Kind != "phase" {
+			continue
+		}
+		phases++
+		if h.Start == nil || h.End == nil || math.Abs(h.End.Sub(*h.Start).Hours()-0.2*12) > 0.01 {
+			t.Errorf("window %+v", h)
+		}
+	}
+	if phases < 2 || phases > 3 {
+		t.Errorf("%d windows of phase in a day of two cycles", phases)
 	}
 }

@@ -25,7 +25,8 @@ type Entry struct {
 	Target     targets.Target
 	Magnitudes []targets.Magnitude
 	Want       moment.Want
-	Session    bool // typed in on the screen, kept for the session
+	Phases     [][2]float64 // from and to, cycles, that requests want it in
+	Session    bool         // typed in on the screen, kept for the session
 }
 
 // Wants returns what a target is wanted with in a night, as instruments may
