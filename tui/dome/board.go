@@ -189,7 +189,7 @@ func (b *board) stars(spots []spot) {
 	for _, at := range order {
 		c := cells[at]
 		if col := at%b.vault.cols + 1; col < b.vault.cols && !b.taken[at+1] && (2*c.rising >= c.n || c.rising == 0) {
-			b.force(col, at/b.vault.cols, kit.Dim, kit.Sense(c.rising > 0))
+			b.force(col, at/b.vault.cols, kit.Text, kit.Sense(c.rising > 0))
 		}
 	}
 }
@@ -221,8 +221,8 @@ func (b *board) scale() {
 		if x, err := air.Mass(astro.Deg(alt)); err == nil {
 			mass = fmt.Sprintf("X %.1f", float64(x))
 		}
-		if from-len(text)-1 >= 0 && to+len(mass)+2 <= b.vault.cols && b.write(from-len(text)-1, row, kit.Dim, text) {
-			b.write(to+2, row, kit.Dim, mass)
+		if from-len(text)-2 >= 0 && to+len(mass)+3 <= b.vault.cols && b.write(from-len(text)-2, row, kit.Dim, text) {
+			b.write(to+3, row, kit.Dim, mass)
 			last = row
 		}
 	}

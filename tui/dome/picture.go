@@ -57,12 +57,13 @@ type picture struct {
 // shade is a sign and how many magnitudes brighter than the darkest place the
 // sky is from where on it stands.
 type shade struct {
-	sign byte
-	from float64
+	sign  byte
+	from  float64
+	every int // columns
 }
 
 // shading is in steps that the eye sees: half a magnitude, then one and more.
-var shading = []shade{{'.', 0.4}, {':', 1}, {'=', 2}, {'#', 3.5}}
+var shading = []shade{{'.', 0.4, 8}, {':', 1, 6}, {'=', 2, 4}, {'#', 3.5, 2}}
 
 // nearest returns the target nearest to a direction; -1: none is up.
 func (p *picture) nearest(dir astro.Vec) (i int, away astro.Angle) {
@@ -148,7 +149,8 @@ func (p *picture) shadeSky(b *board, sc *moment.Scene) {
 				}
 				continue
 			}
-			if c := shadeOf(p.darkest - values[i]); c != 0 && (col+2*row)%4 == 0 {
+			c, every := shadeOf(p.darkest - values[i])
+			if c != 0 && (col+row*every/2)%every == 0 {
 				b.canvas.Text(col, row, kit.Dark, string(c))
 				used[c] = true
 			}
@@ -161,14 +163,14 @@ func (p *picture) shadeSky(b *board, sc *moment.Scene) {
 	}
 }
 
-func shadeOf(brighter float64) byte {
-	sign := byte(0)
+func shadeOf(brighter float64) (sign byte, every int) {
+	every = 1
 	for _, s := range shading {
 		if brighter >= s.from {
-			sign = s.sign
+			sign, every = s.sign, s.every
 		}
 	}
-	return sign
+	return sign, every
 }
 
 // zones are the parts of the sky that limits and conditions take away.

@@ -190,7 +190,7 @@ func ascii(s string) string {
 func (s Screen) below(w *kit.World, m *moment.Moment, width, lines int) []words {
 	out := []words{s.heading(w, m)}
 	if cursor := s.cursorWords(w); cursor != nil {
-		out = append(out, cursor)
+		out = append(out, broken(cursor, width)...)
 	}
 	if m != nil {
 		for _, line := range limitWords(&w.Snap.Scene, m) {
@@ -200,22 +200,43 @@ func (s Screen) below(w *kit.World, m *moment.Moment, width, lines int) []words 
 	return out[:min(len(out), lines)]
 }
 
-// broken breaks a line that does not fit.
+// broken breaks a line that does not fit at its blanks; later lines are
+// indented.
 func broken(line words, width int) []words {
-	n := 0
+	out := []words{nil}
+	used := 0
 	for _, p := range line {
-		n += len(p.text)
-	}
-	if n <= width {
-		return []words{line}
-	}
-	var out []words
-	for _, p := range line {
-		for _, t := range kit.Break(strings.TrimSpace(p.text), width, 2) {
-			out = append(out, words{{p.role, t}})
+		gap := len(p.text) - len(strings.TrimLeft(p.text, " "))
+		for k, word := range strings.Fields(p.text) {
+			blank := min(gap, 2)
+			if k > 0 {
+				blank = 1
+			}
+			if used > 0 && used+blank+len(word) > width {
+				out, used, blank = append(out, nil), 0, 2
+			}
+			last := &out[len(out)-1]
+			*last = append(*last, piece{p.role, strings.Repeat(" ", blank) + word})
+			used += blank + len(word)
 		}
 	}
-	return out
+	return joined(out)
+}
+
+// joined puts pieces of one role together.
+func joined(lines []words) []words {
+	for i, line := range lines {
+		var out words
+		for _, p := range line {
+			if n := len(out); n > 0 && out[n-1].role == p.role {
+				out[n-1].text += p.text
+			} else {
+				out = append(out, p)
+			}
+		}
+		lines[i] = out
+	}
+	return lines
 }
 
 // panel writes the lines beside the sky.

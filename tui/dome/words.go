@@ -78,12 +78,12 @@ func limitWords(sc *moment.Scene, m *moment.Moment) []words {
 	}
 	var coming []change
 	for _, l := range m.Course.HardLimits() {
-		if !blocked[l.Code] {
+		if !blocked[l.Code] && l.Code != targets.CodeBelow { // too low comes first
 			coming = append(coming, begins(sc, l)...)
 		}
 	}
 	if flip, ok := m.Course.Flip(); ok && flip.Until.After(sc.Instant) {
-		coming = append(coming, change{flip.From, fmt.Sprintf("mount turns over %s-%s", kit.Clock(flip.From), kit.Clock(flip.Until))})
+		coming = append(coming, change{flip.From, fmt.Sprintf("%s-%s mount turns over", kit.Clock(flip.From), kit.Clock(flip.Until))})
 	}
 	slices.SortStableFunc(coming, func(a, b change) int { return a.at.UTC().Compare(b.at.UTC()) })
 	if len(m.BlockedBy) == 0 {
@@ -101,7 +101,15 @@ func limitWords(sc *moment.Scene, m *moment.Moment) []words {
 		for i := range coming {
 			parts[i] = coming[i].text
 		}
-		out = append(out, words{{kit.Text, "then " + strings.Join(parts, "; ")}})
+		text := strings.Join(parts, ", ")
+		if !strings.Contains(parts[0][:min(6, len(parts[0]))], "-") {
+			text = "from " + text
+		}
+		if len(m.BlockedBy) == 0 {
+			out[0] = append(out[0], piece{kit.Text, "; " + text})
+		} else {
+			out = append(out, words{{kit.Text, text}})
+		}
 	}
 	return out
 }
@@ -112,15 +120,15 @@ func begins(sc *moment.Scene, l moment.LimitTimes) []change {
 		if !k.Contains(sc.Instant) || !k.Until.Before(sc.Night.Span.Until) {
 			continue
 		}
-		until := "on"
+		when := kit.Clock(k.Until)
 		if i+1 < len(l.Kept) {
-			until = "to " + kit.Clock(l.Kept[i+1].From)
+			when = kit.Clock(k.Until) + "-" + kit.Clock(l.Kept[i+1].From)
 		}
 		name := kit.ShortReason(l.Code)
-		if l.Code == targets.CodeZenith {
+		if l.Code == targets.CodeZenith && sc.Night.Limits.Mount == "altaz" {
 			name = "zenith keyhole"
 		}
-		return []change{{k.Until, fmt.Sprintf("%s %s %s", kit.Clock(k.Until), until, name)}}
+		return []change{{k.Until, when + " " + name}}
 	}
 	return nil
 }
@@ -138,15 +146,15 @@ func (s Screen) cursorWords(w *kit.World) words {
 	if x, err := air.Mass(astro.Deg(alt)); err == nil {
 		text += fmt.Sprintf("  X %.2f", float64(x))
 	}
-	text += fmt.Sprintf("  %s  Moon %.0f deg", skyWords(&now), astro.Separation(p.Dir, sc.Moon.Dir).Deg())
+	text += fmt.Sprintf("  %s  Moon %.0f", skyWords(&now), astro.Separation(p.Dir, sc.Moon.Dir).Deg())
 	out := words{{kit.Key, text}}
-	if s.pic != nil {
-		if i, away := s.pic.nearest(p.Dir); i >= 0 && int(s.pic.spots[i].row) < w.Snap.Roster.Len() {
-			out = append(out, piece{kit.Text, fmt.Sprintf("  nearest %s, %.1f deg", w.Snap.Roster.Entry(int(s.pic.spots[i].row)).Target.Name, away.Deg())})
-		}
-	}
 	if why := forbids(sc, &p, alt); why != "" {
 		out = append(out, piece{kit.Warn, "  " + why})
+	}
+	if s.pic != nil {
+		if i, away := s.pic.nearest(p.Dir); i >= 0 && int(s.pic.spots[i].row) < w.Snap.Roster.Len() {
+			out = append(out, piece{kit.Text, fmt.Sprintf("  nearest %s %.1f deg", w.Snap.Roster.Entry(int(s.pic.spots[i].row)).Target.Name, away.Deg())})
+		}
 	}
 	return out
 }
@@ -165,7 +173,7 @@ func forbids(sc *moment.Scene, p *frame.Place, altDeg float64) string {
 	case len(l.Horizon) > 0 && altDeg < moment.HorizonAt(l.Horizon, p.Az).Deg():
 		return "behind the horizon"
 	case altDeg > moment.Top(l, sc.Night.Site.Lat).Deg():
-		return fmt.Sprintf("zenith keyhole, limit %.1f", moment.Top(l, sc.Night.Site.Lat).Deg())
+		return fmt.Sprintf("near the zenith, limit %.1f", moment.Top(l, sc.Night.Site.Lat).Deg())
 	case h < l.HourAngleH[0] || h > l.HourAngleH[1]:
 		return fmt.Sprintf("hour angle %+.1f h", h)
 	case p.Dec.Deg() < l.DeclinationDeg[0] || p.Dec.Deg() > l.DeclinationDeg[1]:
@@ -205,7 +213,7 @@ func (s Screen) corner(w *kit.World) (left, right []string) {
 
 // legend says what the signs mean, for screens with room.
 func (s Screen) legend(w *kit.World) []string {
-	out := []string{"letters: stages as on the diagram, capitals for several", "+ rises, - sinks; [ ] selected; its path with hours UTC", "numbers: V mag per square arcsec; left altitude, right airmass", "dots: least altitude, hour angle; Z zenith and keyhole"}
+	out := []string{"letters: stages as on the diagram, capitals for several", "+ rises, - sinks; [ ] selected; its path with hours UTC", "numbers: V mag per square arcsec; left altitude, right airmass", "dots: least altitude, limits of the hour angle, horizon; Z zenith, in dots how near it one may go"}
 	if s.pic == nil {
 		return out
 	}

@@ -64,6 +64,8 @@ var signs = []string{
 	"events: +- one sigma, X: airmass; observe: can, or what forbids it at that instant; status: assumed where an error of the elements had to be, expired where it is uncertain by over a tenth of the period, past",
 	"diagram: m main sequence, s subgiant, g red giant, c clump, h horizontal branch, e t early and pulsing AGB, p past it, n k nebula and kernel,",
 	"  b subdwarf, w white dwarf, r massive, a accretes, ? undecided; a capital: several; [ ] the selected star with 68 % bars, +3: three more in its cell; the track follows when you rest on it",
+	"dome: the sky as an arch, Z the zenith, the horizon below, each cell the same piece of sky; letters as on the diagram, + rises - sinks, [ ] the selected star and its path with hours UTC, { } the cursor, (M) Moon, (S) Sun;",
+	"  numbers: V mag per square arcsec, shades by how much brighter than the darkest place; altitude at the left edge, airmass at the right; dots: limits; x near the Sun, o near the Moon, ~ cloud, / wind",
 	"filter: words that must occur, and conditions such as kind=wd alt>35 x<1.5 V<16 stage=TPAGB moon>60 left>90 mark=yes; = != < <= > >=",
 	"  columns: kind stage ends mark alt x moon sun ha ra dec mag sb left best bestx period, and bands of magnitudes",
 	"NOT NOW: the moment shown is one of your own; n goes back to the clock",

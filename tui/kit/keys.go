@@ -142,7 +142,7 @@ var Bindings = []Binding{
 	{NearRight, []string{"right", ")"}, "right, )", "", "the nearest on the right: cooler, redder", []string{OnDiagram}},
 	{NearUp, []string{"k", "up"}, "k, up", "", "the nearest above: more luminous", []string{OnDiagram}},
 	{NearDown, []string{"j", "down"}, "j, down", "", "the nearest below: fainter", []string{OnDiagram}},
-	{CursorLeft, []string{"left", "("}, "left, (", "arrows cursor", "the cursor over the sky: azimuth, altitude, airmass, brightness and distance from the Moon there; enter selects the nearest target", []string{OnDome}},
+	{CursorLeft, []string{"left", "("}, "arrows, (", "cursor", "a cursor over the sky, left, right, up, down: azimuth, altitude, airmass, brightness, distance from the Moon there; enter selects the nearest target", []string{OnDome}},
 	{CursorRight, []string{"right", ")"}, "right, )", "", "the cursor to the right", []string{OnDome}},
 	{CursorUp, []string{"up", "K"}, "up, K", "", "the cursor up", []string{OnDome}},
 	{CursorDown, []string{"down", "J"}, "down, J", "", "the cursor down", []string{OnDome}},
