@@ -73,7 +73,7 @@ func TestExposures(t *testing.T) {
 	if err := json.Unmarshal([]byte(r.out), &show); err != nil || show.Exposure == nil {
 		t.Fatalf("%v %s", err, r.err)
 	}
-	if !slices.ContainsFunc(show.Steps, func(s jsonStep) bool { return strings.Contains(strings.ToLower(s.What), "s/n") }) {
+	if !slices.ContainsFunc(show.Steps, func(s jsonStep) bool { return s.What == "signal to noise" }) {
 		t.Error("no step leads to the S/N")
 	}
 	os.MkdirAll(filepath.Join(dir, "field"), 0o755)

@@ -70,8 +70,11 @@ func (c *costing) costAt(at astro.Instant) price {
 // beforeEnd is how long before the end of a window still belongs to it.
 const beforeEnd = time.Millisecond
 
-// work finds the prices at the nodes inside the windows, and at the windows'
-// ends, and closes the times at which nothing can be exposed. That the brightness
+// everyNode is how many of the night's nodes go by between two prices: the cost
+// follows airmass, Moon and twilight, which are smooth over 20 minutes.
+const everyNode = 2
+
+// work finds the prices at nodes inside the windows, and at the windows' ends, and closes the times at which nothing can be exposed. That the brightness
 // is not known, or something of the instrument, closes nothing.
 func (c *costing) work(course *Course) {
 	if c.w.Goal == nil {
@@ -79,7 +82,7 @@ func (c *costing) work(course *Course) {
 	}
 	for _, w := range course.Can {
 		c.prices = append(c.prices, c.costAt(w.From))
-		for i := range c.night.nodes {
+		for i := 0; i < len(c.night.nodes); i += everyNode {
 			if n := &c.night.nodes[i]; n.at.After(w.From) && n.at.Before(w.Until) {
 				c.prices = append(c.prices, c.cost(c.p, c.w, look{c.places[i], &n.frame, n}, n.at))
 			}
@@ -173,6 +176,13 @@ func (c *costing) best(course *Course) bool {
 	}
 	if least == nil {
 		return false
+	}
+	middle := least.at
+	for _, by := range []time.Duration{-nodeStep, -nodeStep / 2, nodeStep / 2, nodeStep} {
+		at := middle.Add(by)
+		if _, ok := within(course.windows(), at); ok {
+			try(c.costAt(at))
+		}
 	}
 	at := least.at
 	course.Best, course.BestS = &at, least.clockS
