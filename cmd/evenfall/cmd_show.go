@@ -12,6 +12,7 @@ import (
 	"evenfall/targets"
 	"evenfall/targets/moment"
 	"evenfall/targets/stage"
+	"evenfall/targets/taking"
 	"evenfall/tui/kit"
 )
 
@@ -239,7 +240,7 @@ func (v view) nightText(b *strings.Builder) {
 	write("can", m.Course.Can)
 	write("should", m.Course.Should)
 	if m.Course.Best != nil {
-		fmt.Fprintf(b, "  best    %s at airmass %.2f, altitude %.1f deg\n", hm(*m.Course.Best), float64(m.Course.BestAirmass), m.Course.BestAltitude.Deg())
+		fmt.Fprintf(b, "  best    %s at airmass %.2f, altitude %.1f deg%s\n", hm(*m.Course.Best), float64(m.Course.BestAirmass), m.Course.BestAltitude.Deg(), taking.AtBest(m))
 	}
 	if m.WindowOK {
 		fmt.Fprintf(b, "  window until %s, ended by: %s\n", hm(m.Window.Until), m.EndsBy)

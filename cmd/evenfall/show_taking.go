@@ -49,6 +49,25 @@ func (s *session) field() []targets.Target {
 	return list
 }
 
+// standards says which standard goes with the target, and which serves most of
+// the list.
+func (v view) standards() []taking.Line {
+	list := v.s.standardList()
+	out := taking.Standards(&v.s.scene, v.p, v.m, *v.w, list)
+	sort, ok := taking.WantsStandard(*v.w)
+	if !ok {
+		return out
+	}
+	all := make([]taking.Wanted, len(v.s.moments))
+	for i := range all {
+		all[i] = taking.Wanted{Prepared: &v.s.prepared[i], Moment: &v.s.moments[i], Want: v.s.wants[i]}
+	}
+	if text := taking.Serving(&v.s.scene, sort, *v.w, all, list); text != "" {
+		out = append(out, taking.Line{Text: text})
+	}
+	return out
+}
+
 // takingText prints how the target is taken.
 func (v view) takingText(b *strings.Builder) {
 	for _, part := range []struct {
@@ -57,7 +76,7 @@ func (v view) takingText(b *strings.Builder) {
 	}{
 		{"exposure", taking.Exposure(&v.s.scene, v.p, v.m, *v.w)},
 		{"finding", taking.Finding(&v.s.scene, v.p, v.m, *v.w, v.s.field())},
-		{"standards", taking.Standards(&v.s.scene, v.p, v.m, *v.w, v.s.standardList())},
+		{"standards", v.standards()},
 		{"flats at dusk and dawn", taking.Flats(v.s.night, *v.w)},
 	} {
 		if len(part.lines) == 0 {

@@ -58,7 +58,7 @@ type Course struct {
 //  1. Every edge is exact to a second: limits on refracted altitude are turned
 //     into airless ones, sampled every 10 minutes and closed in on.
 //  2. Best is the moment of least exposure time in the wished-for windows, or,
-//     where there are none, in the possible ones, to the nodes of the night; the
+//     where there are none, in the possible ones, to five minutes; the
 //     earlier of equals. Without an exposure, or where its time is given, it is
 //     that of least airmass.
 //

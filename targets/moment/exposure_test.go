@@ -95,8 +95,18 @@ func TestExposureAgrees(t *testing.T) {
 			a.SaturatesAt != want.SaturatesAt || a.LimitedBy != want.LimitedBy || a.SlitPA != want.SlitPA || a.SNR != want.SNR {
 			t.Errorf("%s: %+v, exposure says %+v", p.Target.Name, a, want)
 		}
-		if m.ExposureOK {
-			done++
+		if !m.ExposureOK {
+			continue
+		}
+		if done++; done > 5 {
+			continue
+		}
+		st := p.Study(Models{Stage: sharedModels().Stage})
+		steps, own := Steps(&s, p, &m, &st), m.Exposure.Steps()
+		for k, x := range own {
+			if got := steps[len(steps)-len(own)+k]; got != Step(x) || x.What == "" || x.Formula == "" || x.Inputs == "" || x.Result == "" || x.Source == "" {
+				t.Errorf("%s: step %+v", p.Target.Name, got)
+			}
 		}
 	}
 	t.Logf("%d exposures", done)

@@ -109,6 +109,47 @@ func Standards(s *moment.Scene, p *moment.Prepared, m *moment.Moment, w moment.W
 	return l
 }
 
+// Wanted is a target with what is wanted of it.
+type Wanted struct {
+	Prepared *moment.Prepared
+	Moment   *moment.Moment
+	Want     moment.Want
+}
+
+// Serving names the standard of a sort that serves most targets as they stand
+// now, exposed in the mode of one of them.
+//
+// Given:
+//   - all: the targets of the list; those that want no such standard, or cannot
+//     be taken, are passed over.
+//
+// Returns:
+//   - "" where fewer than two targets are served by one.
+//
+// Checked: TestStandard.
+func Serving(s *moment.Scene, sort string, w moment.Want, all []Wanted, list []*moment.Prepared) string {
+	var needs []exposure.Need
+	for _, q := range all {
+		if own, ok := WantsStandard(q.Want); ok && own == sort && q.Moment.InCan && q.Moment.AirOK {
+			needs = append(needs, exposure.Need{Name: q.Prepared.Target.Name, At: q.Moment.At, Airmass: float64(q.Moment.Airmass)})
+		}
+	}
+	if len(needs) < 2 {
+		return ""
+	}
+	var from []exposure.Candidate
+	for _, q := range list {
+		if exposure.IsStandard(&q.Target, sort) {
+			from = append(from, candidate(s, q, w))
+		}
+	}
+	best := exposure.Serving(needs, from)
+	if len(best) == 0 || len(best[0].Serves) < 2 {
+		return ""
+	}
+	return fmt.Sprintf("%s serves most: %s", best[0].Name, strings.Join(best[0].Serves, ", "))
+}
+
 // Flats says when flats can be taken in a night, by filter, in the order of
 // dusk and of dawn.
 //

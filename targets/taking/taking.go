@@ -100,6 +100,15 @@ func Short(m *moment.Moment) []string {
 	return out
 }
 
+// AtBest adds to the best moment what the exposure takes then by the clock; ""
+// where airmass decided.
+func AtBest(m *moment.Moment) string {
+	if m.Course.BestS <= 0 {
+		return ""
+	}
+	return ", the least exposure: " + Seconds(m.Course.BestS) + " by the clock"
+}
+
 // Brief is frames times seconds and the mode alone; "" without an exposure.
 func Brief(m *moment.Moment) string {
 	if !m.ExposureOK {

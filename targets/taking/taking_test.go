@@ -140,6 +140,13 @@ func TestStandard(t *testing.T) {
 	if text := joined(Standards(&s.Scene, p, &m, w, s.list)); !strings.Contains(text, "flux: "+got.Name) {
 		t.Errorf("it says %q", text)
 	}
+	all := []Wanted{{p, &m, w}, {p, &m, w}}
+	if text := Serving(&s.Scene, "flux", w, all, s.list); m.InCan && !strings.Contains(text, "serves most: R Car") {
+		t.Errorf("serving: %q", text)
+	}
+	if text := Serving(&s.Scene, "flux", w, all[:1], s.list); text != "" {
+		t.Errorf("serving one: %q", text)
+	}
 	w = s.want(t, targets.WD, "none")
 	if _, ok, err := MatchStandard(&s.Scene, p, &m, w, s.list); ok || err != nil {
 		t.Errorf("a standard nobody wanted: %v", err)

@@ -14,6 +14,7 @@ import (
 	"evenfall/targets/moment"
 	"evenfall/targets/stage"
 	"evenfall/targets/table"
+	"evenfall/targets/taking"
 	"evenfall/tui/kit"
 )
 
@@ -219,7 +220,7 @@ func (w *writer) night(m *moment.Moment) {
 	}
 	w.say("can %s   should %s", spans(m.Course.Can), spans(m.Course.Should))
 	if b := m.Course.Best; b != nil {
-		w.say("best %s at X %.3f, altitude %.1f deg", kit.Clock(*b), float64(m.Course.BestAirmass), m.Course.BestAltitude.Deg())
+		w.say("best %s at X %.3f, altitude %.1f deg%s", kit.Clock(*b), float64(m.Course.BestAirmass), m.Course.BestAltitude.Deg(), taking.AtBest(m))
 	}
 	if m.Course.Transit != nil {
 		w.say("transit %s", kit.Clock(*m.Course.Transit))
