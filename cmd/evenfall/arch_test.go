@@ -63,6 +63,7 @@ var layers = map[string][]string{
 	"tui/next":        {"tui/kit", "targets/...", "astro/..."},
 	"tui/diagram":     {"tui/kit", "targets/...", "astro/..."},
 	"tui/dome":        {"tui/kit", "targets/...", "astro/..."},
+	"tui/finder":      {"tui/kit", "targets/...", "astro/..."},
 	"tui/events":      {"tui/kit", "targets/...", "astro/..."},
 	"tui/star":        {"tui/kit", "targets/...", "astro/..."},
 	"tui/entry":       {"tui/kit", "targets/...", "astro/..."},
@@ -71,7 +72,7 @@ var layers = map[string][]string{
 	"tui/log":         {"tui/kit", "targets/...", "astro/..."},
 	"tui/weather":     {"tui/kit", "targets/...", "astro/..."},
 	"tui/check":       {"tui/desk", "tui/kit", "targets/...", "astro/..."},
-	"tui/desk":        {"tui/kit", "tui/next", "tui/star", "tui/diagram", "tui/dome", "tui/events", "tui/entry", "tui/plain", "tui/help", "tui/log", "tui/weather", "targets/...", "astro/..."},
+	"tui/desk":        {"tui/kit", "tui/next", "tui/star", "tui/diagram", "tui/dome", "tui/finder", "tui/events", "tui/entry", "tui/plain", "tui/help", "tui/log", "tui/weather", "targets/...", "astro/..."},
 	"cmd/evenfall":    {"tui/...", "targets/...", "astro/..."},
 
 	"targets/light/wander": {"targets", "astro/..."},

@@ -5,6 +5,7 @@ package check
 import (
 	"fmt"
 	"image/color"
+	"math"
 	"strings"
 	"sync"
 	"testing"
@@ -146,6 +147,26 @@ func Source(t testing.TB, every int) desk.Source {
 	return desk.Source{Site: Site, Zone: time.UTC, Level: 0.8, Roster: roster.New(list, models(), nil), Every: time.Second,
 		Look: kit.Numbered(kit.ASCII), Limits: targets.DefaultLimits(), Lives: Lives{}, Lights: Lights{},
 		Night: nights()}
+}
+
+// Field is invented neighbours of every target of a source, the same each time:
+// their offsets go round the target like the seeds of a sunflower.
+func Field(src desk.Source) []targets.Target {
+	var out []targets.Target
+	for i := range src.Roster.Len() {
+		t := &src.Roster.Entry(i).Target
+		for k := 1; k <= 24; k++ {
+			turn, far := astro.Deg(137.5*float64(k)), astro.Arcsec(70*math.Sqrt(float64(k)))
+			p := targets.Place{RA: t.Place.RA.Plus(astro.Rad(far.Rad() * turn.Sin() / math.Max(t.Place.Dec.Cos(), 0.01))), Dec: t.Place.Dec.Plus(far.Times(turn.Cos())),
+				EpochJyr: 2016, EpochGiven: true}
+			if k%4 != 0 {
+				p.PMRA, p.PMDec = targets.Known(float64(k)), targets.Known(-float64(k))
+			}
+			out = append(out, targets.Target{Name: fmt.Sprintf("n%d", k), Kind: targets.Other, Place: p,
+				Mags: map[targets.Band]targets.Measure{"V": targets.Known(9 + math.Mod(3.7*float64(k), 9))}})
+		}
+	}
+	return out
 }
 
 // nights prepares nights and keeps them, as the program does.

@@ -81,7 +81,7 @@ func (d *Desk) now() asked { return asked{d.filter, d.w.Filter, d.w.Sort, d.w.Sh
 // anchors are the actions after which the star that is selected is the user's
 // own choice, though it was never moved to.
 var anchors = map[kit.Action]bool{
-	kit.OpenStar: true, kit.OpenDiagram: true, kit.OpenEvents: true, kit.OpenDome: true, kit.MarkStar: true, kit.CopyLines: true, kit.SortList: true, kit.ReverseSort: true, kit.RankAnew: true, kit.BackToNow: true,
+	kit.OpenStar: true, kit.OpenDiagram: true, kit.OpenEvents: true, kit.OpenDome: true, kit.OpenFinder: true, kit.MarkStar: true, kit.CopyLines: true, kit.SortList: true, kit.ReverseSort: true, kit.RankAnew: true, kit.BackToNow: true,
 	kit.MinuteLess: true, kit.MinuteMore: true, kit.TenLess: true, kit.TenMore: true, kit.HourLess: true, kit.HourMore: true, kit.NightLess: true, kit.NightMore: true,
 }
 
@@ -229,6 +229,8 @@ func (d *Desk) common(a kit.Action) ([]Task, bool) {
 		d.open(kit.OnEvents)
 	case kit.OpenDome:
 		d.open(kit.OnDome)
+	case kit.OpenFinder:
+		d.open(kit.OnFinder)
 	case kit.EnterMag:
 		d.enterMagnitude()
 	case kit.RemoveMag:

@@ -14,6 +14,7 @@ import (
 
 	"evenfall/astro"
 	corecheck "evenfall/astro/check"
+	"evenfall/targets"
 	"evenfall/targets/moment"
 	"evenfall/targets/roster"
 	"evenfall/tui/check"
@@ -52,6 +53,8 @@ var scenes = []struct {
 	{"dome", []string{"j", "j", "m", "z"}},
 	{"dome_cursor", []string{"j", "z", "up", "up", "right", "(", "J"}},
 	{"dome_turned", []string{"G", "z", "y", "}", "}"}},
+	{"finder", []string{"j", "j", "p"}},
+	{"finder_north", []string{"j", "j", "p", "y", "+", "m"}},
 	{"light_curve", []string{"/", "k", "i", "n", "d", "=", "l", "p", "v", "enter", "enter", "L"}},
 	{"light_unknown", []string{"/", "k", "i", "n", "d", "=", "p", "n", "enter", "enter", "L"}},
 	{"magnitude", []string{"M", "<", "1", "2", ".", "5"}},
@@ -74,6 +77,8 @@ func TestGolden(t *testing.T) {
 	src := check.Source(t, 5)
 	src.Copy = func(string) (string, error) { return "the clipboard", nil }
 	equipped := check.Equipped(t, 5)
+	neighbours := check.Field(src)
+	src.Field = func() []targets.Target { return neighbours }
 	for _, s := range scenes {
 		src := src
 		if strings.HasPrefix(s.name, "exposure") {

@@ -10,6 +10,7 @@ import (
 	"evenfall/tui/diagram"
 	"evenfall/tui/dome"
 	"evenfall/tui/events"
+	"evenfall/tui/finder"
 	"evenfall/tui/kit"
 	"evenfall/tui/plain"
 	"evenfall/tui/star"
@@ -34,6 +35,8 @@ func (d *Desk) open(title string) {
 		d.screens = append(d.screens, events.New())
 	case kit.OnDome:
 		d.screens = append(d.screens, dome.New())
+	case kit.OnFinder:
+		d.screens = append(d.screens, finder.New())
 	}
 }
 

@@ -31,7 +31,7 @@ type state struct {
 func (d *Desk) State() string {
 	s := state{Screen: d.up().Title(), Filter: d.w.Filter, Sort: d.w.Sort, Observer: d.w.Observer, Setup: d.setup.String(), Theme: d.w.Look.Theme}
 	switch s.Screen { // where a line or an answer is asked for is no place to come back to
-	case kit.OnStar, kit.OnDiagram, kit.OnEvents, kit.OnDome, kit.OnLog, kit.OnEntry, kit.OnWeather:
+	case kit.OnStar, kit.OnDiagram, kit.OnEvents, kit.OnDome, kit.OnFinder, kit.OnLog, kit.OnEntry, kit.OnWeather:
 	default:
 		s.Screen = kit.OnNext
 	}
@@ -92,7 +92,7 @@ func (d *Desk) comeBack() {
 		}
 	}
 	switch s.Screen {
-	case kit.OnStar, kit.OnDiagram, kit.OnEvents, kit.OnDome:
+	case kit.OnStar, kit.OnDiagram, kit.OnEvents, kit.OnDome, kit.OnFinder:
 		d.open(s.Screen)
 	case kit.OnLog:
 		d.screens = append(d.screens, log.New())

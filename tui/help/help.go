@@ -66,6 +66,7 @@ var signs = []string{
 	"  b subdwarf, w white dwarf, r massive, a accretes, ? undecided; a capital: several; [ ] the selected star with 68 % bars, +3: three more in its cell; the track follows when you rest on it",
 	"dome: the sky as an arch, Z the zenith, the horizon below, each cell the same piece of sky; letters as on the diagram, + rises - sinks, [ ] the selected star and its path with hours UTC, { } the cursor, (M) Moon, (S) Sun;",
 	"  numbers: V mag per square arcsec, shades by how much brighter than the darkest place; altitude at the left edge, airmass at the right; dots: limits; x near the Sun, o near the Moon, ~ cloud, / wind",
+	"field: [+] the target, (1) (2) (3) stars to offset from, # o O . neighbours by brightness, c a companion, x the aim, s the place for the sky; lines: detector, slit, nebula; dots in a ring: how far to search; N E the sky's directions, = the scale",
 	"filter: words that must occur, and conditions such as kind=wd alt>35 x<1.5 V<16 stage=TPAGB moon>60 left>90 mark=yes; = != < <= > >=",
 	"  columns: kind stage ends mark alt x moon sun ha ra dec mag sb left best bestx period, and bands of magnitudes",
 	"NOT NOW: the moment shown is one of your own; n goes back to the clock",

@@ -82,6 +82,8 @@ const (
 	CursorDown  Action = "cursor down"
 	CursorAway  Action = "cursor away"
 	TurnDome    Action = "turn"
+	OpenFinder  Action = "picture"
+	NorthUp     Action = "north up"
 )
 
 // Binding is one row of the table of keys: it makes the handler, the footer,
@@ -109,14 +111,15 @@ const (
 	OnDiagram = "diagram"
 	OnEvents  = "events"
 	OnDome    = "dome"
+	OnFinder  = "finder"
 )
 
 var (
 	lists = []string{OnNext, OnStar, OnEvents, OnHelp, OnCopy, OnLog}
-	work  = []string{OnNext, OnStar, OnDiagram, OnEvents, OnDome, OnLog}
-	stars = []string{OnNext, OnStar, OnDiagram, OnEvents, OnDome}
-	all   = []string{OnNext, OnStar, OnDiagram, OnEvents, OnDome, OnHelp, OnCopy, OnLog}
-	timed = []string{OnNext, OnStar, OnDome} // where the keys of time are
+	work  = []string{OnNext, OnStar, OnDiagram, OnEvents, OnDome, OnFinder, OnLog}
+	stars = []string{OnNext, OnStar, OnDiagram, OnEvents, OnDome, OnFinder}
+	all   = []string{OnNext, OnStar, OnDiagram, OnEvents, OnDome, OnFinder, OnHelp, OnCopy, OnLog}
+	timed = []string{OnNext, OnStar, OnDome, OnFinder} // where the keys of time are
 )
 
 // Bindings is the table of keys. Every movement has a letter; no key needs
@@ -129,15 +132,15 @@ var Bindings = []Binding{
 	{HalfUp, []string{"u", "pgup"}, "u, page up", "", "half a page up", lists},
 	{First, []string{"g", "home"}, "g, home", "", "to the first line", lists},
 	{Last, []string{"G", "end"}, "G, end", "", "to the last line", lists},
-	{OpenStar, []string{"enter"}, "enter", "star", "look at the selected star closely", []string{OnNext, OnDiagram, OnEvents, OnDome}},
+	{OpenStar, []string{"enter"}, "enter", "star", "look at the selected star closely", []string{OnNext, OnDiagram, OnEvents, OnDome, OnFinder}},
 	{ShortRange, []string{"["}, "[", "[ ] nights", "fewer nights ahead: 30, 7, 3, 1", []string{OnEvents}},
 	{LongerRange, []string{"]"}, "]", "", "more nights ahead", []string{OnEvents}},
 	{Quadratures, []string{"Q"}, "Q", "quadratures", "quadratures too, or without them", []string{OnEvents}},
 	{OnlyCan, []string{"y"}, "y", "only can", "only what can be observed, or everything", []string{OnEvents}},
 	{OtherAxes, []string{"h"}, "h", "axes", "luminosity against temperature, or absolute magnitude against colour", []string{OnDiagram}},
-	{ZoomIn, []string{"+", "="}, "+", "+ - 0 zoom", "twice as large, around the selected star", []string{OnDiagram}},
-	{ZoomOut, []string{"-"}, "-", "", "half as large", []string{OnDiagram}},
-	{ZoomAll, []string{"0"}, "0", "", "the whole diagram", []string{OnDiagram}},
+	{ZoomIn, []string{"+", "="}, "+", "+ - 0 zoom", "twice as large, around the selected star", []string{OnDiagram, OnFinder}},
+	{ZoomOut, []string{"-"}, "-", "", "half as large", []string{OnDiagram, OnFinder}},
+	{ZoomAll, []string{"0"}, "0", "", "the whole diagram, or field", []string{OnDiagram, OnFinder}},
 	{NearLeft, []string{"left", "("}, "left, (", "", "the nearest star on the left: hotter, bluer", []string{OnDiagram}},
 	{NearRight, []string{"right", ")"}, "right, )", "", "the nearest on the right: cooler, redder", []string{OnDiagram}},
 	{NearUp, []string{"k", "up"}, "k, up", "", "the nearest above: more luminous", []string{OnDiagram}},
@@ -157,26 +160,28 @@ var Bindings = []Binding{
 	{OpenLog, []string{"l"}, "l", "log", "the log of the night and what is owed", stars},
 	{AddStar, []string{"a"}, "a", "add", "type or paste a new target", stars},
 	{CopyLines, []string{"c"}, "c", "copy", "send the hand-over lines to the clipboard and show them plainly", stars},
-	{NextStar, []string{"j"}, "j", "j k stars", "the next star of the list", []string{OnDome}},
-	{PriorStar, []string{"k"}, "k", "", "the star before", []string{OnDome}},
+	{NextStar, []string{"j"}, "j", "j k stars", "the next star of the list", []string{OnDome, OnFinder}},
+	{PriorStar, []string{"k"}, "k", "", "the star before", []string{OnDome, OnFinder}},
 	{NextStar, []string{"."}, ".", ". , stars", "the next star of the list", []string{OnStar, OnDiagram}},
-	{NextStar, []string{"."}, ".", "", "the next star of the list", []string{OnDome}},
-	{PriorStar, []string{","}, ",", "", "the star before", []string{OnStar, OnDiagram, OnDome}},
+	{NextStar, []string{"."}, ".", "", "the next star of the list", []string{OnDome, OnFinder}},
+	{PriorStar, []string{","}, ",", "", "the star before", []string{OnStar, OnDiagram, OnDome, OnFinder}},
 	{LightCurve, []string{"L"}, "L", "light", "the light curve, measured and forecast, in place of the night's course; high screens show both", []string{OnStar}},
 	{EnterMag, []string{"M"}, "M", "mag", "enter a magnitude measured now: 8.1, or <12.5 for not seen; another band or time behind it", stars},
 	{RemoveMag, []string{"R"}, "R", "", "remove the last magnitude entered for this star, or one by its number; it is kept as void (asks)", stars},
-	{OpenDiagram, []string{"h"}, "h", "HR", "the Hertzsprung-Russell diagram: where in their lives the stars of the list stand", []string{OnNext, OnStar, OnEvents, OnDome}},
-	{OpenEvents, []string{"E"}, "E", "events", "what happens when: eclipses, maxima and other dated happenings of tonight and the coming nights", []string{OnNext, OnStar, OnDiagram, OnDome}},
-	{OpenDome, []string{"z"}, "z", "sky", "where in the sky: zenith, horizon, Moon, the selected star and where it is going, how bright the sky is, the limits", []string{OnNext, OnStar, OnDiagram, OnEvents}},
+	{OpenDiagram, []string{"h"}, "h", "HR", "the Hertzsprung-Russell diagram: where in their lives the stars of the list stand", []string{OnNext, OnStar, OnEvents, OnDome, OnFinder}},
+	{OpenEvents, []string{"E"}, "E", "events", "what happens when: eclipses, maxima and other dated happenings of tonight and the coming nights", []string{OnNext, OnStar, OnDiagram, OnDome, OnFinder}},
+	{OpenDome, []string{"z"}, "z", "sky", "where in the sky: zenith, horizon, Moon, the selected star and where it is going, how bright the sky is, the limits", []string{OnNext, OnStar, OnDiagram, OnEvents, OnFinder}},
+	{OpenFinder, []string{"p"}, "p", "field", "the picture of the field: detector or slit, neighbours, offset stars, as the camera shows it", []string{OnNext, OnStar, OnDiagram, OnEvents, OnDome}},
+	{NorthUp, []string{"y"}, "y", "north up", "north up and east left, or as the camera shows it", []string{OnFinder}},
 	{TenLess, []string{"["}, "[", "[ ] time", "10 minutes earlier; the time shown is then one of your own", timed},
 	{TenMore, []string{"]"}, "]", "", "10 minutes later", timed},
-	{MinuteLess, []string{"-"}, "-", "", "1 minute earlier", timed},
-	{MinuteMore, []string{"+", "="}, "+", "", "1 minute later", timed},
+	{MinuteLess, []string{"-"}, "-", "", "1 minute earlier", []string{OnNext, OnStar, OnDome}},
+	{MinuteMore, []string{"+", "="}, "+", "", "1 minute later", []string{OnNext, OnStar, OnDome}},
 	{HourLess, []string{"{"}, "{", "", "1 hour earlier", timed},
 	{HourMore, []string{"}"}, "}", "", "1 hour later", timed},
-	{NightLess, []string{"<"}, "<", "", "the night before, same time", []string{OnNext, OnStar, OnEvents, OnDome}},
-	{NightMore, []string{">"}, ">", "", "the night after, same time", []string{OnNext, OnStar, OnEvents, OnDome}},
-	{BackToNow, []string{"n"}, "n", "", "back to now, and on with the clock", []string{OnNext, OnStar, OnEvents, OnDome}},
+	{NightLess, []string{"<"}, "<", "", "the night before, same time", []string{OnNext, OnStar, OnEvents, OnDome, OnFinder}},
+	{NightMore, []string{">"}, ">", "", "the night after, same time", []string{OnNext, OnStar, OnEvents, OnDome, OnFinder}},
+	{BackToNow, []string{"n"}, "n", "", "back to now, and on with the clock", []string{OnNext, OnStar, OnEvents, OnDome, OnFinder}},
 	{TakeNow, []string{"T"}, "T", "", "straight to exposing; then t accepts: a take in two keys", work},
 	{FrameDone, []string{"f"}, "f", "", "count a frame by hand", work},
 	{StopEarly, []string{"x"}, "x", "", "stop early: what is done is logged", work},
@@ -191,7 +196,7 @@ var Bindings = []Binding{
 	{BellSwitch, []string{"b"}, "b", "", "bell at the end of an exposure, before events and limits: on, off", work},
 	{ClockOffset, []string{"i"}, "i", "", "how many seconds the instrument's clock is ahead; logged with each take", work},
 	{ChangeTheme, []string{"v"}, "v", "", "theme: dark, red for night vision, plain", all},
-	{ShowHelp, []string{"?"}, "?", "help", "the keys and signs of this screen", []string{OnNext, OnStar, OnDiagram, OnEvents, OnDome, OnCopy, OnLog}},
+	{ShowHelp, []string{"?"}, "?", "help", "the keys and signs of this screen", []string{OnNext, OnStar, OnDiagram, OnEvents, OnDome, OnFinder, OnCopy, OnLog}},
 	{Back, []string{"esc", "backspace"}, "esc", "", "dismiss a message, else back; nothing typed is lost", all},
 	{Leave, []string{"q"}, "q", "leave", "leave this screen, from the list the program; asks once (y) if something is half typed", all},
 
@@ -261,7 +266,7 @@ func Footer(screen string, width int) string {
 
 var footers = func() map[string][]string {
 	out := map[string][]string{}
-	for _, screen := range []string{OnNext, OnStar, OnEntry, OnCopy, OnHelp, OnField, OnLog, OnWeather, OnDiagram, OnEvents, OnDome} {
+	for _, screen := range []string{OnNext, OnStar, OnEntry, OnCopy, OnHelp, OnField, OnLog, OnWeather, OnDiagram, OnEvents, OnDome, OnFinder} {
 		for _, b := range KeysOn(screen) {
 			switch {
 			case b.Short == "":
