@@ -69,7 +69,8 @@ func (s *State) Next(t astro.Instant) []Event {
 //
 // Given:
 //   - from, until: an event counts if it, or any of the stretch from its start
-//     to its end, lies between them. Magnitudes later than from teach nothing.
+//     to its end, lies between them. Magnitudes later than from teach nothing;
+//     see [State.EventsAsOf].
 //
 // Notes:
 //  1. Expired events are given too, and say so. A period of an hour makes some
@@ -77,13 +78,30 @@ func (s *State) Next(t astro.Instant) []Event {
 //
 // Checked: TestEvents, against testdata/astro/ephemeris_events.csv, 0.05 s.
 func (s *State) Events(site astro.Site, from, until astro.Instant) []Event {
+	return s.EventsAsOf(site, from, from, until)
+}
+
+// EventsAsOf returns the dated happenings of a target as [State.Events] does,
+// as the magnitudes up to an instant date them.
+//
+// Given:
+//   - asOf: no magnitude later than this teaches; it may come before from or
+//     after it.
+//   - site, from, until: as for [State.Events].
+//
+// Notes:
+//  1. All maxima and minima of a long-period variable are of one row, which the
+//     same magnitudes always lay the same: [State.Next] of asOf gives its next.
+//
+// Checked: TestEventsAsOf.
+func (s *State) EventsAsOf(site astro.Site, asOf, from, until astro.Instant) []Event {
 	var out []Event
 	for i := range s.timed {
 		for ev := range s.timed[i].at(site).Events(s.timed[i].what, from, until) {
 			out = append(out, eventOf(ev))
 		}
 	}
-	out = append(out, s.wandering(site, from, until)...)
+	out = append(out, s.wandering(site, asOf, from, until)...)
 	sort.SliceStable(out, func(i, j int) bool { return out[i].At.Before(out[j].At) })
 	return out
 }
@@ -160,46 +178,6 @@ func eventOf(ev elements.Event) Event {
 		out.End = &ev.End
 	}
 	return out
-}
-
-// nextMaximum asks the filter of a long-period variable; nil: there is none.
-func (s *State) nextMaximum(t, asOf astro.Instant) *maximum {
-	l, ok := s.model.(*longPeriod)
-	if !ok {
-		return nil
-	}
-	return s.forecast(query{t, l.home, DefaultLevel, s.until(asOf)}).maximum
-}
-
-// wandering lists maxima and minima of a long-period variable.
-func (s *State) wandering(site astro.Site, from, until astro.Instant) []Event {
-	var out []Event
-	add := func(kind string, jd, sigma float64, m *maximum) {
-		for _, ev := range s.dated(&site, kind, jd, sigma, m) {
-			if !ev.At.Before(from) && !until.Before(ev.At) {
-				out = append(out, ev)
-			}
-		}
-	}
-	rising := riseOf(&s.t)
-	// half a period back, for the maximum just past by the filter's own reckoning
-	for t := from; ; {
-		m := s.nextMaximum(t, from)
-		if m == nil {
-			return out
-		}
-		add(kindMinimum, m.jd-rising*m.periodD, math.Hypot(m.sigmaD, minimumScatter*m.periodD), m)
-		at, err := timescale.FromJD(m.jd, "JD_UTC")
-		if err != nil || until.Before(at) && m.jd-rising*m.periodD > until.JDUTC() {
-			return out
-		}
-		add(kindMaximum, m.jd, m.sigmaD, m)
-		next := at.Add(days(m.periodD / 2))
-		if !next.After(t) || until.Before(at) {
-			return out
-		}
-		t = next
-	}
 }
 
 // dated makes an event of a long-period variable; none where the date is none.

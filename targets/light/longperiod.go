@@ -42,6 +42,8 @@ type fitted struct {
 	used   []int          // places of the readings taken in, of its own band
 	others int            // readings of other bands that taught the phase
 	since  astro.Instant  // date of the first reading used
+	last   float64        // JD UTC of the last one; 0: none
+	maxima train
 }
 
 const (
@@ -239,6 +241,9 @@ func (f *fitted) note(l *longPeriod, own bool, list []int) {
 	if len(list) > 0 && (f.since.IsZero() || l.readings[list[0]].at.Before(f.since)) {
 		f.since = l.readings[list[0]].at
 	}
+	if len(list) > 0 {
+		f.last = math.Max(f.last, l.readings[list[len(list)-1]].jd)
+	}
 }
 
 // recent returns the readings of the last three cycles, or the newest 100.
@@ -305,6 +310,7 @@ type maximum struct {
 	jd, sigmaD float64
 	periodD    float64
 	status     string // of the phase
+	row        *train // that it is of
 }
 
 func (l *longPeriod) at(q query) Forecast {
@@ -331,7 +337,10 @@ func (l *longPeriod) at(q query) Forecast {
 	if fit.blind(&w) {
 		f.Phase.Value, f.Phase.Sigma = math.NaN(), math.NaN()
 	} else {
-		f.maximum = &maximum{w.MaximumJD, w.MaximumSigmaD, period, w.PhaseStatus}
+		f.maximum = &maximum{w.MaximumJD, w.MaximumSigmaD, period, w.PhaseStatus, nil}
+		if row := l.train(q.n, q.t.JDUTC()); row != nil && row.ok {
+			f.maximum.jd, f.maximum.periodD, f.maximum.row = row.after(q.t.JDUTC()), row.periodD, row
+		}
 	}
 	f.fill(w, q.level)
 	f.Basis = l.words(q, fit, &w, f.maximum)
