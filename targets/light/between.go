@@ -96,17 +96,30 @@ type pulsing struct {
 
 func (p *pulsing) tick() float64 { return 0 }
 
-func (p *pulsing) judge(n int) []verdict { return (&between{p.t, p.steady}).judge(n) }
+func (p *pulsing) judge(n int) []verdict {
+	out := make([]verdict, n)
+	for i := range out {
+		out[i].why = "the phase comes from the elements; single magnitudes of so short a period do not date it"
+	}
+	return out
+}
 
 func (p *pulsing) at(q query) Forecast {
 	own := bandOf(p.t.Var.MagBand)
 	if q.band != "" && q.band != own {
 		return single(p.steady.at(q))
 	}
-	_, phase, sigma, err := p.timed.clock.PhaseAt(q.t)
+	cycle, phase, sigma, err := p.timed.clock.PhaseAt(q.t)
 	if err != nil || !(sigma < expiredCycles) {
 		f := (&between{p.t, p.steady}).at(q)
-		f.Basis += "; elements expired: phase unknown"
+		f.Basis = fmt.Sprintf("pulsating variable of type %s: anywhere between its extremes; elements expired", p.t.Var.Type)
+		if err == nil {
+			f.Basis += fmt.Sprintf(", %.0f cycles old and uncertain by %.2g of a period", math.Abs(cycle), sigma)
+		}
+		if clockWalk(p.t.Var.Type) > 0 {
+			f.Basis += " (wander of its cycles " + fromMemory + ")"
+		}
+		f.Basis += ": phase unknown"
 		f.Phase = &Phase{Value: math.NaN(), Sigma: math.NaN(), Status: PhaseUnknown}
 		return f
 	}

@@ -17,7 +17,7 @@ var (
 	rvVariable    = regexp.MustCompile(`^RV[AB]?(:|\+|/|$)`)
 	pulsesByClock = regexp.MustCompile(`^(RR|CEP|DCEP|CW|DSCT|HADS|SXPHE|BCEP)`)
 	quickPulser   = regexp.MustCompile(`^ZZ|^RPHS|^V361HYA|^V1093HER|^EC14026|^GWVIR|^DOV|^SDBV`)
-	withCompanion = regexp.MustCompile(`ZAND|^N|UG|NL|AM|XM|XP|CV|WD|^E`)
+	withCompanion = regexp.MustCompile(`ZAND|^N|UG|NL|AM|XM|(^|[^S])XP|CV|WD|^E`)
 )
 
 // NewState prepares a target.

@@ -100,6 +100,8 @@ func ephemerisOf(t *targets.Target, epoch targets.Measure, eclipses bool) *eleme
 	switch {
 	case eclipses && v.PeriodD.Value < closeBinaryD:
 		el.Jitter = elements.JitterOf(t.Name)
+	case !eclipses && clockWalk(v.Type) > 0:
+		el.Walk = clockWalk(v.Type) * v.PeriodD.Value
 	case !eclipses && v.PeriodD.Value > walkingD:
 		el.Walk = elements.WalkOf(v.PeriodD.Value)
 	}
@@ -108,6 +110,29 @@ func ephemerisOf(t *targets.Target, epoch targets.Measure, eclipses bool) *eleme
 		return nil
 	}
 	return e
+}
+
+// The wander of the cycles of stars that pulsate by the clock, of the period
+// per root of a cycle: from memory, not checked against a publication.
+const rrWalk, cepheidWalk = 0.001, 0.0005
+
+var (
+	rrLike      = regexp.MustCompile(`^(RR|DSCT|HADS|SXPHE)`)
+	cepheidLike = regexp.MustCompile(`^(CEP|DCEP|CW)`)
+)
+
+// clockWalk returns the wander of the cycles of a type of variable, of the
+// period; 0: none is known.
+//
+// Checked: TestClockWalk.
+func clockWalk(vartype string) float64 {
+	switch {
+	case rrLike.MatchString(vartype):
+		return rrWalk
+	case cepheidLike.MatchString(vartype):
+		return cepheidWalk
+	}
+	return 0
 }
 
 // clockOf returns the clock of a kind; nil: there is none.

@@ -36,7 +36,7 @@ type steady struct {
 }
 
 // emission names the variables whose lines spoil every relation of colours.
-var emission = regexp.MustCompile(`ZAND|^N[ABCRL]?(\b|:|\+)|UG|NL|AM|XM|XP`)
+var emission = regexp.MustCompile(`ZAND|^N[ABCRL]?(\b|:|\+)|UG|NL|AM|XM|(^|[^S])XP`)
 
 func newSteady(t *targets.Target, list []reading) *steady {
 	s := &steady{t: t, readings: list, known: map[bands.Band]bands.Measure{}}
