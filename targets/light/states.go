@@ -104,6 +104,7 @@ type belief struct {
 	last int     // the newest reading used; -1: none
 	p    []float64
 	used []int
+	near part // about the last magnitude, where no state foresaw it
 }
 
 // believe runs through the readings in order of time.
@@ -111,11 +112,20 @@ type belief struct {
 //	p_i <- p_i L_i / sum;  L_i = 0.98 N(mag_i, sd_i^2 + e^2) + 0.02 N(mag_i, sd_i^2 + e^2 + 1.5^2)
 //
 // Notes:
-//  1. Magnitudes taken within an eclipse count as any other: they are rare.
+//  1. Magnitudes taken within an eclipse teach nothing of the states.
+//  2. Each state learns its own brightness from the magnitudes, as probable as
+//     it is; and a magnitude that no state foresaw stands for itself a while.
 //
 // Source: Bayes' theorem; the second component as for long-period variables.
+//
+// Checked: TestStatesLearn, TestLevels, TestNearTheLast.
 func (s *states) believe(n int, jd float64) belief {
-	b := belief{list: append([]state(nil), s.list...), last: -1, used: in(s.readings, n, s.band)}
+	b := belief{list: append([]state(nil), s.list...), last: -1}
+	for _, i := range in(s.readings, n, s.band) {
+		if !s.eclipsed(&s.readings[i]) {
+			b.used = append(b.used, i)
+		}
+	}
 	now := math.NaN()
 	for _, i := range b.used {
 		r := &s.readings[i]
@@ -130,11 +140,16 @@ func (s *states) believe(n int, jd float64) belief {
 			b.list[k].p *= all
 			sum += b.list[k].p
 		}
-		b.p = append(b.p, narrow/sum)
+		b.p = append(b.p, b.weigh(r, sum, narrow))
 		for k := range b.list {
 			st := &b.list[k]
 			st.p /= sum
-			if st.walks > 0 && st.p > 0.5 && !r.Limit {
+			switch {
+			case r.Limit:
+			case st.walks <= 0:
+				all, own := likelihood(r, st.mag, st.sd)
+				st.take(&s.list[k], r.Mag, r.sigma(), st.p*own/all)
+			case st.p > 0.5:
 				st.mag, st.sd = r.Mag, r.sigma()
 			}
 		}
@@ -154,14 +169,35 @@ func (b *belief) pass(usual []state, dt float64) {
 	}
 	for k, x := range relax(usual, p, dt) {
 		b.list[k].p = x
-		b.list[k].drift(&usual[k], dt)
+		if usual[k].walks > 0 {
+			b.list[k].drift(&usual[k], dt)
+		} else {
+			b.list[k].settle(&usual[k], dt)
+		}
 	}
+	if dt > 0 {
+		b.near.p *= math.Exp(-dt / nearTau(usual))
+	}
+}
+
+// eclipsed tells whether a reading was taken within an eclipse, by elements
+// that still say when those are.
+func (s *states) eclipsed(r *reading) bool {
+	if s.eclipse == nil || !(s.eclipse.halfMin > 0) {
+		return false
+	}
+	_, phase, sigma, err := s.eclipse.clock.PhaseAt(r.at)
+	half := s.eclipse.halfMin / 1440 / s.eclipse.clock.Ephemeris.Elements().Period.Value
+	return err == nil && sigma < expiredCycles/3 && math.Abs(phase-math.Round(phase)) < half
 }
 
 func (s *states) judge(n int) []verdict {
 	out := make([]verdict, n)
 	for i := range out {
 		out[i] = otherBand(s.band)
+		if r := &s.readings[i]; r.band == s.band {
+			out[i].why = "taken within an eclipse: it says nothing of the star's state"
+		}
 	}
 	b := s.believe(n, math.NaN())
 	for k, i := range b.used {
@@ -189,6 +225,7 @@ func (s *states) at(q query) Forecast {
 		list, said = s.alert(q, list)
 		words += said
 	}
+	list = b.nearLast(list)
 	if s.eclipse != nil && s.eclipse.halfMin > 0 {
 		var said string
 		list, said = s.eclipse.overlay(q.t, list, s.faint)
@@ -215,9 +252,9 @@ func (s *states) at(q query) Forecast {
 
 // latest says what the newest magnitude made of the states.
 func (s *states) latest(b *belief, q query) string {
-	best := 0
-	for k := range b.list {
-		if b.list[k].p > b.list[best].p {
+	best, list := 0, b.nearLast(b.list)
+	for k := range list {
+		if list[k].p > list[best].p {
 			best = k
 		}
 	}
@@ -226,7 +263,7 @@ func (s *states) latest(b *belief, q query) string {
 	if r.Limit {
 		sign = "fainter than "
 	}
-	return fmt.Sprintf("; last measured %s%.1f, %.3g d ago: %s %.0f %%", sign, r.Mag, math.Max(0, q.t.JDUTC()-r.jd), b.list[best].name, 100*b.list[best].p)
+	return fmt.Sprintf("; last measured %s%.1f, %.3g d ago: %s %.0f %%", sign, r.Mag, math.Max(0, q.t.JDUTC()-r.jd), list[best].name, 100*list[best].p)
 }
 
 // hazardSigma is the spread of the time between eruptions, of its logarithm.
