@@ -31,13 +31,13 @@ type class struct {
 	states  func(a, b float64) []state
 }
 
-const novaLike = "nova-like star"
+const novaLike, detached = "nova-like star", "detached eclipsing binary"
 
 // classes are looked through in order; the first that fits counts. All shares
 // and times are from memory, not checked against a publication; extremes are
 // extremes, so usual values lie some tenths inside them.
 var classes = []class{
-	{regexp.MustCompile(`^E[AB]?/?(D|WD|RS)?(/|\+X|$)`), "detached eclipsing binary", func(a, b float64) []state {
+	{regexp.MustCompile(`^E[AB]?/?(D|WD|RS)?(/|\+X|$)`), detached, func(a, b float64) []state {
 		return []state{{name: "out of eclipse", p: 1, mag: a, sd: 0.08}}
 	}},
 	{regexp.MustCompile(`UGWZ`), "dwarf nova of the rarest outbursts", func(a, b float64) []state {
@@ -135,6 +135,14 @@ func newBinary(t *targets.Target, list []reading, timed []timed, steady *steady)
 		periodMin = p.Value * 1440
 	}
 	c := classOf(t)
+	quiet, quietSD, eclipseWords, eclipses := outOfEclipse(t, s.eclipse, a, b)
+	if c != nil && c.how == detached {
+		eclipses = false // its class speaks of the brightest alone
+	}
+	faint := b
+	if eclipses {
+		b = math.Min(b, quiet+quietInside)
+	}
 	switch {
 	case periodMin > 0 && periodMin < heliumLongestMin && (heliumBinary.MatchString(t.KindNote) || c == nil):
 		s.list, s.how = helium(a, b, periodMin)
@@ -145,7 +153,11 @@ func newBinary(t *targets.Target, list []reading, timed []timed, steady *steady)
 	default:
 		s.list, s.how = []state{{name: "usual state", p: 1, mag: (a + b) / 2, sd: math.Max((b-a)/rangeSigmas, 0.1)}}, "variable of no predictable kind"
 	}
-	s.how = fmt.Sprintf("%s (type %s), extremes %.1f to %.1f in %s%s", s.how, t.Var.Type, a, b, s.band, words)
+	if eclipses && !(c != nil && c.how == novaLike) {
+		quieten(s.list, quiet, quietSD)
+		words += eclipseWords
+	}
+	s.how = fmt.Sprintf("%s (type %s), extremes %.1f to %.1f in %s%s", s.how, t.Var.Type, a, faint, s.band, words)
 	return s
 }
 

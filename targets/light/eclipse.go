@@ -145,12 +145,13 @@ func clockOf(list []timed, kind string) *timed {
 	return nil
 }
 
-// eclipseSD is how far from the listed minimum an eclipse is, mag. Common
-// practice, no source.
+// eclipseSD is how far from the listed minimum an eclipse is at most, mag.
+// Common practice, no source.
 const eclipseSD = 0.5
 
 // overlay adds the eclipse to the states that a star is in outside it.
-func (e *timed) overlay(t astro.Instant, list []state, mag float64) ([]state, string) {
+func (e *timed) overlay(t astro.Instant, list []state, faint float64) ([]state, string) {
+	mag, sd := eclipseOf(list, faint)
 	p := e.clock.Ephemeris.Elements().Period.Value
 	half := e.halfMin / 1440 / p
 	chance, words := math.Min(2*half, 1), "; ephemeris expired, eclipses at any time"
@@ -166,5 +167,5 @@ func (e *timed) overlay(t astro.Instant, list []state, mag float64) ([]state, st
 		s.p *= 1 - chance
 		out = append(out, s)
 	}
-	return append(out, state{name: "in eclipse", p: chance, mag: mag, sd: eclipseSD}), words
+	return append(out, state{name: "in eclipse", p: chance, mag: mag, sd: sd}), words
 }
