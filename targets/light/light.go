@@ -193,18 +193,36 @@ func (s *State) forecast(q query) Forecast {
 	s.mu.Lock()
 	defer s.mu.Unlock()
 	k := memoKey{math.Round(q.t.JDUTC() / tick), q.band, q.level, q.n}
+	at := q.t
+	if tick < forever {
+		at = q.t.Add(days(k.tick*tick - q.t.JDUTC()))
+		if last := s.newest(q.n); at.Before(last) && !q.t.Before(last) {
+			at, k.tick = last, k.tick+0.25 // not rounded to before what teaches
+		}
+	}
 	f, ok := s.memo[k]
 	if !ok {
 		if s.memo == nil || len(s.memo) >= mostKept {
 			s.memo = map[memoKey]Forecast{}
 		}
 		if tick < forever {
-			q.t = q.t.Add(days(k.tick*tick - q.t.JDUTC()))
+			q.t = at
 		}
 		f = s.model.at(q)
 		s.memo[k] = f
 	}
 	return f
+}
+
+// newest returns when the last of the first n readings was taken; the zero
+// instant: there is none.
+func (s *State) newest(n int) astro.Instant {
+	for ; n > 0; n-- {
+		if r := &s.readings[n-1]; r.why == "" {
+			return r.at
+		}
+	}
+	return astro.Instant{}
 }
 
 // passedOver says how many magnitudes did not count.

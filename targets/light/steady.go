@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"regexp"
+	"strings"
 
 	"evenfall/astro/bands"
 	"evenfall/targets"
@@ -148,7 +149,8 @@ func (s *steady) at(q query) Forecast {
 // level is the mean brightness as far as magnitudes taught it.
 type level struct {
 	mag, err float64
-	used     int
+	used     int // magnitudes, but for limits
+	limits   int
 	p        []float64 // that each is no outlier
 }
 
@@ -165,10 +167,11 @@ func (s *steady) learn(c bands.Carried, list []int, intrinsic float64) level {
 		r := &s.readings[i]
 		all, narrow := likelihood(r, l.mag, math.Hypot(l.err, intrinsic))
 		l.p[k] = narrow / all
-		l.used++
 		if r.Limit {
+			l.limits++
 			continue // says nothing of a level that is known
 		}
+		l.used++
 		v, vv := r.Mag-l.mag, l.err*l.err
 		s1 := vv + intrinsic*intrinsic + r.sigma()*r.sigma()
 		s2, p := s1+wideSD*wideSD, l.p[k]
@@ -195,6 +198,12 @@ func (s *steady) answer(q query, b targets.Band, c bands.Carried) Forecast {
 	}
 	if l.used > 0 {
 		f.Basis += fmt.Sprintf("; with %s measured: mean %.2f +- %.2f", counted(l.used, "magnitude"), l.mag, l.err)
+	}
+	if l.limits > 0 {
+		f.Basis += fmt.Sprintf("; %s, which says nothing of a known level", counted(l.limits, "limit"))
+		if l.limits > 1 {
+			f.Basis = strings.Replace(f.Basis, "limits, which says", "limits, which say", 1)
+		}
 	}
 	if s.why != "" {
 		f.Basis += "; " + s.why

@@ -253,8 +253,13 @@ func (f Forecast) Words() string {
 		s += ", the range only"
 	}
 	age := fmt.Sprintf("%.0f d old", f.AgeLastD)
-	if f.AgeLastD < 0 {
+	switch {
+	case f.AgeLastD <= -1:
 		age = fmt.Sprintf("%.0f d after this date", -f.AgeLastD)
+	case f.AgeLastD < 0:
+		age = "less than a day after this date"
+	case f.AgeLastD < 1:
+		age = "less than a day old"
 	}
 	switch {
 	case f.N+f.NOther == 0:
