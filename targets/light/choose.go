@@ -78,6 +78,9 @@ func bandOf(b string) targets.Band {
 	if b == "" || visualNames[targets.Band(b)] {
 		return "V"
 	}
+	if photographicNames[targets.Band(b)] {
+		return "p"
+	}
 	return targets.Band(b)
 }
 

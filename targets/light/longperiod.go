@@ -291,7 +291,7 @@ func (l *longPeriod) obs(list []int) []wander.Obs {
 	out := make([]wander.Obs, len(list))
 	for k, i := range list {
 		r := &l.readings[i]
-		out[k] = wander.Obs{JD: r.jd, Mag: r.Mag, Err: r.Err, Limit: r.Limit, Visual: r.visual}
+		out[k] = wander.Obs{JD: r.jd, Mag: r.Mag, Err: math.Hypot(r.Err, r.more), Limit: r.Limit, Visual: r.visual}
 	}
 	return out
 }

@@ -19,7 +19,8 @@ type reading struct {
 	jd     float64 // JD UTC
 	band   targets.Band
 	visual bool
-	why    string // set aside; "": not
+	more   float64 // error that a photographic magnitude taken for B has beside its own, mag
+	why    string  // set aside; "": not
 }
 
 // The magnitudes that a star may have; anything beyond is a slip.
@@ -33,15 +34,22 @@ const (
 	sameDateD = 1e-5
 )
 
+// photographicErr is what a photographic magnitude taken for B may be off by
+// beside its own error, mag. A choice.
+const photographicErr = 0.3
+
+// photographicNames are those of magnitudes on blue plates.
+var photographicNames = map[targets.Band]bool{"p": true, "pg": true, "pg.": true, "photographic": true}
+
 // visual estimates and V share one model.
-var visualNames = map[targets.Band]bool{"v": true, "vis": true, "vis.": true, "Vis": true, "Vis.": true, "visual": true}
+var visualNames = map[targets.Band]bool{"v": true, "vis": true, "vis.": true, "Vis": true, "Vis.": true, "visual": true, "Visual": true}
 
 // sigma is the error that counts.
 func (r *reading) sigma() float64 {
 	if r.visual {
 		return math.Max(r.Err, visualErr)
 	}
-	return math.Max(r.Err, leastErr)
+	return math.Hypot(math.Max(r.Err, leastErr), r.more)
 }
 
 // readingsOf looks magnitudes over.
@@ -54,14 +62,23 @@ func (r *reading) sigma() float64 {
 //  1. Dates are carried to JD UTC by their time scale; without one they are
 //     JD UTC. The light-time is that to the Earth's centre.
 //  2. An error that is none is taken as not given.
+//  3. A photographic magnitude counts as one in B, with 0.3 mag more of error,
+//     where the list has the extremes in B or photographic; interacting
+//     binaries with photographic extremes are forecast in that band itself.
 func readingsOf(t *targets.Target, mags []targets.Magnitude) []reading {
 	if len(mags) == 0 {
 		return nil
 	}
 	sight := elements.Sight{Star: starOf(t)}
+	home := bandOf(t.Var.MagBand)
+	// states keep photographic extremes as they are, and their magnitudes with them
+	asBlue := home == "B" || home == "p" && t.Kind != targets.Interacting
 	out := make([]reading, len(mags))
 	for i, m := range mags {
 		out[i] = read(&sight, m)
+		if r := &out[i]; r.band == "p" && asBlue {
+			r.band, r.more = "B", photographicErr
+		}
 	}
 	sort.SliceStable(out, func(i, j int) bool { return before(out[i].jd, out[j].jd) })
 	for i := range out {
@@ -84,6 +101,9 @@ func read(sight *elements.Sight, m targets.Magnitude) reading {
 	}
 	if visualNames[m.Band] {
 		r.band, r.visual = "V", true
+	}
+	if photographicNames[m.Band] {
+		r.band = "p"
 	}
 	scale := elements.JDUTC
 	if m.TimeScale != "" {

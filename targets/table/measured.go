@@ -20,8 +20,24 @@ const (
 // list: visual estimates, photographic ones, and the lines of nebulae.
 var moreBands = []targets.Band{"v", "p", "Ha", "Hb", "O3"}
 
-// KnownBand tells whether a magnitude may be measured in a band.
+// otherNames are what else some bands are called, in lower case.
+var otherNames = map[string]targets.Band{"vis": "v", "vis.": "v", "visual": "v", "pg": "p", "pg.": "p", "photographic": "p"}
+
+// NamedBand returns the band of a name: visual estimates as v, photographic
+// magnitudes as p, whatever they are called; any other name as it is.
+//
+// Checked: TestNamedBand.
+func NamedBand(b targets.Band) targets.Band {
+	if known, ok := otherNames[strings.ToLower(string(b))]; ok {
+		return known
+	}
+	return b
+}
+
+// KnownBand tells whether a magnitude may be measured in a band, by any of its
+// names.
 func KnownBand(b targets.Band) bool {
+	b = NamedBand(b)
 	return slices.Contains(targets.Bands, b) || slices.Contains(moreBands, b)
 }
 
@@ -89,7 +105,7 @@ func oneHour(scale string) float64 {
 //
 // Checked: TestTypedMagnitude, FuzzTypedMagnitude.
 func TypedMagnitude(text string, band targets.Band, now time.Time) (targets.Magnitude, error) {
-	m := targets.Magnitude{TimeScale: "JD_UTC", Band: band, JD: jdOf(now)}
+	m := targets.Magnitude{TimeScale: "JD_UTC", Band: NamedBand(band), JD: jdOf(now)}
 	words := strings.Fields(Clean(strings.ReplaceAll(strings.ReplaceAll(text, "< ", "<"), "+-", " +-")))
 	const how = "write the value, e.g. 8.1, or <12.5 for not seen"
 	if len(words) == 0 {
@@ -126,7 +142,7 @@ func typedWord(m *targets.Magnitude, words []string, next *int) error {
 		return nil
 	}
 	if KnownBand(targets.Band(w)) {
-		m.Band = targets.Band(w)
+		m.Band = NamedBand(targets.Band(w))
 		return nil
 	}
 	if len(words) > 1 {
@@ -161,7 +177,8 @@ func MagnitudeWord(m *targets.Magnitude) string {
 
 // SetAside sorts magnitudes into those that can be believed and those that
 // cannot, each of these with the reason: absurd ones, and those that say the
-// same as one before (target, band, value within 10 s).
+// same as one before (target, band, value within 10 s). Bands get the one name
+// that they have here, see [NamedBand].
 //
 // Checked: TestSetAside.
 func SetAside(list []targets.Magnitude, now time.Time) (kept []targets.Magnitude, aside []*Error) {
@@ -173,7 +190,9 @@ func SetAside(list []targets.Magnitude, now time.Time) (kept []targets.Magnitude
 	}
 	seen := map[same]bool{}
 	for i := range list {
-		m := &list[i]
+		one := list[i]
+		m := &one
+		m.Band = NamedBand(m.Band)
 		problem, fix := "", ""
 		if err := CheckMagnitude(m, now); err != nil {
 			problem, fix, _ = strings.Cut(err.Error(), "; ")

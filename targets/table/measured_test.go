@@ -84,3 +84,20 @@ func TestSetAside(t *testing.T) {
 		}
 	}
 }
+
+// Visual and photographic magnitudes by any of their names.
+func TestNamedBand(t *testing.T) {
+	for name, want := range map[targets.Band]targets.Band{"vis": "v", "Vis.": "v", "visual": "v", "Visual": "v", "v": "v", "V": "V", "pg": "p", "p": "p", "B": "B", "Q": "Q", "": ""} {
+		if got := NamedBand(name); got != want {
+			t.Errorf("%q is %q", name, got)
+		}
+	}
+	m, err := TypedMagnitude("8.1 vis", "V", typedAt)
+	if err != nil || m.Band != "v" {
+		t.Errorf("%+v, %v", m, err)
+	}
+	kept, aside := SetAside([]targets.Magnitude{{Mag: 8, Band: "Vis.", JD: 2461376}, {Mag: 8, Band: "v", JD: 2461376}, {Mag: 9, Band: "pg", JD: 2461376}}, typedAt)
+	if len(kept) != 2 || kept[0].Band != "v" || kept[1].Band != "p" || len(aside) != 1 {
+		t.Errorf("kept %+v, aside %d", kept, len(aside))
+	}
+}
