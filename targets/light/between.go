@@ -7,23 +7,39 @@ import (
 	"evenfall/targets"
 )
 
-// between is a variable of no predictable kind: anywhere in its range.
+// between is a variable of no predictable kind: anywhere in its range, but for
+// a while near its last magnitude.
 type between struct {
-	t      *targets.Target
-	steady *steady
+	relaxing
 }
 
-func (b *between) tick() float64 { return forever }
+func newBetween(t *targets.Target, list []reading, s *steady) *between {
+	return &between{relaxing{t: t, readings: list, steady: s}}
+}
+
+func (b *between) tick() float64 {
+	if len(b.readings) == 0 {
+		return forever
+	}
+	return 0
+}
 
 func (b *between) at(q query) Forecast {
-	own := bandOf(b.t.Var.MagBand)
-	if q.band != "" && q.band != own {
-		return single(b.steady.at(q))
+	own, v := bandOf(b.t.Var.MagBand), &b.t.Var
+	if band := b.band(q, own); band != own {
+		return b.elsewhere(q, band, v.MagMax.Value, v.MagMin.Value)
 	}
-	f := Forecast{Band: own, Basis: fmt.Sprintf("variable of type %s: anywhere between its extremes", b.t.Var.Type)}
-	f.fill(spread(b.t.Var.MagMax.Value, b.t.Var.MagMin.Value), q.level)
-	f.Steps = []Step{{"expected brightness", "uniform between the extremes", fmt.Sprintf("%.2f to %.2f", b.t.Var.MagMax.Value, b.t.Var.MagMin.Value),
+	f := Forecast{Band: own, Basis: fmt.Sprintf("variable of type %s: anywhere between its extremes", v.Type)}
+	m, words := b.carry(q, own, spread(v.MagMax.Value, v.MagMin.Value), nil)
+	f.Basis += words
+	f.fill(m, q.level)
+	f.Steps = []Step{{"expected brightness", "uniform between the extremes", fmt.Sprintf("%.2f to %.2f", v.MagMax.Value, v.MagMin.Value),
 		f.result(), "the list"}}
+	if words != "" {
+		f.Steps[0].Formula += "; from the last magnitude towards that, k = exp(-t/tau)"
+		f.Steps[0].Inputs += words
+		f.Steps[0].Source += "; tau a choice"
+	}
 	return f
 }
 
@@ -33,14 +49,6 @@ func single(f Forecast) Forecast {
 		f.Basis = "single catalogue magnitude of a variable star: " + f.Basis
 	}
 	return f
-}
-
-func (b *between) judge(n int) []verdict {
-	out := make([]verdict, n)
-	for i := range out {
-		out[i].why = "the star keeps no period that magnitudes could place it in"
-	}
-	return out
 }
 
 // Curve returns how far along from maximum (0) to minimum (1) a pulsating star
@@ -111,7 +119,7 @@ func (p *pulsing) at(q query) Forecast {
 	}
 	cycle, phase, sigma, err := p.timed.clock.PhaseAt(q.t)
 	if err != nil || !(sigma < expiredCycles) {
-		f := (&between{p.t, p.steady}).at(q)
+		f := newBetween(p.t, nil, p.steady).at(query{q.t, own, q.level, 0})
 		f.Basis = fmt.Sprintf("pulsating variable of type %s: anywhere between its extremes; elements expired", p.t.Var.Type)
 		if err == nil {
 			f.Basis += fmt.Sprintf(", %.0f cycles old and uncertain by %.2g of a period", math.Abs(cycle), sigma)

@@ -62,7 +62,7 @@ func choose(t *targets.Target, list []reading, timed []timed) model {
 	case t.Kind == targets.WD || quickPulser.MatchString(vt):
 		return newPulsator(t, steady)
 	case vt != "" && extremes:
-		return &between{t: t, steady: steady}
+		return newBetween(t, list, steady)
 	}
 	return steady
 }

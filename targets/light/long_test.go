@@ -281,7 +281,7 @@ func TestRVTauri(t *testing.T) {
 	star := targets.Target{Name: "rv", Kind: targets.PostAGB, Var: targets.Variability{Type: "RVA", PeriodD: targets.Known(80), TimeScale: "JD_UTC",
 		EpochMinJD: targets.KnownErr(now.JDUTC()-160, 0.5), MagMax: targets.Known(7), MagMin: targets.Known(9.5), MagBand: "V"}}
 	var mags []targets.Magnitude
-	for age := 130.0; age > 1; age -= 4 {
+	for age := 200.0; age > 70; age -= 4 {
 		mags = append(mags, magsAt("V", age, 7+2*(1+math.Cos(2*math.Pi*age/40))/2))
 	}
 	f := NewState(star, stage.Verdict{}, mags).At(now, Ask{})

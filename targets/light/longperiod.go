@@ -318,6 +318,9 @@ func (l *longPeriod) at(q query) Forecast {
 	if band == "" || visualNames[band] {
 		band = l.home
 	}
+	if q.band == "" && l.fit(l.home, q.n).filter == nil {
+		band = (&relaxing{t: l.t, readings: l.readings, steady: l.steady}).band(q, l.home)
+	}
 	if infrared[band] && len(in(l.readings, q.n, band)) < calibratedFrom {
 		return l.inInfrared(q, band)
 	}
@@ -363,6 +366,9 @@ func (l *longPeriod) judge(n int) []verdict {
 		fit := l.fit(r.band, n)
 		out[i].why = fit.why
 		if fit.filter == nil {
+			if l.ranges() && !r.Limit {
+				out[i] = verdict{used: true, p: 1}
+			}
 			continue
 		}
 		out[i].why = fmt.Sprintf("older than the last %g cycles and the newest %d magnitudes", memoryCycles, memoryCount)

@@ -14,12 +14,18 @@ var infrared = map[targets.Band]bool{"J": true, "H": true, "K": true, "W1": true
 // against a publication.
 const infraredRange = 2.0
 
+// ranges tells whether the star is one that has a range of its own to be in.
+func (l *longPeriod) ranges() bool {
+	v := &l.t.Var
+	return usable(v.MagMax) && usable(v.MagMin) && v.MagMin.Value >= v.MagMax.Value
+}
+
 // without answers where the filter cannot.
 func (l *longPeriod) without(q query, band targets.Band, fit *fitted) Forecast {
 	v := &l.t.Var
 	phase := &Phase{Value: math.NaN(), Sigma: math.NaN(), Status: PhaseUnknown}
-	if usable(v.MagMax) && usable(v.MagMin) && v.MagMin.Value >= v.MagMax.Value && band == bandOf(v.MagBand) {
-		f := (&between{l.t, l.steady}).at(query{q.t, band, q.level, q.n})
+	if l.ranges() {
+		f := newBetween(l.t, l.readings, l.steady).at(query{q.t, band, q.level, q.n})
 		f.Basis += "; " + fit.why
 		f.Phase = phase
 		return f

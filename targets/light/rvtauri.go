@@ -75,13 +75,10 @@ func (r *rvTauri) minima(n int) []int {
 func (r *rvTauri) judge(n int) []verdict {
 	out := make([]verdict, n)
 	for i := range out {
-		out[i].why = "not one of the last three minima"
-		if r.readings[i].band != r.band {
-			out[i] = otherBand(r.band)
+		out[i].why = "a limit says nothing of a star that is anywhere in its range"
+		if !r.readings[i].Limit {
+			out[i] = verdict{used: true, p: 1}
 		}
-	}
-	for _, i := range r.minima(n) {
-		out[i] = verdict{used: true, p: 1}
 	}
 	return out
 }
@@ -97,8 +94,9 @@ func depth(phase, shallow float64) float64 {
 }
 
 func (r *rvTauri) at(q query) Forecast {
-	if q.band != "" && q.band != r.band {
-		return single(r.steady.at(q))
+	near := &relaxing{t: r.t, readings: r.readings, steady: r.steady}
+	if band := near.band(q, r.band); band != r.band {
+		return near.elsewhere(q, band, r.max, r.min)
 	}
 	deep, shallow, sd, said := r.min-rvMinimumBrighter, rvShallow, rvSD, fmt.Sprintf("minima as listed, %.1f", r.min)
 	if list := r.minima(q.n); len(list) > 0 {
@@ -117,12 +115,22 @@ func (r *rvTauri) at(q query) Forecast {
 		sd = math.Hypot(sd, waveSD)
 	}
 	f := Forecast{Band: r.band, Phase: &Phase{Value: math.NaN(), Sigma: math.NaN(), Status: PhaseUnknown}}
-	weight, words := r.weights(q, &f)
-	var m mixture
-	for i, w := range weight {
-		m = append(m, part{w, r.max + (deep-r.max)*depth((float64(i)+0.5)/phaseSteps, shallow), sd})
+	usual := func(q query, f *Forecast) (m mixture, words string) {
+		weight, words := r.weights(q, f)
+		for i, w := range weight {
+			m = append(m, part{w, r.max + (deep-r.max)*depth((float64(i)+0.5)/phaseSteps, shallow), sd})
+		}
+		return m, words
 	}
-	f.Basis = fmt.Sprintf("RV Tauri star, maximum %.1f; %s; scatter %.1f mag; %s", r.max, said, sd, words)
+	m, words := usual(q, &f)
+	then := func(jd float64) float64 {
+		at := query{t: q.t.Add(days(jd - q.t.JDUTC()))}
+		past, _ := usual(at, &Forecast{Phase: &Phase{}})
+		mean, _, _ := moments(past)
+		return mean
+	}
+	m, last := near.carry(q, r.band, m, then)
+	f.Basis = fmt.Sprintf("RV Tauri star, maximum %.1f; %s; scatter %.1f mag; %s", r.max, said, sd, words) + last
 	f.fill(m, q.level)
 	f.Steps = []Step{{"expected brightness", "two unequal minima a cycle, over the distribution of the phase; sigma 0.4 mag", f.Basis, f.result(),
 		"common practice, no source; depth of the shallow minima " + fromMemory}}
