@@ -439,3 +439,36 @@ func BenchmarkCarry(b *testing.B) {
 		}
 	}
 }
+
+// By hand: 1.0 +- 0.1 and 1.6 +- 0.2 differ by 2.7 of their errors: mean 1.12,
+// error^2 = 0.008 + (100 0.12^2 + 25 0.48^2)/125 = 0.0656; those that agree
+// leave the better one.
+func TestOneColour(t *testing.T) {
+	c, ok := oneColour([]colour{{1.0, 0.1, "a", "A", false}, {1.6, 0.2, "b", "B", true}})
+	check.Near(t, c.c, 1.12, 1e-9, "mean colour")
+	check.Near(t, c.err, math.Sqrt(0.0656), 1e-9, "its error")
+	if !ok || !c.byType || !strings.Contains(c.how, "disagree") || c.source == "" {
+		t.Errorf("%+v", c)
+	}
+	if c, _ := oneColour([]colour{{1.0, 0.2, "a", "A", false}, {1.05, 0.1, "b", "B", true}}); c.c != 1.05 || c.err != 0.1 {
+		t.Errorf("%+v", c)
+	}
+	if _, ok := oneColour(nil); ok {
+		t.Error("a colour of nothing")
+	}
+}
+
+// J, H and K of bright stars are off by 0.15 mag at least, of faint ones not.
+func TestJohnson(t *testing.T) {
+	for _, want := range []Band{J, K, V} {
+		known := map[Band]Measure{G: {3, 0.01}, BP: {3.41, 0.01}, RP: {2.59, 0.01}}
+		c, err := Carry(known, want, Hints{})
+		if err != nil || (want != V) != (c.Err >= johnsonErr) {
+			t.Errorf("%s: %+v, %v", want, c, err)
+		}
+		known[G], known[BP], known[RP] = Measure{10, 0.01}, Measure{10.41, 0.01}, Measure{9.59, 0.01}
+		if c, err = Carry(known, want, Hints{}); err != nil || c.Err >= johnsonErr {
+			t.Errorf("%s of a faint star: %+v, %v", want, c, err)
+		}
+	}
+}

@@ -32,6 +32,22 @@ type Carried struct {
 // source.
 const AssumedErr = 0.03
 
+// J, H and K of stars brighter than johnsonBright are of Johnson's system, the
+// survey's own being spoilt by their light; beside the relations, which are for
+// the survey, they are off by johnsonErr at least, mag. A choice.
+const johnsonBright, johnsonErr = 4.0, 0.15
+
+func infraredJHK(b Band) bool { return b == J || b == H || b == K }
+
+// johnson returns the error that a magnitude has as one of the relations'.
+func johnson(b Band, m Measure) float64 {
+	if infraredJHK(b) && m.Mag < johnsonBright {
+		e, _ := errOf(m)
+		return math.Max(e, johnsonErr)
+	}
+	return m.Err
+}
+
 // plausible tells whether a magnitude may be one.
 func plausible(m float64) bool { return m > -30 && m < 50 }
 
@@ -93,6 +109,10 @@ type carrier struct {
 //  4. For variable stars all magnitudes count as of one moment.
 //  5. K of a list is taken for K_s: they agree within 0.05 mag for giants (from
 //     memory).
+//  6. J, H and K of stars brighter than 4 have an error of 0.15 mag at least
+//     when carried from or to, being of Johnson's system.
+//  7. Where two ways to BP - RP disagree by more than their errors their weighted
+//     mean is taken, its error with the disagreement; a route has one colour.
 //
 // Source: [cite.RielloEtAl2021]; [cite.ESA1997]; [cite.HealyEtAl2024].
 //
@@ -121,10 +141,17 @@ func Carry(known map[Band]Measure, want Band, hints Hints) (Carried, error) {
 	}
 	k.readType()
 	k.byType()
-	for _, c := range k.colours() {
+	for b, m := range k.known {
+		k.known[b] = Measure{m.Mag, johnson(b, m)}
+	}
+	if c, ok := oneColour(k.colours()); ok {
 		k.byColour(c)
 	}
-	return k.best()
+	out, err := k.best()
+	if err == nil && infraredJHK(want) && out.Mag < johnsonBright {
+		out.Err = math.Max(out.Err, johnsonErr)
+	}
+	return out, err
 }
 
 // readType takes luminosity and usability from the spectral type.

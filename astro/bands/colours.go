@@ -3,9 +3,54 @@ package bands
 import (
 	"fmt"
 	"math"
+	"strings"
 
 	"evenfall/astro/numeric"
 )
+
+// oneColour returns the one BP - RP that all relations of a star are taken at:
+// that of least error, or where it and another differ by more than their errors
+// together the weighted mean.
+//
+//	c = sum(c_i/e_i^2)/W;  e^2 = 1/W + sum((c_i - c)^2/e_i^2)/W;  W = sum(1/e_i^2)
+//
+// Source: that the disagreement counts whole: a choice.
+//
+// Checked: TestOneColour.
+func oneColour(list []colour) (colour, bool) {
+	if len(list) == 0 {
+		return colour{}, false
+	}
+	best := list[0]
+	for _, c := range list {
+		if c.err < best.err {
+			best = c
+		}
+	}
+	weights, mean, differ := 0.0, 0.0, false
+	for _, c := range list {
+		w := 1 / math.Max(c.err*c.err, 1e-6)
+		weights += w
+		mean += w * c.c
+		differ = differ || math.Abs(c.c-best.c) > math.Hypot(c.err, best.err)
+	}
+	if !differ {
+		return best, true
+	}
+	mean /= weights
+	variance := 1 / weights
+	out := colour{c: mean}
+	var ways []string
+	for _, c := range list {
+		variance += (c.c - mean) * (c.c - mean) / math.Max(c.err*c.err, 1e-6) / weights
+		ways = append(ways, c.how)
+		out.source = joined(out.source, c.source)
+		out.byType = out.byType || c.byType
+	}
+	out.err = math.Sqrt(variance)
+	out.how = fmt.Sprintf("BP-RP %.2f +- %.2f, mean of ways that disagree (%s)", mean, out.err, strings.Join(ways, "; "))
+	return out, true
+}
 
 // colours lists what BP - RP may be, by up to three ways.
 func (k *carrier) colours() []colour {
