@@ -77,6 +77,7 @@ func (v view) takingText(b *strings.Builder) {
 		{"exposure", taking.Exposure(&v.s.scene, v.p, v.m, *v.w)},
 		{"finding", taking.Finding(&v.s.scene, v.p, v.m, *v.w, v.s.field())},
 		{"standards", v.standards()},
+		{"tonight's throughput", v.throughput()},
 		{"flats at dusk and dawn", taking.Flats(v.s.night, *v.w)},
 	} {
 		if len(part.lines) == 0 {
