@@ -43,12 +43,12 @@ func oneColour(list []colour) (colour, bool) {
 	var ways []string
 	for _, c := range list {
 		variance += (c.c - mean) * (c.c - mean) / math.Max(c.err*c.err, 1e-6) / weights
-		ways = append(ways, c.how)
+		ways = append(ways, fmt.Sprintf("%.2f", c.c))
 		out.source = joined(out.source, c.source)
 		out.byType = out.byType || c.byType
 	}
 	out.err = math.Sqrt(variance)
-	out.how = fmt.Sprintf("BP-RP %.2f +- %.2f, mean of ways that disagree (%s)", mean, out.err, strings.Join(ways, "; "))
+	out.how = fmt.Sprintf("BP-RP %.2f +- %.2f where ways disagree (%s)", mean, out.err, strings.Join(ways, ", "))
 	return out, true
 }
 
