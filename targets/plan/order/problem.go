@@ -23,9 +23,9 @@ const Format = "night-instance/1"
 
 // Limits of a problem, so that no sum below can leave its integer type.
 const (
-	maxSlots   = 20_000     // slots of one night: 15 s for three days
-	maxItems   = 4_000      // requests and standards
-	maxCells   = 20_000_000 // items times slots
+	maxSlots   = 6_000      // slots of one night: 15 s for a day
+	maxItems   = 2_000      // requests and standards
+	maxCells   = 2_000_000  // items times slots
 	maxVisits  = 64         // visits of one request
 	maxPoints  = 50_000_000 // thousandths of a point in one night, all told
 	maxAirmass = 1_000_000  // thousandths
