@@ -23,7 +23,7 @@ func (s *seq) insert(j int32, at site) bool {
 		return false
 	}
 	k := at.k
-	s.add(k, block{item: j, start: at.start, lo: s.g.lo[j], hi: s.g.hi[j]})
+	s.add(k, block{item: j, start: at.start, lo: s.lo[j], hi: s.g.hi[j]})
 	if !s.bounds() {
 		s.b = slices.Delete(s.b, k, k+1)
 		s.placed[j]--
@@ -52,7 +52,7 @@ func opened(rows []row, k, n int) []row {
 // between says from when to when visit j may start before block m, its other
 // visits standing where they are, blocks k..m-1 left out.
 func (s *seq) between(j int32, k, m int) (lo, hi int32) {
-	lo, hi = s.g.lo[j], s.g.hi[j]
+	lo, hi = s.lo[j], s.g.hi[j]
 	if s.placed[j] == 0 {
 		return lo, hi
 	}
@@ -83,7 +83,7 @@ func (s *seq) look(j int32, k, m int, worth []int32, top int32, best *site) {
 	if m < len(s.b) {
 		out = s.g.setup[int(j)*s.g.n+int(s.b[m].item)]
 	}
-	u, last := max(s.free[k]+in, s.g.lo[j]), min(s.late[m]-out-s.g.short[j], s.g.hi[j])
+	u, last := max(s.free[k]+in, s.lo[j]), min(s.late[m]-out-s.g.short[j], s.g.hi[j])
 	if u > last {
 		return
 	}
@@ -125,8 +125,8 @@ func (s *seq) look(j int32, k, m int, worth []int32, top int32, best *site) {
 // than floor.
 func (s *seq) best(j int32, worth []int32, top, floor int32) site {
 	at := site{start: -1, value: floor}
-	lo, hi := s.g.lo[j], s.g.hi[j]
-	for k := 0; k <= len(s.b); k++ {
+	lo, hi := s.lo[j], s.g.hi[j]
+	for k := s.lead; k <= len(s.b); k++ {
 		if s.free[k] > hi {
 			break
 		}
@@ -179,7 +179,7 @@ func (s *search) fill(m manner) {
 	q := &s.q
 	wants := s.wants[:0]
 	for j := range int32(q.g.n) {
-		if q.placed[j] >= q.g.visits[j] || q.g.lo[j] > q.g.hi[j] || q.g.std[j] && len(q.g.matches[j]) > 0 || s.barred == j {
+		if q.placed[j] >= q.g.visits[j] || q.lo[j] > q.g.hi[j] || q.g.std[j] && len(q.g.matches[j]) > 0 || s.barred == j {
 			continue
 		}
 		w := want{item: j, noise: 1000, age: -1, score: int64(1) << 60}

@@ -26,6 +26,7 @@ func (b *bounder) forward() {
 				row[j] = max(row[j], b.fm[int(u-1)*m+j])
 			}
 		}
+		b.work += int64(6 * m)
 		b.sortBy(func(j int32) int64 {
 			if u-b.minGo < g.now {
 				return none
@@ -38,6 +39,7 @@ func (b *bounder) forward() {
 			if u < nd.lo || u > nd.hi || !b.open[c] {
 				continue
 			}
+			b.work += 8
 			best := b.prefix(j, u)
 			if u >= g.now+g.setup0[nd.item] && u <= firstLock {
 				best = max(best, 0)

@@ -47,6 +47,7 @@ func (b *bounder) backward() int64 {
 			}
 			b.start(j, u, base, &row[j])
 		}
+		b.work += int64(7 * m)
 		b.sortBy(func(j int32) int64 {
 			t := min(u+b.minGo, g.end+1)
 			if s := b.hm[int(t)*m+int(j)]; s.n > 0 {
@@ -110,8 +111,9 @@ func (b *bounder) start(j int, u int32, base int64, into *span) {
 		if list, took = joined(list, l); took {
 			changed = true
 		}
-		b.work++
+		b.work += 3
 	}
+	b.work += int64(4 + len(later))
 	if !alive && !b.keepOpen {
 		b.open[c] = false
 	}
@@ -186,7 +188,7 @@ func (b *bounder) suffixes(i int, t int32, base int64) {
 			if l.mask = b.read(l.mask, int(j), i); l.mask&b.dead[i] != 0 {
 				continue
 			}
-			b.work++
+			b.work += 4 + int64(len(list)/2)
 			list, _ = joined(list, l)
 			if l.mask == 0 {
 				floor = l.v

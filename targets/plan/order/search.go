@@ -47,12 +47,12 @@ type search struct {
 	multis    []int32
 	pace      int32
 	barred    int32 // item that fill must not put in; -1 for none
-	heldTo    int32 // takes that start before stay as they are
+	late      int32 // slots by which a standard of an old plan may be put off
 	steps     int
 }
 
 func newSearch(g *night, lean []int32, seed uint64) *search {
-	s := &search{q: *newSeq(g, lean), rnd: newRandom(seed), gain: make([]int32, g.w), barred: -1, heldTo: -1}
+	s := &search{q: *newSeq(g, lean), rnd: newRandom(seed), gain: make([]int32, g.w), barred: -1}
 	s.q.reach = reach
 	if s.pace = 1; g.p.SlotMin > 0 {
 		s.pace = max(1, int32(paceMinutes/g.p.SlotMin))
@@ -165,7 +165,7 @@ func (s *search) descend(m manner) {
 // loose tells whether block k may be left out by a replacement.
 func (s *search) loose(k int) bool {
 	b := &s.q.b[k]
-	return !b.fixed && b.start >= s.heldTo && len(s.q.g.matches[b.item]) == 0
+	return !b.fixed && !b.firm && len(s.q.g.matches[b.item]) == 0
 }
 
 // debit is the part of its bonus that leaving a take of i out costs.
@@ -216,7 +216,7 @@ func (s *search) better(k, m int, base int32, mn manner) (int32, site) {
 	q := &s.q
 	most, item, at := int32(0), int32(-1), site{}
 	for j := range int32(q.g.n) {
-		if q.placed[j] >= q.g.visits[j] || q.g.lo[j] > q.late[m] || q.g.hi[j] < q.free[k] ||
+		if q.placed[j] >= q.g.visits[j] || q.lo[j] > q.late[m] || q.g.hi[j] < q.free[k] ||
 			len(q.g.matches[j]) > 0 || s.barred == j || j == q.b[k].item || j == q.b[m-1].item {
 			continue
 		}
@@ -327,7 +327,7 @@ func (s *search) choose() {
 		}
 	}
 	for k, b := range s.cur.b {
-		if b.fixed || b.start < s.heldTo {
+		if b.fixed || b.firm {
 			s.mark[k] = false
 		}
 	}

@@ -9,6 +9,7 @@ type block struct {
 	start  int32
 	lo, hi int32
 	fixed  bool // a lock: neither moved nor dropped
+	firm   bool // never dropped, and held to an early start
 }
 
 // row is a table over a stretch of slots, from off on.
@@ -37,6 +38,10 @@ func (r *row) fit(from, to int32) {
 // otherwise than by order; both are settled anew after every change.
 type seq struct {
 	g       *night
+	lo      []int32 // first start of an item, that of the night or later
+	now     int32   // first slot that can be used, that of the night or later
+	lead    int     // blocks at the front before which nothing may be put
+	firm    int32   // latest start of a firm block
 	eff     []int32 // [item*w+slot] worth of a start with the standards that are in
 	count   []int16 // [item*w+slot] standards that serve a start
 	lean    []int32 // nil, or what a start is preferred by, on top of its worth
@@ -55,7 +60,7 @@ type seq struct {
 const maxBlocks = 1500
 
 func newSeq(g *night, lean []int32) *seq {
-	s := &seq{g: g, lean: lean, eff: make([]int32, len(g.cut)), count: make([]int16, len(g.cut)),
+	s := &seq{g: g, lo: slices.Clone(g.lo), now: g.now, lean: lean, eff: make([]int32, len(g.cut)), count: make([]int16, len(g.cut)),
 		placed: make([]int32, g.n), last: make([]int32, g.n)}
 	for c := range s.eff {
 		s.eff[c] = s.bare(c, false)
@@ -159,9 +164,12 @@ func (s *seq) ranges() {
 	}
 	for k := range s.b {
 		b := &s.b[k]
-		b.lo, b.hi = s.g.lo[b.item], s.g.hi[b.item]
+		b.lo, b.hi = s.lo[b.item], s.g.hi[b.item]
 		if b.fixed || s.g.std[b.item] {
 			b.lo, b.hi = b.start, b.start
+		}
+		if b.firm {
+			b.hi = min(b.hi, s.firm)
 		}
 		if s.g.visits[b.item] < 2 {
 			continue
@@ -199,7 +207,7 @@ func (s *seq) into(k int) int32 {
 func (s *seq) bounds() bool {
 	n := len(s.b)
 	s.free, s.late = resized(s.free, n+1), resized(s.late, n+1)
-	s.free[0] = s.g.now
+	s.free[0] = s.now
 	for k := range s.b {
 		b := &s.b[k]
 		dur := s.g.dur[int(b.item)*s.g.w:]
@@ -329,7 +337,7 @@ func (s *seq) total() int32 {
 
 // timed moves each block to the earliest of its best starts.
 func (s *seq) timed() bool {
-	t := s.g.now
+	t := s.now
 	for k := range s.b {
 		b := &s.b[k]
 		ready := t + s.into(k)

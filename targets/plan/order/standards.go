@@ -24,14 +24,14 @@ func (s *search) recovery(x int32) (gain []int32, top int32) {
 		win, dx, air := int32(it.Calib.Window), int32(it.Calib.DX), q.g.air[c]
 		row := q.g.air[int(x)*q.g.w : (int(x)+1)*q.g.w]
 		q.work += int64(win)
-		for u := max(b.start-win, q.g.lo[x]); u <= min(b.start+win, q.g.hi[x]); u++ {
+		for u := max(b.start-win, q.lo[x]); u <= min(b.start+win, q.g.hi[x]); u++ {
 			if y := row[u] - air; y <= dx && y >= -dx {
 				gain[u] += lost
 			}
 		}
 	}
 	own := q.worthOf(x)
-	for u := q.g.lo[x]; u <= q.g.hi[x]; u++ {
+	for u := q.lo[x]; u <= q.g.hi[x]; u++ {
 		gain[u] += own[u]
 		top = max(top, gain[u])
 	}
@@ -41,7 +41,7 @@ func (s *search) recovery(x int32) (gain []int32, top int32) {
 // seed puts in a take of standard x where it gains most, at a loss too.
 func (s *search) seed(x int32) bool {
 	q := &s.q
-	if q.placed[x] >= q.g.visits[x] || q.g.lo[x] > q.g.hi[x] {
+	if q.placed[x] >= q.g.visits[x] || q.lo[x] > q.g.hi[x] {
 		return false
 	}
 	gain, top := s.recovery(x)
@@ -56,7 +56,7 @@ func (s *search) serveAll() {
 		base := q.total()
 		best, item := site{start: -1, value: base}, int32(-1)
 		for _, x := range s.standards {
-			if q.placed[x] >= q.g.visits[x] || q.g.lo[x] > q.g.hi[x] {
+			if q.placed[x] >= q.g.visits[x] || q.lo[x] > q.g.hi[x] {
 				continue
 			}
 			gain, top := s.recovery(x)
@@ -92,7 +92,7 @@ func (s *search) trim() {
 	q := &s.q
 	for k := len(q.b) - 1; k >= 0; k-- {
 		x := q.b[k]
-		if !q.g.std[x.item] || x.fixed || q.g.bonus[x.item] > 0 {
+		if !q.g.std[x.item] || x.fixed || x.firm || q.g.bonus[x.item] > 0 {
 			continue
 		}
 		if own := q.eff[int(x.item)*q.g.w+int(x.start)]; own > 0 {
@@ -141,7 +141,7 @@ func (s *search) shift() {
 	q := &s.q
 	for k := 0; k < len(q.b); k++ {
 		x := q.b[k]
-		if !q.g.std[x.item] || x.fixed || len(q.g.matches[x.item]) == 0 {
+		if !q.g.std[x.item] || x.fixed || x.firm || len(q.g.matches[x.item]) == 0 {
 			continue
 		}
 		base := q.total()
@@ -153,7 +153,7 @@ func (s *search) shift() {
 		}
 		best, item := site{start: -1, value: 0}, int32(-1)
 		for _, y := range s.standards {
-			if q.g.p.Items[y].Mode != q.g.p.Items[x.item].Mode || q.placed[y] >= q.g.visits[y] || q.g.lo[y] > q.g.hi[y] {
+			if q.g.p.Items[y].Mode != q.g.p.Items[x.item].Mode || q.placed[y] >= q.g.visits[y] || q.lo[y] > q.g.hi[y] {
 				continue
 			}
 			gain, top := s.recovery(y)
