@@ -53,7 +53,6 @@ type search struct {
 
 func newSearch(g *night, lean []int32, seed uint64) *search {
 	s := &search{q: *newSeq(g, lean), rnd: newRandom(seed), gain: make([]int32, g.w), barred: -1}
-	s.q.reach = reach
 	if s.pace = 1; g.p.SlotMin > 0 {
 		s.pace = max(1, int32(paceMinutes/g.p.SlotMin))
 	}
@@ -150,6 +149,8 @@ func (s *search) complete(m manner, thorough bool) {
 // until nothing gains. A round must end above its start, or it is the last: the
 // sharing of slack between visits can otherwise make it go in circles.
 func (s *search) descend(m manner) {
+	s.q.widen(reach)
+	defer s.q.narrow()
 	for range rounds {
 		before := s.worth()
 		if !s.replace(m) {
@@ -279,11 +280,13 @@ func (s *search) force(j int32) {
 			}
 			continue
 		}
+		q.widen(1)
 		for k := range q.b {
 			if s.loose(k) && q.b[k].item != j {
 				q.look(j, k, k+1, q.worthOf(j), q.top(j), &at)
 			}
 		}
+		q.narrow()
 		if at.start < 0 {
 			return
 		}

@@ -253,6 +253,18 @@ func (s *seq) span(k int) (from, to int32) {
 	return s.free[max(k-s.reach, 0)], s.late[min(k+s.reach, len(s.b))]
 }
 
+// widen makes the tables cover moves that leave out up to r neighbouring blocks.
+func (s *seq) widen(r int) {
+	if s.reach < r {
+		s.reach = r
+		s.buildP(0)
+		s.buildQ(len(s.b))
+	}
+}
+
+// narrow lets the tables cover no more than insertions from the next change on.
+func (s *seq) narrow() { s.reach = 0 }
+
 // buildP builds the rows of P after position k, that of k when k is 0.
 func (s *seq) buildP(k int) {
 	n := len(s.b)

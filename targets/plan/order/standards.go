@@ -161,7 +161,8 @@ func (s *search) shift() {
 				best, item = at, y
 			}
 		}
-		if item < 0 || !q.insert(item, best) || q.total() <= base {
+		same := item == x.item && best.start == x.start
+		if item < 0 || same || !q.insert(item, best) || q.total() <= base {
 			q.load(was)
 		}
 	}
