@@ -247,8 +247,13 @@ func (s *search) step(threshold int32) bool {
 	}
 	better := false
 	if q.load(s.try) {
-		if n := len(s.standards); n > 0 && s.rnd.one(3) {
-			s.seed(s.standards[s.rnd.below(n)])
+		if n := len(s.standards); n > 0 {
+			switch s.rnd.below(6) {
+			case 0, 1:
+				s.seed(s.standards[s.rnd.below(n)])
+			case 2:
+				s.couple(int32(s.rnd.below(q.g.n)))
+			}
 		}
 		if n := len(s.multis); n > 0 && s.rnd.one(4) {
 			s.force(s.multis[s.rnd.below(n)])
@@ -311,6 +316,9 @@ func (s *search) choose() {
 	if s.rnd.one(16) {
 		count = 1 + s.rnd.below(1+n/3)
 	}
+	if len(s.standards) > 0 && s.rnd.one(8) {
+		s.chooseStandard()
+	}
 	switch way := s.rnd.below(8); {
 	case way < 3:
 		from := s.rnd.below(n)
@@ -332,6 +340,18 @@ func (s *search) choose() {
 	for k, b := range s.cur.b {
 		if b.fixed || b.firm {
 			s.mark[k] = false
+		}
+	}
+}
+
+// chooseStandard marks one standard.
+func (s *search) chooseStandard() {
+	n := len(s.cur.b)
+	from := s.rnd.below(n)
+	for k := range n {
+		if at := (from + k) % n; len(s.q.g.matches[s.cur.b[at].item]) > 0 {
+			s.mark[at] = true
+			return
 		}
 	}
 }

@@ -86,7 +86,7 @@ func (s *seq) place(item, start int32) {
 	if !s.g.std[item] {
 		return
 	}
-	s.work += 200
+	s.work += int64(60 * len(s.g.matches[item]))
 	s.g.served(int(item), start, func(_, c int) {
 		if s.count[c]++; s.count[c] == 1 {
 			s.eff[c] = s.bare(c, true)
@@ -100,7 +100,7 @@ func (s *seq) unplace(item, start int32) {
 	if !s.g.std[item] {
 		return
 	}
-	s.work += 200
+	s.work += int64(60 * len(s.g.matches[item]))
 	s.g.served(int(item), start, func(_, c int) {
 		if s.count[c]--; s.count[c] == 0 {
 			s.eff[c] = s.bare(c, false)
@@ -237,7 +237,7 @@ func (s *seq) bounds() bool {
 		}
 		s.late[k] = u
 	}
-	s.work += int64(4 * n)
+	s.work += int64(12 * n)
 	return true
 }
 

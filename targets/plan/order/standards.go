@@ -10,6 +10,7 @@ func (s *search) recovery(x int32) (gain []int32, top int32) {
 	q := &s.q
 	gain = s.gain[:q.g.w]
 	clear(gain)
+	q.work += int64(q.g.w/2 + 4*len(q.b))
 	for i := range q.b {
 		b := &q.b[i]
 		it := &q.g.p.Items[b.item]
@@ -165,5 +166,33 @@ func (s *search) shift() {
 		if item < 0 || same || !q.insert(item, best) || q.total() <= base {
 			q.load(was)
 		}
+	}
+}
+
+// couple puts in an item that wants a standard, as if it had one, and then the
+// standard that gains most, both at a loss too.
+func (s *search) couple(j int32) {
+	q := &s.q
+	c := q.g.p.Items[j].Calib
+	if c == nil || q.placed[j] >= q.g.visits[j] || q.lo[j] > q.g.hi[j] || s.barred == j {
+		return
+	}
+	row := q.g.val[int(j)*q.g.w : (int(j)+1)*q.g.w]
+	at := q.best(j, row, q.g.top[j], 0)
+	if at.start < 0 || !q.insert(j, at) {
+		return
+	}
+	best, item := site{start: -1, value: 0}, int32(-1)
+	for _, x := range s.standards {
+		if q.g.p.Items[x].Mode != q.g.p.Items[j].Mode || q.placed[x] >= q.g.visits[x] || q.lo[x] > q.g.hi[x] {
+			continue
+		}
+		gain, top := s.recovery(x)
+		if at := q.best(x, gain, top, best.value); at.start >= 0 {
+			best, item = at, x
+		}
+	}
+	if item >= 0 {
+		q.insert(item, best)
 	}
 }
