@@ -33,9 +33,31 @@ func (s *seq) insert(j int32, at site) bool {
 	// Rows before the new block of P, and after it of Q, stay as they are.
 	n := len(s.b)
 	s.p, s.q = opened(s.p, k+1, n), opened(s.q, k, n)
+	if !s.covered(k) {
+		s.buildP(0)
+		s.buildQ(n)
+		return s.timed()
+	}
 	s.buildP(k)
 	s.buildQ(k)
 	return s.timed()
+}
+
+// covered tells whether the rows that stay after a block was put in at k reach
+// as far as they must. They do, unless some move is longer than two others with
+// a take between them.
+func (s *seq) covered(k int) bool {
+	for i := 0; i <= k; i++ {
+		if _, to := s.span(i); s.p[i].off+int32(len(s.p[i].v))-1 < to {
+			return false
+		}
+	}
+	for i := k + 1; i <= len(s.b); i++ {
+		if from, _ := s.span(i); s.q[i].off > from {
+			return false
+		}
+	}
+	return true
 }
 
 // opened makes room for a row at k in the first n rows, using a spare one.

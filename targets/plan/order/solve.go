@@ -175,6 +175,12 @@ func (v *solver) warm(plan []Take) {
 // it.
 func (s *search) resume(plan []Take) {
 	g := s.q.g
+	if _, err := g.p.Evaluate(plan); err == nil && s.q.load(g.blocks(plan)) {
+		s.note()
+		s.complete(manner{}, true)
+		s.note()
+		return
+	}
 	count := make([]int32, g.n)
 	var tail []block
 	for _, t := range plan {
@@ -195,6 +201,15 @@ func (s *search) resume(plan []Take) {
 	}
 	s.complete(manner{}, true)
 	s.note()
+}
+
+// blocks turns takes into blocks, locks held.
+func (g *night) blocks(plan []Take) []block {
+	b := make([]block, len(plan))
+	for k, t := range plan {
+		b[k] = block{item: int32(t.Item), start: int32(t.Start), fixed: slices.Contains(g.locks, t)}
+	}
+	return b
 }
 
 // append puts a take after all those that came before it, at the start nearest

@@ -179,10 +179,7 @@ func Slacks(p *Problem, plan []Take, cost int) ([]Slack, error) {
 	}
 	g := layout(p)
 	s := newSeq(g, nil)
-	var b []block
-	for _, t := range plan {
-		b = append(b, block{item: int32(t.Item), start: int32(t.Start), fixed: slices.Contains(g.locks, t)})
-	}
+	b := g.blocks(plan)
 	if !s.load(b) {
 		return nil, nil
 	}
