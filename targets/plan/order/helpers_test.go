@@ -86,7 +86,7 @@ func madeUp(r *random, sh shape) *Problem {
 		}
 		p.Setup = append(p.Setup, row)
 	}
-	for range sh.locks {
+	for range min(sh.locks, 5*len(p.Items)) {
 		if i := r.below(len(p.Items)); len(p.Items[i].Dur) > 0 {
 			p.Locks = append(p.Locks, Take{i, p.Items[i].First + r.below(len(p.Items[i].Dur))})
 		}
