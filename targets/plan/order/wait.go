@@ -113,6 +113,12 @@ func (s *search) put(item int, from int32, base found, work int64, seed uint64) 
 	if item >= 0 && !slices.ContainsFunc(base.b, early) {
 		return base.worth
 	}
+	if item < 0 && from > g.end {
+		if len(g.locks) > 0 {
+			return never
+		}
+		return 0
+	}
 	now, lo := s.q.now, int32(0)
 	if item < 0 {
 		s.q.now = max(from, g.now)
