@@ -9,10 +9,10 @@ const (
 	mostLabels    = 40 // labels of one state; more are merged
 	priceBits     = 10 // binary places of a price below one unit of value
 	fullStep      = 1000
-	relaxedRounds = 40 // before memory is used
-	memoryStep    = 500
+	relaxedRounds = 8 // before memory is used
+	memoryStep    = 700
 	leastStep     = 100 // after the memory has grown
-	patience      = 6   // rounds without a better bound before steps shrink
+	patience      = 3   // rounds without a better bound before steps shrink
 	growEvery     = 2   // memory rounds between two growths
 	growRepeats   = 6   // repeats forbidden by one growth
 	bucketMinutes = 15  // of a price on being served
