@@ -59,9 +59,8 @@ const maxFile = 256 << 20
 //
 // Returns:
 //   - an error naming line and column, or the key, with what is wrong and what
-//     to write instead. Unknown, missing and repeated-with-another-type keys
-//     and text after the problem are refused; so is what [Problem.Check]
-//     refuses.
+//     to write instead. Unknown and missing keys and text after the problem are
+//     refused; so is what [Problem.Check] refuses.
 //
 // Checked: TestReadSaysWhere, TestReadWrite, FuzzRead.
 func Read(r io.Reader) (*Problem, error) {

@@ -30,6 +30,10 @@ const (
 	boundCost        = 2
 )
 
+// Inertia is the preference, permille of a take's mean worth, that keeps a plan
+// made again near the old one at little cost.
+const Inertia = 60
+
 // Solution is a plan and what is known about it.
 type Solution struct {
 	Value      int     // thousandths of a point
