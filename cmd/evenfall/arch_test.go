@@ -76,6 +76,7 @@ var layers = map[string][]string{
 	"cmd/evenfall":    {"tui/...", "targets/...", "astro/..."},
 
 	"targets/light/wander": {"targets", "astro/..."},
+	"targets/plan/order":   {},
 }
 
 // fences confine what touches the world, and what must stay behind a door.

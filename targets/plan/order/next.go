@@ -9,9 +9,10 @@ import (
 
 // Tuned figures of what to take next.
 const (
-	soonMinutes = 5 // a candidate must be able to start this soon
-	baseParts   = 4 // the share of the effort that goes into the plan itself is one in these
-	fewChoices  = 8 // compared in the second round, half of them in the third
+	soonMinutes = 5  // a candidate must be able to start this soon
+	baseBound   = 70 // per cent of that share that goes into the bound and its paths
+	baseParts   = 2  // the share of the effort that goes into the plan itself is one in these
+	fewChoices  = 8  // compared in the second round, half of them in the third
 	nextRounds  = 3
 )
 
@@ -98,9 +99,9 @@ func prepare(ctx context.Context, p *Problem, a Ask) (*solver, error) {
 	}
 	v.warm(a.Plan)
 	if work := int64(max(0, min(a.Effort, mostEffort))) * workPerIteration / baseParts; work > 0 {
-		v.s.cur.set(v.best.b, v.best.worth)
-		v.s.run(work, func() bool { return ctx.Err() != nil })
-		v.settleBest()
+		v.b = newBounder(v.g)
+		v.seek(work * (100 - baseBound) / 100)
+		v.tighten(work * baseBound / 100)
 	}
 	return v, nil
 }

@@ -66,19 +66,23 @@ func TestNext(t *testing.T) {
 // the first three, or costs no more than a thousandth of the night, in a
 // thorough one.
 func TestNextAgrees(t *testing.T) {
-	ps, _ := problems(t, "p60", "m80", "x01")
-	for _, n := range []string{"p60", "m80", "x01"} {
+	names := []string{"p60", "m80", "x01"}
+	ps, _ := problems(t, names...)
+	if testing.Short() {
+		names = names[:1]
+	}
+	for _, n := range names {
 		p := ps[n]
 		base, err := Solve(t.Context(), p, 50, 1)
 		if err != nil {
 			t.Fatal(err)
 		}
 		r, _ := later(t, p, base.Plan, p.T/2, 0)
-		quick, err := Next(t.Context(), r, Ask{Effort: 200, Seed: 1})
+		quick, err := Next(t.Context(), r, Ask{Effort: 400, Seed: 1})
 		if err != nil {
 			t.Fatal(err)
 		}
-		slow, err := Next(t.Context(), r, Ask{Effort: 1500, Seed: 7})
+		slow, err := Next(t.Context(), r, Ask{Effort: 1000, Seed: 7})
 		if err != nil {
 			t.Fatal(err)
 		}
