@@ -185,15 +185,44 @@ func (s *search) lead(r *rival, plan []block) bool {
 	if count > s.q.g.visits[r.item] {
 		return false
 	}
-	for !s.q.load(try) {
-		k := 1
-		for k < len(try) && try[k].fixed {
+	return s.squeeze(try, 1)
+}
+
+// nearby is how many takes are looked at for one to leave out.
+const nearby = 8
+
+// squeeze loads a plan, leaving out what no longer fits: of the first few
+// blocks from k on the one without which most is left, or when no single one is
+// enough the first. False when the locks do not fit.
+func (s *search) squeeze(plan []block, k int) bool {
+	for !s.q.load(plan) {
+		best, pick, first := int32(-1), -1, -1
+		for i := k; i < min(len(plan), k+nearby); i++ {
+			if plan[i].fixed || plan[i].firm {
+				continue
+			}
+			if first < 0 {
+				first = i
+			}
+			s.less = append(append(s.less[:0], plan[:i]...), plan[i+1:]...)
+			if s.q.load(s.less) && s.q.total() > best {
+				best, pick = s.q.total(), i
+			}
+		}
+		for first < 0 && k < len(plan) { // nothing but locks so near
+			if !plan[k].fixed && !plan[k].firm {
+				first = k
+			}
 			k++
 		}
-		if k >= len(try) {
+		if pick < 0 {
+			pick = first
+		}
+		if pick < 0 {
 			return false
 		}
-		try = slices.Delete(try, k, k+1)
+		plan = slices.Delete(plan, pick, pick+1)
+		k = min(k, pick)
 	}
 	return true
 }

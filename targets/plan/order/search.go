@@ -39,6 +39,7 @@ type search struct {
 	gain      []int32 // scratch of recovery
 	spare     []block
 	try       []block // scratch of step
+	less      []block // scratch of squeeze
 	mark      []bool
 	standards []int32
 	multis    []int32

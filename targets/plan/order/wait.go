@@ -133,16 +133,8 @@ func (s *search) put(item int, from int32, base found, work int64, seed uint64) 
 	}()
 	try := append(s.try[:0], base.b...)
 	s.try = try
-	for !s.q.load(try) {
-		// Leave out the first that is too early, or else the first of all.
-		k := slices.IndexFunc(try, func(b block) bool { return !b.fixed && early(b) })
-		if k < 0 {
-			k = slices.IndexFunc(try, func(b block) bool { return !b.fixed })
-		}
-		if k < 0 {
-			return never
-		}
-		try = slices.Delete(try, k, k+1)
+	if !s.squeeze(try, 0) {
+		return never
 	}
 	s.complete(manner{}, true)
 	s.note()
